@@ -1,0 +1,55 @@
+"""The point: what closed forms see of a collision."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from ..kinematics import Collision
+from ..reaction import Reaction
+from .event import LegKey
+
+Array = NDArray[np.float64]
+
+
+@dataclass(frozen=True, slots=True)
+class Point:
+    """The energies and masses of a collision; arrays have the shape (point, 1).
+
+    Attributes
+    ----------
+    s, sqrt_s : arrays, GeV² and GeV
+    momentum, final_momentum : arrays, GeV
+        In the cm, of the incoming and of the outgoing particles.
+    """
+
+    reaction: Reaction
+    s: Array
+    sqrt_s: Array
+    momentum: Array
+    final_momentum: Array
+    masses: tuple[float, float, float, float]
+
+    @classmethod
+    def of(cls, reaction: Reaction, collision: Collision, masses: tuple[float, float, float, float]) -> Point:
+        """The point of a 2 → 2 collision; masses in GeV of beam a, beam b, leg 1, leg 2."""
+        return cls(
+            reaction,
+            collision.s,
+            collision.sqrt_s,
+            collision.momentum(*masses[:2]),
+            collision.momentum(*masses[2:]),
+            masses,
+        )
+
+    def mass(self, leg: LegKey) -> float:
+        """The resolved mass of a leg in GeV.
+
+        Raises
+        ------
+        LookupError
+            For a leg that the reaction lacks.
+        """
+        return self.masses[{-1: 0, -2: 1, 1: 2, 2: 3}[self.reaction.leg(leg)]]
