@@ -1,0 +1,203 @@
+"""Gauss–Legendre quadrature of a density over panels, refined where a panel asks for it.
+
+A panel is accepted when the fine rule and the coarser one agree to `TOLERANCE` of its own integral; otherwise the order rises to
+40 and then the panel is halved, near a pole geometrically (x from the pole keeps its digits). What a panel does depends on
+that panel alone, so a point of a scan has the bits of a point asked for by itself.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass, replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from .gauss import FIRST_ORDER, ORDERS, embedded_weights, gauss_legendre
+from .panels import Panels
+from .polar_axis import Ends, Integers, ends_of
+from .roots import EPSILON
+
+Array = NDArray[np.float64]
+Density = Callable[[Integers | None, Ends], Array]
+"""``density(rows, ends)``: rows None means all of them, with ends (row or 1, node); else one row number a line of ends."""
+
+TOLERANCE = 4e-14
+ROUNDING = 4 * EPSILON
+DEEPEST = 60
+
+
+@dataclass(frozen=True, slots=True)
+class PanelIntegrals:
+    """Integrals over panels, with bounds of their numerical errors.
+
+    Attributes
+    ----------
+    value, error : arrays, shape (row, panel), in the unit of the density
+    evaluations : int
+    non_finite, negative : int
+        Nodes at which the density was not finite, or below 0.
+    worst : tuple or None
+        (row, 1 − c, 1 + c, value) of the first such node.
+    unresolved : int
+        Panels that could not be refined to the tolerance.
+    """
+
+    value: Array
+    error: Array
+    evaluations: int
+    non_finite: int = 0
+    negative: int = 0
+    worst: tuple[int, float, float, float] | None = None
+    unresolved: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class _Pieces:
+    """Some panels or parts of them, one a line: row, hemisphere, ends in the map's variable, scale of the map."""
+
+    row: Integers
+    panel: Integers
+    side: Integers
+    low: Array
+    high: Array
+    scale: Array
+
+    def take(self, chosen: Integers | NDArray[np.bool_]) -> _Pieces:
+        return _Pieces(*(getattr(self, f)[chosen] for f in ("row", "panel", "side", "low", "high", "scale")))
+
+    def halved(self) -> _Pieces:
+        middle = 0.5 * (self.low + self.high)
+        twice = [np.concatenate([a, a]) for a in (self.row, self.panel, self.side)]
+        low, high = np.concatenate([self.low, middle]), np.concatenate([middle, self.high])
+        return _Pieces(*twice, low, high, np.concatenate([self.scale, self.scale]))
+
+
+def to_map(x: Array, scale: Array) -> Array:
+    """The map's variable w of x: x itself where the scale is infinite, ln(1 + x/δ) near a peak of width δ."""
+    if np.all(np.isinf(scale)):
+        return x
+    with np.errstate(invalid="ignore"):
+        return np.where(np.isinf(scale), x, np.log1p(x / scale))
+
+
+def from_map(w: Array, scale: Array) -> tuple[Array, Array]:
+    """x of w, and dx/dw."""
+    if np.all(np.isinf(scale)):
+        return w, np.ones_like(scale)
+    with np.errstate(invalid="ignore", over="ignore"):
+        flat = np.isinf(scale)
+        x = np.where(flat, w, scale * np.expm1(np.where(flat, 0.0, w)))
+        return x, np.where(flat, 1.0, x + scale)
+
+
+def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int) -> PanelIntegrals:
+    """Integrate a density over every panel of every row.
+
+    Parameters
+    ----------
+    density : callable
+    panels : Panels
+    scales : array, shape (row or 1, 2)
+        δ of the backward and the forward pole (∞: no peak there).
+    rows : int
+    """
+    scale = scales[:, panels.side]
+    left, right = to_map(panels.left, scale), to_map(panels.right, scale)
+    nodes, weights = gauss_legendre(FIRST_ORDER)
+    span = (right - left)[:, None, :]
+    x, slope = from_map(left[:, None, :] + span * nodes[:, None], scale[:, None, :])
+    ends = ends_of(np.broadcast_to(panels.side, x.shape), x)
+    flat = Ends(*(e.reshape(e.shape[0], -1) for e in ends))
+    values = np.broadcast_to(density(None, flat), (rows, flat.one_plus.shape[1]))
+    values = values.reshape(rows, *x.shape[1:]) * (slope * np.abs(span))
+    fine, coarse = _weighted(values, weights), _weighted(values, embedded_weights())
+    size = _weighted(np.abs(values), weights)
+    error = np.abs(fine - coarse)
+    result = PanelIntegrals(fine, error, values.size)
+    result = _inspected(result, values, lambda i: (int(i[0]), *(float(e[min(i[0], len(e) - 1), i[1], i[2]]) for e in ends)))
+    todo = np.nonzero(error > TOLERANCE * size)
+    if todo[0].size:
+        shape = (rows, panels.side.size)
+        pieces = _Pieces(*todo, panels.side[todo[1]], *(np.broadcast_to(a, shape)[todo] for a in (left, right, scale)))
+        result = _refined(density, pieces, result)
+    return replace(result, error=result.error + ROUNDING * np.abs(result.value))
+
+
+def _weighted(values: Array, weights: Array) -> Array:
+    """The weighted sum over the middle axis, node by node in a fixed order, so that bits never depend on the batch."""
+    total = values[:, 0] * weights[0]
+    for k in range(1, weights.size):
+        if weights[k]:
+            total += values[:, k] * weights[k]
+    return total
+
+
+def _refined(density: Density, pieces: _Pieces, result: PanelIntegrals) -> PanelIntegrals:
+    """Raise the order of the pieces that need it, then halve what is left."""
+    value, error = result.value, result.error
+    before = value[pieces.row, pieces.panel]
+    for order in ORDERS[1:]:
+        now, size, result = _evaluated(density, pieces, order, result)
+        change = np.abs(now - before)
+        value[pieces.row, pieces.panel], error[pieces.row, pieces.panel] = now, change
+        again = change > TOLERANCE * size
+        pieces, before = pieces.take(again), now[again]
+        if pieces.row.size == 0:
+            return result
+    value[pieces.row, pieces.panel] = error[pieces.row, pieces.panel] = 0.0
+    return _halved(density, pieces, result)
+
+
+def _halved(density: Density, pieces: _Pieces, result: PanelIntegrals) -> PanelIntegrals:
+    """Halve the pieces until each half agrees with its coarser rule; add the halves up in a fixed order."""
+    for _ in range(DEEPEST):
+        pieces = pieces.halved()
+        coarse, _, result = _evaluated(density, pieces, ORDERS[-2], result)
+        fine, size, result = _evaluated(density, pieces, ORDERS[-1], result)
+        change = np.abs(fine - coarse)
+        whole = np.abs(result.value[pieces.row, pieces.panel])
+        done = ~(change > TOLERANCE * np.maximum(size, whole))
+        place = (pieces.row[done], pieces.panel[done])
+        np.add.at(result.value, place, fine[done])
+        np.add.at(result.error, place, change[done])
+        pieces, fine, change = pieces.take(~done), fine[~done], change[~done]
+        if pieces.row.size == 0:
+            return result
+    np.add.at(result.value, (pieces.row, pieces.panel), fine)
+    np.add.at(result.error, (pieces.row, pieces.panel), change)
+    return replace(result, unresolved=result.unresolved + pieces.row.size)
+
+
+def _evaluated(
+    density: Density, pieces: _Pieces, order: int, result: PanelIntegrals
+) -> tuple[Array, Array, PanelIntegrals]:
+    """One rule on every piece: integral, integral of the absolute value, and the counters brought forward."""
+    nodes, weights = gauss_legendre(order)
+    span = (pieces.high - pieces.low)[:, None]
+    x, slope = from_map(pieces.low[:, None] + span * nodes, pieces.scale[:, None])
+    ends = ends_of(np.broadcast_to(pieces.side[:, None], x.shape), x)
+    values = np.broadcast_to(density(pieces.row, ends), x.shape) * (slope * np.abs(span))
+    counted = replace(result, evaluations=result.evaluations + values.size)
+    counted = _inspected(counted, values, lambda i: (int(pieces.row[i[0]]), *(float(e[i[0], i[1]]) for e in ends)))
+    return np.add.reduce(values * weights, axis=1), np.add.reduce(np.abs(values) * weights, axis=1), counted
+
+
+def _inspected(
+    result: PanelIntegrals, values: Array, where: Callable[[Array], tuple[int, float, float]]
+) -> PanelIntegrals:
+    """Count what is not finite or negative, and remember the first such node."""
+    if values.size and np.min(values) >= 0 and np.max(values) < np.inf:
+        return result
+    finite = np.isfinite(values)
+    negative = finite & (values < 0)
+    bad = np.argwhere(~finite) if not finite.all() else np.argwhere(negative)
+    if bad.size == 0:
+        return result
+    worst = result.worst or (*where(bad[0]), float(values[tuple(bad[0])]))
+    return replace(
+        result,
+        non_finite=result.non_finite + int(np.sum(~finite)),
+        negative=result.negative + int(np.sum(negative)),
+        worst=worst,
+    )
