@@ -45,7 +45,7 @@ class Event:
 
     def __init__(self, reaction: Reaction, kinematics: Kinematics) -> None:
         self.reaction = reaction
-        self._kinematics = kinematics
+        self.kinematics = kinematics
         self._known: dict[Any, Any] = {}
 
     def _once(self, key: Any, make: Callable[[], Array]) -> Array:
@@ -59,17 +59,17 @@ class Event:
     @property
     def shape(self) -> tuple[int, ...]:
         """The shape of one quantity of the batch."""
-        return self._kinematics.shape
+        return self.kinematics.shape
 
     @property
     def s(self) -> Array:
         """s in GeV²."""
-        return self._once("s", lambda: self._kinematics.s.view())
+        return self._once("s", lambda: self.kinematics.s.view())
 
     @property
     def sqrt_s(self) -> Array:
         """√s in GeV."""
-        return self._once("sqrt_s", lambda: self._kinematics.sqrt_s.view())
+        return self._once("sqrt_s", lambda: self.kinematics.sqrt_s.view())
 
     @property
     def t(self) -> Array:
@@ -83,23 +83,23 @@ class Event:
 
     def mass(self, leg: LegKey) -> float:
         """The resolved mass of a leg in GeV; laws take masses from here, never from a table."""
-        return self._kinematics.mass(self.reaction.leg(leg))
+        return self.kinematics.mass(self.reaction.leg(leg))
 
     def dot(self, first: LegKey, second: LegKey) -> Array:
         """The four-product of two legs in GeV², free of cancellations where the kinematics allows it."""
         x, y = sorted((self.reaction.leg(first), self.reaction.leg(second)))
-        return self._once(("dot", x, y), lambda: self._kinematics.dot(x, y))
+        return self._once(("dot", x, y), lambda: self.kinematics.dot(x, y))
 
     def transfer(self, first: LegKey, second: LegKey) -> Array:
         """(p_first − p_second)² in GeV²."""
         x, y = sorted((self.reaction.leg(first), self.reaction.leg(second)))
-        return self._once(("transfer", x, y), lambda: self._kinematics.transfer(x, y))
+        return self._once(("transfer", x, y), lambda: self.kinematics.transfer(x, y))
 
     def vector(self, code: int, frame: Frame = LAB) -> FourVector:
         """The momentum of the leg with this code, in light-cone components."""
         key = ("vector", code, frame)
         if key not in self._known:
-            self._known[key] = self._kinematics.vector(code, frame)
+            self._known[key] = self.kinematics.vector(code, frame)
         vector: FourVector = self._known[key]
         return vector
 

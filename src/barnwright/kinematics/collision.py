@@ -66,3 +66,9 @@ class Collision:
         return Collision(
             self.sqrt_s[points], self.correction[points], self.stretch[points], self.orientation, self.target
         )
+
+    def facing_a(self) -> Collision:
+        """The same collision seen with +z along beam a."""
+        if self.orientation == 1:
+            return self
+        return Collision(self.sqrt_s, self.correction, 1.0 / self.stretch, 1, self.target)

@@ -111,7 +111,8 @@ class TwoBody:
     def transfer(self, first: int, second: int) -> Array:
         """(p_first − p_second)² in GeV²."""
         if (first < 0) == (second < 0):
-            return self._masses[first] ** 2 + self._masses[second] ** 2 - 2 * self.dot(first, second)
+            m, n = self._masses[first], self._masses[second]
+            return np.square((m - n) * (m + n) / self.sqrt_s) - 4 * np.square(self._momentum(first))
         beam, leg = min(first, second), max(first, second)
         energies, momenta = self._energy_difference(beam, leg), self._momentum_difference
         ceiling = (energies - momenta) * (energies + momenta)

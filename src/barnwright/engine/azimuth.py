@@ -1,0 +1,105 @@
+"""The outer axis: the azimuth, integrated only where a cut or a histogram asks for it.
+
+Without transverse polarisation nothing depends on the azimuth but the observables themselves. Panels in the azimuth end where an
+observable of the azimuth alone crosses an edge; where azimuth and polar angle mix, panels are halved until the answer settles.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from ..integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
+from ..integrate.panels import panels_between
+from ..integrate.polar_axis import Ends, Integers
+from ..integrate.roots import Crossings, crossings
+from ..observables import Observable
+from ..process import Process
+from .answer import Answer
+from .edges import levels_by_observable
+from .polar import over_polar_angle
+from .rows import Rows
+from .setting import Layout, Setting
+
+Array = NDArray[np.float64]
+
+TOLERANCE = 1e-11
+DEEPEST = 10
+
+
+def over_azimuth(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
+    """Totals, bins and asymmetries of every row, averaged over the azimuth where something depends on it."""
+    wanted = levels_by_observable(setting, layout)
+    if not any(observable.azimuthal for observable in wanted):
+        return over_polar_angle(process, setting, layout, rows)
+    answer = Answer.empty(rows.count, layout.components)
+    for point in range(rows.count):
+        one = Rows(rows.reaction, rows.collision.take(slice(point, point + 1)), rows.masses, rows.azimuth)
+        found = _one_point(process, setting, layout, one, wanted)
+        answer = answer.filled(np.array([point]), found)
+    return answer
+
+
+def _one_point(
+    process: Process, setting: Setting, layout: Layout, rows: Rows, wanted: dict[Observable, Array]
+) -> Answer:
+    low, high = _azimuth_panels(rows, wanted)
+    answer = Answer.empty(1, layout.components)
+    nodes, weights = gauss_legendre(FIRST_ORDER)
+    for depth in range(DEEPEST + 1):
+        azimuth = np.pi * (low[:, None] + (high - low)[:, None] * nodes).reshape(-1, 1)
+        many = rows.collision.take(np.zeros(azimuth.size, dtype=np.intp))
+        found = over_polar_angle(process, setting, layout, Rows(rows.reaction, many, rows.masses, azimuth))
+        share = 0.5 * (high - low)[:, None]
+        fine, coarse = (_summed(found.value, w) * share for w in (weights, embedded_weights()))
+        bound = np.abs(fine - coarse) + _summed(found.error, weights) * share
+        scale = max(float(np.max(np.abs(answer.value + fine.sum(axis=0)))), 1e-300)
+        done = (np.max(np.abs(fine - coarse), axis=1) <= TOLERANCE * scale) | (depth == DEEPEST)
+        answer.value[0] += fine[done].sum(axis=0)
+        answer.error[0] += bound[done].sum(axis=0)
+        answer = answer.counted(found)
+        if done.all():
+            break
+        low, high, middle = low[~done], high[~done], 0.5 * (low[~done] + high[~done])
+        low, high = np.concatenate([low, middle]), np.concatenate([middle, high])
+    return answer
+
+
+def _summed(values: Array, weights: Array) -> Array:
+    """(panel × node, component) summed over the nodes of each panel."""
+    shaped = values.reshape(-1, weights.size, values.shape[-1])
+    return np.asarray(np.add.reduce(shaped * weights[:, None], axis=1))
+
+
+def _azimuth_panels(rows: Rows, wanted: dict[Observable, Array]) -> tuple[Array, Array]:
+    """Ends of the azimuth panels as shares of π, between −1 and 1."""
+    parts = []
+    for observable, levels in wanted.items():
+        if observable.azimuthal and _azimuth_alone(rows, observable):
+            for entry in range(observable.entries):
+                parts.append(crossings(lambda _, ends, o=observable, e=entry: _at(rows, o, e, ends, 0.3), 1, levels))
+    quarter = Crossings(np.zeros(2, np.intp), np.array([0, 1]), np.array([0.5, 0.5]), np.zeros(2))
+    panels = panels_between(Crossings.join([quarter, *parts]), 1)
+    ends = panels.boundaries().c[0]
+    wide = np.diff(ends) > 0
+    return ends[:-1][wide], ends[1:][wide]
+
+
+def _azimuth_alone(rows: Rows, observable: Observable) -> bool:
+    """Whether the observable is the same at every polar angle."""
+    some = np.array([[-0.9, -0.2, 0.3, 0.8]])
+    ends = Ends(1 - some, 1 + some)
+    return all(
+        np.array_equal(_at(rows, observable, e, ends, -0.6), _at(rows, observable, e, ends, 0.8))
+        for e in range(observable.entries)
+    )
+
+
+def _at(rows: Rows, observable: Observable, entry: int, ends: Ends, cosine: float) -> Array:
+    """The observable at azimuths π·c, one polar angle."""
+    shape = ends.one_plus.shape
+    polar = Ends(np.full(shape, 1 - cosine), np.full(shape, 1 + cosine))
+    turned = Rows(rows.reaction, rows.collision, rows.masses, np.pi * ends.c)
+    found = np.asarray(observable.values(turned.event(None, polar)))
+    chosen = found[entry] if observable.quantifier is not None else found
+    return np.broadcast_to(chosen, np.broadcast_shapes(chosen.shape, shape)).reshape(shape)

@@ -1,0 +1,127 @@
+"""Where observables cross their edges and cut thresholds on the polar axis.
+
+Polar observables of the cm have their crossings in closed form, the same for every point of a scan; all others are searched.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator
+
+import numpy as np
+from numpy.typing import NDArray
+
+from ..integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
+from ..integrate.roots import EPSILON, Crossings, crossings
+from ..kinematics import Collision
+from ..observables import Observable
+from .setting import Layout, Setting
+
+Array = NDArray[np.float64]
+
+
+def levels_by_observable(setting: Setting, layout: Layout) -> dict[Observable, Array]:
+    """Every value at which an answer changes: bin edges, cut thresholds, asymmetry points; sorted, each once."""
+    found: dict[Observable, set[float]] = {}
+    for observable, values in _all_levels(setting, layout):
+        found.setdefault(observable, set()).update(v for v in values if v is not None and np.isfinite(v))
+    return {observable: np.array(sorted(values)) for observable, values in found.items()}
+
+
+def _all_levels(setting: Setting, layout: Layout) -> Iterator[tuple[Observable, tuple[float | None, ...]]]:
+    for cut in setting.cuts:
+        yield cut.observable, (cut.min, cut.max, *(cut.outside or ()))
+    for histogram in layout.histograms:
+        yield from zip(histogram.observables, histogram.edges, strict=True)
+    for asymmetry in layout.asymmetries:
+        yield asymmetry.observable, (asymmetry.at,)
+
+
+def is_polar(observable: Observable, collision: Collision) -> bool:
+    """Whether the observable is the polar angle of the cm, or its cosine, for this collision."""
+    if observable.axis is None or observable.quantifier is not None:
+        return False
+    return observable.axis.frame.kind == "cm" or lab_is_cm(collision)
+
+
+def lab_is_cm(collision: Collision) -> bool:
+    """Whether the lab is the cm at every point."""
+    return collision.target is None and bool(np.all(collision.stretch == 1.0))
+
+
+def polar_sign(observable: Observable, orientation: int) -> int:
+    """+1 when the observable's polar angle is that of leg 1 to beam a, −1 when it is its supplement."""
+    assert observable.axis is not None
+    return orientation if observable.axis.leg == 1 else -orientation
+
+
+def polar_values(observable: Observable, orientation: int, ends: Ends) -> Array:
+    """The values of a polar observable at locations on the axis."""
+    assert observable.axis is not None
+    sign = polar_sign(observable, orientation)
+    minus, plus = (ends.one_minus, ends.one_plus) if sign > 0 else (ends.one_plus, ends.one_minus)
+    if observable.axis.kind == "angle":
+        return 2 * np.arctan2(np.sqrt(minus), np.sqrt(plus))
+    cosine = Ends(minus, plus).c
+    return np.abs(cosine) if observable.axis.folded else cosine
+
+
+def polar_crossings(observable: Observable, orientation: int, levels: Array) -> Crossings:
+    """The crossings of a polar observable, in closed form, as those of row 0."""
+    assert observable.axis is not None
+    sign = polar_sign(observable, orientation)
+    if observable.axis.kind == "angle":
+        inside = levels[(levels > 0) & (levels < np.pi)]
+        forward = inside <= 0.5 * np.pi
+        x = np.where(forward, 2 * np.sin(0.5 * inside) ** 2, 2 * np.cos(0.5 * inside) ** 2)
+        wobble = 4 * EPSILON * inside * np.sin(inside)
+    else:
+        inside = levels[np.abs(levels) <= 1.0]
+        if observable.axis.folded:
+            inside = np.concatenate([inside[inside >= 0], -inside[inside > 0]])
+        forward = inside >= 0
+        x, wobble = 1.0 - np.abs(inside), np.zeros_like(inside)
+    side = np.where(forward == (sign > 0), FORWARD, BACKWARD)
+    return Crossings(np.zeros(x.size, dtype=np.intp), side, x, wobble + EPSILON * x)
+
+
+def axis_crossings(
+    wanted: dict[Observable, Array],
+    collision: Collision,
+    values: Callable[[Observable, Integers, Ends], Array],
+    rows: int,
+) -> tuple[Crossings, int]:
+    """All crossings, and for how many rows they are given: 1 when they are the same for all.
+
+    Parameters
+    ----------
+    wanted : the levels of each observable
+    values : function of observable, row numbers and locations, both of one shape
+    """
+    parts: list[Crossings] = []
+    shared: list[Crossings] = []
+    for observable, levels in wanted.items():
+        if is_polar(observable, collision):
+            shared.append(polar_crossings(observable, collision.orientation, levels))
+        else:
+            parts.extend(_searched(observable, levels, values, rows))
+    if not parts:
+        return Crossings.join(shared), 1
+    return Crossings.join([*(_for_every_row(s, rows) for s in shared), *parts]), rows
+
+
+def _searched(
+    observable: Observable, levels: Array, values: Callable[[Observable, Integers, Ends], Array], rows: int
+) -> Iterator[Crossings]:
+    for entry in range(observable.entries):
+
+        def one(row: Integers, ends: Ends, entry: int = entry) -> Array:
+            found = values(observable, row, ends)
+            return found[entry] if observable.quantifier is not None else found
+
+        yield crossings(one, rows, levels)
+
+
+def _for_every_row(shared: Crossings, rows: int) -> Crossings:
+    count = shared.x.size
+    repeated = [np.tile(a, rows) for a in (shared.side, shared.x, shared.uncertainty)]
+    return Crossings(np.repeat(np.arange(rows), count), *repeated)

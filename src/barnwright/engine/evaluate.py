@@ -1,0 +1,67 @@
+"""A worker's whole job: from a block to its tally.
+
+The sums of a block have the shape (moment, point, variation, component), with the moments value and error bound in GeV⁻².
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from ..beams import collide
+from ..integrate.block import Block
+from ..integrate.tally import Sums, Tally
+from ..process import Process
+from .answer import Answer
+from .azimuth import over_azimuth
+from .plan import Stage
+from .rows import Rows
+from .setting import Setting
+
+Array = NDArray[np.float64]
+
+
+def evaluate(block: Block, stage: Stage, process: Process) -> Tally:
+    """Work out a block.
+
+    Parameters
+    ----------
+    block : Block
+        A range of points of the plan.
+    stage : Stage
+    process : Process
+        The one that the plan names.
+
+    Raises
+    ------
+    PluginError
+        When one of the process's functions raises or returns an array of the wrong shape.
+    """
+    plan = stage.plan
+    group, first, last = plan.group_of(block.points)
+    shape = (last - first, len(group.settings), plan.layout.components)
+    added, largest = np.zeros((2, *shape)), np.zeros(shape)
+    total = Answer.empty(1, 1)
+    for number, setting in enumerate(group.settings):
+        answer = _setting_answer(process, stage, setting, slice(first, last))
+        added[0, :, number], added[1, :, number] = answer.value, answer.error
+        total = total.counted(answer)
+    return Tally(
+        block=block,
+        nodes={(0, 0): Sums(added, largest)},
+        counters=total.counters(),
+        worst=total.worst,
+    )
+
+
+def _setting_answer(process: Process, stage: Stage, setting: Setting, points: slice) -> Answer:
+    """One variation: the points below its threshold stay 0, the others are integrated."""
+    plan = stage.plan
+    collision = collide(setting.beams, setting.masses[:2]).take(points)
+    open_points = np.nonzero(collision.above(sum(setting.masses[2:]))[:, 0] > 0)[0]
+    answer = Answer.empty(collision.sqrt_s.shape[0], plan.layout.components)
+    if open_points.size == 0:
+        return answer
+    rows = Rows(plan.reaction, collision.take(open_points), setting.masses, np.zeros((1, 1)))
+    found = over_azimuth(process, setting, plan.layout, rows)
+    return answer.filled(open_points, found)

@@ -1,0 +1,146 @@
+"""The answer of all rows by integrals over panels of the polar axis, in closed form or by quadrature."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from ..event import Point
+from ..integrate.panels import Panels, panels_between
+from ..integrate.polar_axis import Ends, Integers
+from ..integrate.quadrature import PanelIntegrals, integrate_panels
+from ..integrate.roots import EPSILON
+from ..integrate.tally import WorstPoint
+from ..kinematics import CM
+from ..observables import Observable, compile_observable
+from ..process import Process
+from .answer import Answer
+from .edges import axis_crossings, levels_by_observable
+from .integrand import Integrand
+from .law import cumulative
+from .membership import OUTSIDE, memberships, passes
+from .rows import Rows
+from .setting import Layout, Setting
+
+Array = NDArray[np.float64]
+
+SMALL_SHARE = 1e-4
+"""Panels below this share of the total are done by quadrature: differences of antiderivatives lose digits there."""
+
+
+def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
+    """Totals, bins and asymmetries of every row."""
+    wanted = levels_by_observable(setting, layout)
+    found, given_for = axis_crossings(wanted, rows.collision, rows.values, rows.count)
+    panels = panels_between(found, given_for)
+    integrand = Integrand(process, setting, rows, process.parameters_of(setting.parameters))
+    if setting.rule == "closed_form":
+        integrals = _closed_form(integrand, panels)
+    else:
+        integrals = integrate_panels(integrand.density(), panels, integrand.scales(), rows.count)
+    return _collected(integrals, panels, setting, layout, rows)
+
+
+def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
+    """Differences of the antiderivative, with quadrature for the panels that are too small for them."""
+    setting, rows, process = integrand.setting, integrand.rows, integrand.process
+    assert setting.closed_form is not None
+    point = Point.of(rows.reaction, rows.collision, rows.masses)
+    x = _natural_values(process.closed_forms[setting.closed_form].observable, rows, panels.boundaries())
+    heights = cumulative(process, setting.closed_form, x, point, integrand.parameters)
+    direction = np.where(x[:, -1:] >= x[:, :1], 1.0, -1.0)
+    value = direction * np.diff(heights, axis=1)
+    error = 4 * EPSILON * (np.abs(heights[:, 1:]) + np.abs(heights[:, :-1])) * (panels.width > 0)
+    total = direction * (heights[:, -1:] - heights[:, :1])
+    bad = int(np.sum(~np.isfinite(heights)))
+    result = PanelIntegrals(np.where(panels.width > 0, value, 0.0), error, heights.size, non_finite=bad)
+    small = (panels.width > 0) & (value < SMALL_SHARE * total)
+    if setting.law is None or not small.any():
+        return result
+    chosen = np.nonzero(small.any(axis=0))[0]
+    some = Panels(panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0])
+    fine = integrate_panels(integrand.density(), some, integrand.scales(), rows.count)
+    use = small[:, chosen]
+    result.value[:, chosen] = np.where(use, fine.value, result.value[:, chosen])
+    result.error[:, chosen] = np.where(use, fine.error, result.error[:, chosen])
+    return PanelIntegrals(
+        result.value,
+        result.error,
+        heights.size + fine.evaluations,
+        bad + fine.non_finite,
+        fine.negative,
+        fine.worst,
+        fine.unresolved,
+    )
+
+
+def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
+    """A closed form's observable at locations, with +z along beam a whatever the request says."""
+    observable = compile_observable(text, rows.reaction)
+    if observable.axis is not None and observable.axis.kind == "cosine" and observable.axis.leg == 1 and not observable.axis.folded:
+        return ends.c
+    own = Rows(rows.reaction, rows.collision.facing_a(), rows.masses, rows.azimuth)
+    return own.values(observable, None, ends)
+
+
+def _collected(integrals: PanelIntegrals, panels: Panels, setting: Setting, layout: Layout, rows: Rows) -> Answer:
+    """Add the panels up into components."""
+    middle = panels.middle()
+    known: dict[Observable, Array] = {}
+
+    def values(observable: Observable) -> Array:
+        if observable not in known:
+            known[observable] = rows.values(observable, None, middle)
+        return known[observable]
+
+    answer = Answer.empty(rows.count, layout.components)
+    wobble = _wobbling(integrals, panels)
+    for component in memberships(layout, values, passes(setting, values)):
+        _add(answer.value, component, integrals.value)
+        _add(answer.error, component, integrals.error)
+        if wobble is not None:
+            changes = np.broadcast_to(component, (component.shape[0], panels.side.size))
+            uneven = np.where(changes[:, 1:] != changes[:, :-1], wobble, 0.0)
+            _add(answer.error, changes[:, 1:], uneven)
+            _add(answer.error, changes[:, :-1], uneven)
+    return Answer(
+        answer.value,
+        answer.error,
+        integrals.evaluations,
+        integrals.non_finite,
+        integrals.negative,
+        integrals.unresolved,
+        _worst(integrals, rows),
+    )
+
+
+def _add(target: Array, component: Integers, amounts: Array) -> None:
+    """target[row, component] += amounts, in the order of the panels; OUTSIDE is left away."""
+    rows, components = target.shape
+    shape = np.broadcast_shapes(amounts.shape, component.shape, (rows, 1))
+    component, amounts = np.broadcast_to(component, shape), np.broadcast_to(amounts, shape)
+    flat = np.where(component == OUTSIDE, components, component) + (components + 1) * np.arange(rows)[:, None]
+    summed = np.bincount(flat.ravel(), weights=amounts.ravel(), minlength=rows * (components + 1))
+    target += summed.reshape(rows, components + 1)[:, :components]
+
+
+def _wobbling(integrals: PanelIntegrals, panels: Panels) -> Array | None:
+    """The integrand at each inner boundary times the boundary's uncertainty, (row, panel − 1)."""
+    if not panels.wobble.any():
+        return None
+    width = panels.width
+    with np.errstate(divide="ignore", invalid="ignore"):
+        mean = np.where(width > 0, np.abs(integrals.value) / width, 0.0)
+    return np.maximum(mean[:, 1:], mean[:, :-1]) * panels.wobble
+
+
+def _worst(integrals: PanelIntegrals, rows: Rows) -> tuple[WorstPoint, ...]:
+    """The momenta of the first point that was not finite or negative."""
+    if integrals.worst is None:
+        return ()
+    row, one_minus, one_plus, value = integrals.worst
+    ends = Ends(np.array([[one_minus]]), np.array([[one_plus]]))
+    event = rows.event(np.array([row]), ends)
+    legs = (-1, -2, *range(1, len(rows.reaction.outgoing) + 1))
+    momenta = tuple(tuple(float(c) for c in event.vector(code, CM).components().reshape(4)) for code in legs)
+    return (WorstPoint(value=value, momenta=momenta),)

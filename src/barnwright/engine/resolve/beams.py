@@ -1,0 +1,151 @@
+"""From the beams of a request to beam settings: one entry a point of a scan."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+
+from ...beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
+from ...documents import ColliderBeams, DecayBeams, FixedTargetBeams
+from ...reaction import Reaction
+from .findings import Findings
+from .legs import beam_code
+
+LARGEST = 1e20
+"""GeV; beyond it the squares and fourth powers in |M|² leave the range of floats."""
+
+Columns = Mapping[str, Sequence[float]]
+"""Values of scanned beam fields ("sqrt_s", "energies.e-", "momentum", …), one entry a point."""
+
+
+@dataclass(frozen=True, slots=True)
+class BeamContext:
+    """What the beams are checked against: the reaction, and the masses in GeV of beam a and beam b."""
+
+    reaction: Reaction
+    masses: tuple[float, float]
+    findings: Findings
+    points: int = 1
+
+    def mass(self, code: int) -> float:
+        """The mass of a beam in GeV."""
+        return self.masses[-1 - code]
+
+    def name(self, code: int) -> str:
+        """The particle of a beam."""
+        return self.reaction.incoming[-1 - code]
+
+
+def resolve_beams(
+    beams: ColliderBeams | FixedTargetBeams | DecayBeams, columns: Columns, context: BeamContext
+) -> BeamSettings | None:
+    """Beam settings, or None and findings."""
+    if isinstance(beams, DecayBeams):
+        expected = "'collider' or 'fixed_target': the process has two incoming particles"
+        context.findings.add("beams.kind", "decay", expected, "'collider'")
+        return None
+    _refuse_polarisation(beams, context)
+    if isinstance(beams, ColliderBeams):
+        return _collider(beams, columns, context)
+    return _fixed_target(beams, columns, context)
+
+
+def _refuse_polarisation(beams: ColliderBeams | FixedTargetBeams, context: BeamContext) -> None:
+    for name, value in beams.polarisation.items():
+        where = f"beams.polarisation.{name}"
+        if beam_code(name, context.reaction, where, context.findings) is not None and value != 0:
+            expected = "0: the laws of this process have no helicities, so its beams are unpolarised"
+            context.findings.add(where, value, expected, "0")
+
+
+def _collider(beams: ColliderBeams, columns: Columns, context: BeamContext) -> BeamSettings | None:
+    findings = context.findings
+    ahead = -1
+    if beams.along_z is not None:
+        ahead = beam_code(beams.along_z, context.reaction, "beams.along_z", findings) or -1
+    if beams.crossing_angle:
+        findings.add("beams.crossing_angle", beams.crossing_angle, "0: beams head on", "0")
+    orientation = 1 if ahead == -1 else -1
+    if beams.energies is None:
+        values = _column("sqrt_s", beams.sqrt_s, columns, context)
+        least = sum(context.masses)
+        what = f"√s above the rest masses of the beams, {least!r} GeV"
+        _check("beams.sqrt_s", values, least, f"a number greater than {least!r} (GeV): {what}", findings)
+        return BeamSettings("sqrt_s", values, (), orientation)
+    kinetic: dict[int, tuple[float, ...]] = {}
+    for name, energy in beams.energies.items():
+        where = f"beams.energies.{name}"
+        code = beam_code(name, context.reaction, where, findings)
+        if code is None:
+            continue
+        values = _column(f"energies.{name}", energy, columns, context)
+        mass = context.mass(code)
+        expected = f"a number not less than the mass of {context.name(code)}, {mass!r} (GeV)"
+        _check(where, values, mass, expected, findings, closed=True)
+        kinetic[code] = tuple(kinetic_from_energy(v, mass) for v in values)
+    if set(kinetic) != {-1, -2}:
+        return None
+    if any(a + b == 0 for a, b in zip(kinetic[-1], kinetic[-2], strict=True)):
+        findings.add("beams.energies", beams.energies, "at least one beam that moves")
+    return BeamSettings("kinetic", kinetic[-1], kinetic[-2], orientation)
+
+
+def _fixed_target(beams: FixedTargetBeams, columns: Columns, context: BeamContext) -> BeamSettings | None:
+    findings = context.findings
+    target = -2
+    if beams.target is not None:
+        code = beam_code(beams.target, context.reaction, "beams.target", findings)
+        target = code if code is not None else target
+    moving = -3 - target
+    if beams.along_z is not None:
+        ahead = beam_code(beams.along_z, context.reaction, "beams.along_z", findings)
+        if ahead == target:
+            expected = f"the beam that moves, {context.name(moving)}; the target is at rest"
+            findings.add("beams.along_z", beams.along_z, expected, context.name(moving))
+    if context.mass(target) == 0:
+        other = context.name(moving) if context.mass(moving) > 0 else None
+        expected = f"a target with a mass; {context.name(target)} has none and cannot be at rest"
+        findings.add("beams.target", context.name(target), expected, other)
+        return None
+    kinetic = _kinetic(beams, columns, context, moving)
+    still = (0.0,) * context.points
+    first, second = (kinetic, still) if moving == -1 else (still, kinetic)
+    return BeamSettings("kinetic", first, second, 1 if moving == -1 else -1, target)
+
+
+def _kinetic(beams: FixedTargetBeams, columns: Columns, context: BeamContext, moving: int) -> tuple[float, ...]:
+    """Kinetic energies of the moving beam in GeV."""
+    mass, name = context.mass(moving), context.name(moving)
+    if beams.energy is not None:
+        values = _column("energy", beams.energy, columns, context)
+        expected = f"a number greater than the mass of {name}, {mass!r} (GeV)"
+        _check("beams.energy", values, mass, expected, context.findings)
+        return tuple(kinetic_from_energy(v, mass) for v in values)
+    if beams.momentum is not None:
+        values = _column("momentum", beams.momentum, columns, context)
+        _check("beams.momentum", values, 0.0, "a number greater than 0 (GeV)", context.findings)
+        return tuple(kinetic_from_momentum(v, mass) for v in values)
+    values = _column("kinetic_energy", beams.kinetic_energy, columns, context)
+    _check("beams.kinetic_energy", values, 0.0, "a number greater than 0 (GeV)", context.findings)
+    return values
+
+
+def _column(field: str, value: float | None, columns: Columns, context: BeamContext) -> tuple[float, ...]:
+    if field in columns:
+        return tuple(columns[field])
+    assert value is not None
+    return (value,) * context.points
+
+
+def _check(
+    where: str, values: Sequence[float], least: float, expected: str, findings: Findings, closed: bool = False
+) -> None:
+    """One finding for the first value that is too small, one for the first that is too large."""
+    for value in values:
+        if value < least or (value == least and not closed):
+            findings.add(where, value, expected)
+            break
+    for value in values:
+        if value > LARGEST:
+            findings.add(where, value, f"a number of at most {LARGEST:g} (GeV)")
+            break

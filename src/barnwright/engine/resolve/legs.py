@@ -1,0 +1,35 @@
+"""Which leg a request means by a name: beams by particle or as beam_a and beam_b, species by particle or antiparticle."""
+
+from __future__ import annotations
+
+from ...errors import nearest
+from ...particles import find
+from ...reaction import Reaction
+from .findings import Findings
+
+BEAM_CODES = {"beam_a": -1, "beam_b": -2}
+
+
+def beam_code(name: str, reaction: Reaction, where: str, findings: Findings) -> int | None:
+    """The leg code of the incoming particle called ``name``; None, and a finding, when there is no such beam."""
+    if name in BEAM_CODES and len(reaction.incoming) == 2:
+        return BEAM_CODES[name]
+    matches = [i for i, particle in enumerate(reaction.incoming) if particle == name]
+    if len(matches) == 1:
+        return -1 - matches[0]
+    if matches:
+        findings.add(where, name, f"beam_a or beam_b, since both beams are {name}", "beam_a")
+    else:
+        choices = (*dict.fromkeys(reaction.incoming), *BEAM_CODES)
+        findings.add(where, name, f"one of the beams: {', '.join(choices)}", nearest(name, choices))
+    return None
+
+
+def legs_of_species(name: str, reaction: Reaction) -> tuple[int, ...]:
+    """The codes of all legs that are this particle or its antiparticle."""
+    try:
+        both = {name, find(name).antiparticle}
+    except LookupError:
+        return ()
+    names = {**{-1 - i: p for i, p in enumerate(reaction.incoming)}, **dict(enumerate(reaction.outgoing, 1))}
+    return tuple(code for code, particle in names.items() if particle in both)

@@ -1,0 +1,64 @@
+"""The rows of a block: points of a scan above threshold, times azimuths where an observable asks for one."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from ..event import Event
+from ..integrate.polar_axis import Ends, Integers
+from ..kinematics import Collision, TwoBody
+from ..observables import Observable
+from ..reaction import Reaction
+from .edges import is_polar, polar_values
+from .setting import Masses
+
+Array = NDArray[np.float64]
+
+
+@dataclass(frozen=True, slots=True)
+class Rows:
+    """What a batch of events is made from; collision and azimuth have the shape (row, 1)."""
+
+    reaction: Reaction
+    collision: Collision
+    masses: Masses
+    azimuth: Array
+
+    @property
+    def count(self) -> int:
+        """How many rows there are."""
+        return int(self.collision.sqrt_s.shape[0])
+
+    def event(self, row: Integers | None, ends: Ends) -> Event:
+        """The events at locations on the polar axis.
+
+        ``row`` None: all rows, ends of shape (row or 1, node). Else ends of shape (line, node) with a row number a line, or
+        row numbers of the same shape as the ends.
+        """
+        collision, azimuth = self.collision, self.azimuth
+        if row is not None:
+            chosen = row if row.ndim == ends.one_plus.ndim else row[:, None]
+            flat = chosen.ravel()
+            shape = chosen.shape
+            collision = self._reshaped(flat, shape)
+            azimuth = azimuth if azimuth.size == 1 else azimuth[flat, 0].reshape(shape)
+        return Event(self.reaction, TwoBody(collision, self.masses, ends.one_minus, ends.one_plus, azimuth))
+
+    def two_body(self, ends: Ends) -> TwoBody:
+        """The bare kinematics of all rows at locations of shape (row or 1, node)."""
+        return TwoBody(self.collision, self.masses, ends.one_minus, ends.one_plus, self.azimuth)
+
+    def _reshaped(self, flat: Integers, shape: tuple[int, ...]) -> Collision:
+        whole = self.collision
+        taken = [a[flat, 0].reshape(shape) for a in (whole.sqrt_s, whole.correction, whole.stretch)]
+        return Collision(*taken, whole.orientation, whole.target)
+
+    def values(self, observable: Observable, row: Integers | None, ends: Ends) -> Array:
+        """An observable at locations on the polar axis, entries first where it has a quantifier."""
+        if is_polar(observable, self.collision):
+            return polar_values(observable, self.collision.orientation, ends)
+        with np.errstate(all="ignore"):
+            return observable.values(self.event(row, ends))

@@ -1,0 +1,95 @@
+"""A setting: everything a point of a prediction needs besides its beam energies, resolved and checked; pure data."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from math import prod
+from typing import Literal
+
+from ..beams import BeamSettings
+from ..observables import Cut, Observable
+
+Masses = tuple[float, float, float, float]
+ParameterValue = float | int | bool | str
+
+
+@dataclass(frozen=True, slots=True)
+class HistogramPlan:
+    """A histogram: observables (one or two), their edges, and whether contents are asked per value, bin or solid angle."""
+
+    name: str
+    observables: tuple[Observable, ...]
+    edges: tuple[tuple[float, ...], ...]
+    per: Literal["value", "bin", "solid_angle"]
+
+    @property
+    def shape(self) -> tuple[int, ...]:
+        """Bins on each axis."""
+        return tuple(len(e) - 1 for e in self.edges)
+
+    @property
+    def components(self) -> int:
+        """Bins of all axes, and the underflow and the overflow."""
+        return prod(self.shape) + 2
+
+
+@dataclass(frozen=True, slots=True)
+class AsymmetryPlan:
+    """An asymmetry between what lies above and what lies below a value of an observable: two components."""
+
+    name: str
+    observable: Observable
+    at: float
+
+
+@dataclass(frozen=True, slots=True)
+class Layout:
+    """Which component is what: the total first, then each histogram's bins, underflow, overflow, then (below, above) pairs."""
+
+    histograms: tuple[HistogramPlan, ...]
+    asymmetries: tuple[AsymmetryPlan, ...]
+
+    @property
+    def components(self) -> int:
+        """How many components there are."""
+        return 1 + sum(h.components for h in self.histograms) + 2 * len(self.asymmetries)
+
+    def histogram_slice(self, index: int) -> slice:
+        """The components of one histogram: bins, then underflow and overflow."""
+        start = 1 + sum(h.components for h in self.histograms[:index])
+        return slice(start, start + self.histograms[index].components)
+
+    def asymmetry_start(self, index: int) -> int:
+        """The component "below" of an asymmetry; "above" is the next."""
+        return 1 + sum(h.components for h in self.histograms) + 2 * index
+
+
+@dataclass(frozen=True, slots=True)
+class Setting:
+    """One entry of the variation axis.
+
+    Attributes
+    ----------
+    name : str
+        "" for the request as it stands, else the variation's name.
+    beams : BeamSettings
+        With one entry a point.
+    masses : four floats, GeV
+        Of beam a, beam b, leg 1, leg 2.
+    parameters : pairs of name and value
+    cuts : tuple of Cut
+    rule : "closed_form" or "quadrature"
+    closed_form, law : int or None
+        Which of the process's closed forms and laws answer.
+    peaks : pairs of "t" or "u" and a mass in GeV
+    """
+
+    name: str
+    beams: BeamSettings
+    masses: Masses
+    parameters: tuple[tuple[str, ParameterValue], ...]
+    cuts: tuple[Cut, ...]
+    rule: Literal["closed_form", "quadrature"]
+    closed_form: int | None
+    law: int | None
+    peaks: tuple[tuple[str, float], ...] = ()
