@@ -1,0 +1,129 @@
+"""All findings of a wrong request, at once.
+
+Pydantic looks at how fields fit together only where each field by itself is good. So that one mistake does not hide
+another, what was found wrong is taken out (or, where it is needed, replaced by something harmless), the rest is
+looked at again, and findings that may only follow from what was taken out are dropped.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from typing import Any
+
+from pydantic import BaseModel, ValidationError
+
+from barnwright.documents.checks import Path
+from barnwright.documents.findings import Located, located
+from barnwright.errors import Violation
+
+_ROUNDS = 12
+
+_BEAMS: dict[str, dict[str, Any]] = {
+    "collider": {"kind": "collider", "sqrt_s": 1.0},
+    "fixed_target": {"kind": "fixed_target", "energy": 1.0},
+    "decay": {"kind": "decay"},
+}
+_ENTRIES: dict[str, dict[str, Any]] = {
+    "cuts": {"observable": "x", "max": 1.0},
+    "histograms": {"observables": ["x"], "bins": [{"count": 1, "low": 0.0, "high": 1.0}]},
+    "derived": {"kind": "asymmetry", "observable": "x", "at": 0.0},
+    "variations": {},
+}
+
+
+def plain(value: Any) -> Any:
+    """The same values as Python's own: documents as tables, numpy's numbers and arrays as numbers and lists."""
+    if isinstance(value, BaseModel):
+        return plain(value.model_dump(exclude_unset=True))
+    if isinstance(value, Mapping):
+        return {key: plain(entry) for key, entry in value.items()}
+    if isinstance(value, (list, tuple)):
+        return [plain(entry) for entry in value]
+    return value.tolist() if type(value).__module__ == "numpy" and hasattr(value, "tolist") else value
+
+
+def examine(
+    values: Any, error: ValidationError, model: type[BaseModel], validate: Callable[[Any], Any]
+) -> list[Violation]:
+    """Every violation of ``values``, which are used up; ``error`` is the first that was found."""
+    kept: dict[Path, Violation] = {}
+    taken: set[Path] = set()
+    for _ in range(_ROUNDS):
+        found = located(error, model)
+        for entry in found:
+            if not _follows(entry, taken):
+                kept.setdefault(entry.path, entry.violation)
+        if not isinstance(values, dict) or not any([_take_out(values, entry, taken) for entry in found]):
+            break
+        try:
+            validate(values)
+            break
+        except ValidationError as further:
+            error = further
+    return list(kept.values())
+
+
+def _follows(entry: Located, taken: set[Path]) -> bool:
+    """Whether the finding may only be a consequence of what was taken out."""
+    looked_at = (entry.path, *entry.of)
+    return any(path == known[: len(path)] or known == path[: len(known)] for path in looked_at for known in taken)
+
+
+def _take_out(values: dict[str, Any], entry: Located, taken: set[Path]) -> bool:
+    """Take the value of a finding out, or make its whole section harmless; False when neither can be done."""
+    section = entry.path[:2] if len(entry.path) > 1 and isinstance(entry.path[1], int) else entry.path[:1]
+    key = _key(entry.path, len(section))
+    if not entry.missing and not entry.of and key not in taken and _delete(values, key):
+        taken.update((entry.path, key))
+        return True
+    return _soothe(values, section, taken)
+
+
+def _key(path: Path, least: int) -> Path:
+    """The nearest key above a value: it can be taken out without moving its neighbours."""
+    while len(path) > least and isinstance(path[-1], int):
+        path = path[:-1]
+    return path
+
+
+def _delete(values: dict[str, Any], path: Path) -> bool:
+    holder: Any = values
+    for part in path[:-1]:
+        holder = holder[part]
+    if not isinstance(holder, dict) or path[-1] not in holder:
+        return False
+    del holder[path[-1]]
+    return True
+
+
+def _soothe(values: dict[str, Any], section: Path, taken: set[Path]) -> bool:
+    """Replace the section by something harmless that keeps the kind of beams, or the name of an entry."""
+    head = str(section[0])
+    if head == "beams":
+        old = values.get(head)
+        kind = old.get("kind") if isinstance(old, Mapping) else None
+        return _put(values, head, _BEAMS[kind if kind in _BEAMS else "collider"], "kind", section, taken)
+    if len(section) == 2 and head in _ENTRIES:
+        return _put(values[head], section[1], _ENTRIES[head], "name", section, taken)
+    taken.add(section)
+    return _delete(values, section)
+
+
+def _put(holder: Any, last: str | int, harmless: dict[str, Any], kept: str, section: Path, taken: set[Path]) -> bool:
+    """Put a harmless table in a place; what is known to be replaced are all its keys but the kept one."""
+    old = holder[last] if last in holder or isinstance(holder, list) else None
+    if not isinstance(old, Mapping):
+        taken.add(section)
+        old = {}
+    if (*section, "harmless") in taken:
+        return False
+    word = old.get(kept)
+    good = isinstance(word, str) and 0 < len(word) <= 100 and word.isprintable()
+    new = {**harmless, kept: harmless.get(kept, f"#{last}")}
+    if good and kept == "name":
+        new[kept] = word
+    if new[kept] != word:
+        taken.add((*section, kept))
+    taken.update((*section, key) for key in {*old, *harmless, "harmless"} if key != kept)
+    holder[last] = new
+    return True
