@@ -78,7 +78,7 @@ def _azimuth_panels(rows: Rows, wanted: dict[Observable, Array]) -> tuple[Array,
         if observable.azimuthal and _azimuth_alone(rows, observable):
             for entry in range(observable.entries):
                 parts.append(crossings(lambda _, ends, o=observable, e=entry: _at(rows, o, e, ends, 0.3), 1, levels))
-    quarter = Crossings(np.zeros(2, np.intp), np.array([0, 1]), np.array([0.5, 0.5]), np.zeros(2))
+    quarter = Crossings(np.zeros(2, np.intp), np.array([0, 1]), np.array([0.5, 0.5]), np.zeros(2), np.zeros(2, dtype=bool))
     panels = panels_between(Crossings.join([quarter, *parts]), 1)
     ends = panels.boundaries().c[0]
     wide = np.diff(ends) > 0

@@ -11,7 +11,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from ..integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
-from ..integrate.roots import EPSILON, Crossings, crossings
+from ..integrate.extrema import EPSILON
+from ..integrate.roots import Crossings, crossings
 from ..kinematics import Collision
 from ..observables import Observable
 from .setting import Layout, Setting
@@ -81,7 +82,7 @@ def polar_crossings(observable: Observable, orientation: int, levels: Array) -> 
         forward = inside >= 0
         x, wobble = 1.0 - np.abs(inside), np.zeros_like(inside)
     side = np.where(forward == (sign > 0), FORWARD, BACKWARD)
-    return Crossings(np.zeros(x.size, dtype=np.intp), side, x, wobble + EPSILON * x)
+    return Crossings(np.zeros(x.size, dtype=np.intp), side, x, wobble + EPSILON * x, np.zeros(x.size, dtype=bool))
 
 
 def axis_crossings(
@@ -123,5 +124,5 @@ def _searched(
 
 def _for_every_row(shared: Crossings, rows: int) -> Crossings:
     count = shared.x.size
-    repeated = [np.tile(a, rows) for a in (shared.side, shared.x, shared.uncertainty)]
-    return Crossings(np.repeat(np.arange(rows), count), *repeated)
+    side, x, uncertainty, grazing = (np.tile(a, rows) for a in (shared.side, shared.x, shared.uncertainty, shared.grazing))
+    return Crossings(np.repeat(np.arange(rows), count), side, x, uncertainty, grazing)

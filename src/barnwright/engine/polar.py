@@ -9,7 +9,7 @@ from ..event import Point
 from ..integrate.panels import Panels, panels_between
 from ..integrate.polar_axis import Ends, Integers
 from ..integrate.quadrature import PanelIntegrals, integrate_panels
-from ..integrate.roots import EPSILON
+from ..integrate.extrema import EPSILON
 from ..integrate.tally import WorstPoint
 from ..kinematics import CM
 from ..observables import Observable, compile_observable
@@ -58,7 +58,7 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     if setting.law is None or not small.any():
         return result
     chosen = np.nonzero(small.any(axis=0))[0]
-    some = Panels(panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0])
+    some = Panels(panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0], panels.graze[:, :0])
     fine = integrate_panels(integrand.density(), some, integrand.scales(), rows.count)
     use = small[:, chosen]
     result.value[:, chosen] = np.where(use, fine.value, result.value[:, chosen])
@@ -94,15 +94,15 @@ def _collected(integrals: PanelIntegrals, panels: Panels, setting: Setting, layo
         return known[observable]
 
     answer = Answer.empty(rows.count, layout.components)
-    wobble = _wobbling(integrals, panels)
+    heights = _boundary_heights(integrals, panels)
     for component in memberships(layout, values, passes(setting, values)):
         _add(answer.value, component, integrals.value)
         _add(answer.error, component, integrals.error)
-        if wobble is not None:
-            changes = np.broadcast_to(component, (component.shape[0], panels.side.size))
-            uneven = np.where(changes[:, 1:] != changes[:, :-1], wobble, 0.0)
-            _add(answer.error, changes[:, 1:], uneven)
-            _add(answer.error, changes[:, :-1], uneven)
+        if heights is not None:
+            whole = np.broadcast_to(component, (component.shape[0], panels.side.size))
+            slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, panels.graze) * heights
+            _add(answer.error, whole[:, 1:], slack)
+            _add(answer.error, whole[:, :-1], slack)
     return Answer(
         answer.value,
         answer.error,
@@ -124,14 +124,14 @@ def _add(target: Array, component: Integers, amounts: Array) -> None:
     target += summed.reshape(rows, components + 1)[:, :components]
 
 
-def _wobbling(integrals: PanelIntegrals, panels: Panels) -> Array | None:
-    """The integrand at each inner boundary times the boundary's uncertainty, (row, panel − 1)."""
-    if not panels.wobble.any():
+def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:
+    """The integrand at each inner boundary, (row, panel − 1); None where no boundary is uncertain."""
+    if not (panels.wobble.any() or panels.graze.any()):
         return None
     width = panels.width
     with np.errstate(divide="ignore", invalid="ignore"):
         mean = np.where(width > 0, np.abs(integrals.value) / width, 0.0)
-    return np.maximum(mean[:, 1:], mean[:, :-1]) * panels.wobble
+    return np.maximum(mean[:, 1:], mean[:, :-1])
 
 
 def _worst(integrals: PanelIntegrals, rows: Rows) -> tuple[WorstPoint, ...]:

@@ -26,14 +26,15 @@ class Panels:
         The hemisphere of each panel.
     left, right : arrays, shape (row or 1, panel)
         x, the distance from the pole, at the end of smaller and of larger c.
-    wobble : array, shape (row or 1, panel − 1)
-        The uncertainty in c of the boundary between each panel and the next.
+    wobble, graze : arrays, shape (row or 1, panel − 1)
+        The uncertainty in c of the boundary between each panel and the next where a level is crossed, and where one is grazed.
     """
 
     side: Integers
     left: Array
     right: Array
     wobble: Array
+    graze: Array
 
     @property
     def width(self) -> Array:
@@ -56,29 +57,42 @@ class Panels:
 
 def panels_between(found: Crossings, rows: int) -> Panels:
     """The panels that the crossings of ``rows`` rows cut out of [−1, 1]."""
-    backward, backward_wobble = _sorted_by_row(found, rows, BACKWARD)
-    forward, forward_wobble = _sorted_by_row(found, rows, FORWARD)
+    backward, backward_slack = _sorted_by_row(found, rows, BACKWARD)
+    forward, forward_slack = _sorted_by_row(found, rows, FORWARD)
     pole, centre = np.zeros((rows, 1)), np.ones((rows, 1))
     rising = np.concatenate([pole, backward, centre], axis=1)
     falling = np.concatenate([pole, forward, centre], axis=1)[:, ::-1]
     side = np.repeat([BACKWARD, FORWARD], [rising.shape[1] - 1, falling.shape[1] - 1])
+    at_centre = _at_centre(found, rows)
+    wobble, graze = (
+        np.concatenate([b, m, f[:, ::-1]], axis=1) for b, m, f in zip(backward_slack, at_centre, forward_slack, strict=True)
+    )
     return Panels(
         side,
         np.concatenate([rising[:, :-1], falling[:, :-1]], axis=1),
         np.concatenate([rising[:, 1:], falling[:, 1:]], axis=1),
-        np.concatenate([backward_wobble, pole, forward_wobble[:, ::-1]], axis=1),
+        wobble,
+        graze,
     )
 
 
-def _sorted_by_row(found: Crossings, rows: int, side: int) -> tuple[Array, Array]:
-    """x and uncertainty of one hemisphere's crossings, (row, most crossings), sorted, padded with the centre."""
+def _at_centre(found: Crossings, rows: int) -> tuple[Array, Array]:
+    """Uncertainties of crossings that lie in the middle of the axis, crossed and grazed, shape (row, 1)."""
+    slack = np.zeros((2, rows, 1))
+    here = found.x >= 1
+    np.maximum.at(slack, (found.grazing[here].astype(int), found.row[here], 0), found.uncertainty[here])
+    return slack[0], slack[1]
+
+
+def _sorted_by_row(found: Crossings, rows: int, side: int) -> tuple[Array, tuple[Array, Array]]:
+    """x of one hemisphere's crossings, (row, most crossings), sorted, padded with the centre; and its two uncertainties."""
     chosen = (found.side == side) & (found.x > 0) & (found.x < 1)
-    row, x, wobble = found.row[chosen], found.x[chosen], found.uncertainty[chosen]
-    order = np.lexsort((x, row))
-    row, x, wobble = row[order], x[order], wobble[order]
+    order = np.lexsort((found.x[chosen], found.row[chosen]))
+    row, x, slack, grazing = (a[chosen][order] for a in (found.row, found.x, found.uncertainty, found.grazing))
     count = np.bincount(row, minlength=rows)
     place = np.arange(row.size) - np.repeat(np.cumsum(count) - count, count)
-    most = int(count.max()) if rows else 0
-    padded, slack = np.ones((rows, most)), np.zeros((rows, most))
-    padded[row, place], slack[row, place] = x, wobble
-    return padded, slack
+    most = int(count.max())
+    padded, wobble, graze = np.ones((rows, most)), np.zeros((rows, most)), np.zeros((rows, most))
+    padded[row, place] = x
+    wobble[row, place], graze[row, place] = np.where(grazing, 0.0, slack), np.where(grazing, slack, 0.0)
+    return padded, (wobble, graze)

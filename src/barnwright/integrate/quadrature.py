@@ -16,7 +16,7 @@ from numpy.typing import NDArray
 from .gauss import FIRST_ORDER, ORDERS, embedded_weights, gauss_legendre
 from .panels import Panels
 from .polar_axis import Ends, Integers, ends_of
-from .roots import EPSILON
+from .extrema import EPSILON
 
 Array = NDArray[np.float64]
 Density = Callable[[Integers | None, Ends], Array]
