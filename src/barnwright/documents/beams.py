@@ -53,7 +53,7 @@ class ColliderBeams(Document):
         | None
     ) = None
     along_z: Name | None = None
-    polarisation: BeamPolarisation = {}
+    polarisation: BeamPolarisation = Field(default_factory=dict)
 
     @model_validator(mode="after")
     def _agree(self) -> Self:
@@ -74,7 +74,7 @@ class FixedTargetBeams(Document):
     momentum: Energy | None = None
     target: Name | None = None
     along_z: Name | None = None
-    polarisation: BeamPolarisation = {}
+    polarisation: BeamPolarisation = Field(default_factory=dict)
 
     @model_validator(mode="after")
     def _agree(self) -> Self:
@@ -88,7 +88,7 @@ class DecayBeams(Document):
 
     kind: Literal["decay"]
     momentum: Mass | None = None
-    polarisation: ParentPolarisation = {}
+    polarisation: ParentPolarisation = Field(default_factory=dict)
     mass: Energy | None = None
 
 

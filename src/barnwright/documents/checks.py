@@ -12,8 +12,6 @@ from typing import Any
 
 from pydantic_core import PydanticCustomError
 
-from barnwright.errors import nearest
-
 Path = tuple[str | int, ...]
 
 

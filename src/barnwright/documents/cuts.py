@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import Annotated, Any, Self
 
-from pydantic import Field, model_validator
+from pydantic import model_validator
 
 from barnwright.documents.base import Document, Expects, Name, Number, Observable
 from barnwright.documents.checks import NOTHING, Finding, refuse
@@ -60,8 +60,9 @@ def named(cuts: tuple[Cut, ...]) -> tuple[Cut, ...]:
         if not cut.name:
             name = default_name(number, taken)
             taken.add(name)
-            cut = cut.model_copy(update={"name": name})
-        filled.append(cut)
+            filled.append(cut.model_copy(update={"name": name}))
+        else:
+            filled.append(cut)
     return tuple(filled)
 
 

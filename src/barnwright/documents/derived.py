@@ -19,7 +19,10 @@ def _differ(between: tuple[str, str] | None) -> list[Finding]:
 
 
 class AsymmetryRequest(Document):
-    """(above - below)/(above + below) of an observable at a value, or (first - second)/(first + second) of variations."""
+    """An asymmetry, in one of two forms.
+
+    Of an observable at a value: (above - below)/(above + below). Of two variations: (first - second)/(first + second).
+    """
 
     name: Name
     kind: Literal["asymmetry"]
@@ -33,11 +36,8 @@ class AsymmetryRequest(Document):
         forms = ("observable", "at", "between")
         both = "observable and at, or else between"
         if self.between is None:
-            found += [
-                Finding((name,), NOTHING, both, of=forms)
-                for name in ("observable", "at")
-                if getattr(self, name) is None
-            ]
+            missing = [name for name in ("observable", "at") if getattr(self, name) is None]
+            found += [Finding((name,), NOTHING, both, of=forms) for name in missing]
         elif self.observable is not None or self.at is not None:
             found.append(Finding(("between",), list(self.between), f"{both}, not both", of=forms))
         refuse(found)

@@ -12,6 +12,7 @@ from typing import Any
 
 from pydantic import BaseModel, ValidationError
 
+from barnwright.documents.base import MAX_NAME
 from barnwright.documents.checks import Path
 from barnwright.documents.findings import Located, located
 from barnwright.errors import Violation
@@ -99,31 +100,32 @@ def _delete(values: dict[str, Any], path: Path) -> bool:
 def _soothe(values: dict[str, Any], section: Path, taken: set[Path]) -> bool:
     """Replace the section by something harmless that keeps the kind of beams, or the name of an entry."""
     head = str(section[0])
+    holder = values.get(head)
     if head == "beams":
-        old = values.get(head)
-        kind = old.get("kind") if isinstance(old, Mapping) else None
-        return _put(values, head, _BEAMS[kind if kind in _BEAMS else "collider"], "kind", section, taken)
-    if len(section) == 2 and head in _ENTRIES:
-        return _put(values[head], section[1], _ENTRIES[head], "name", section, taken)
-    taken.add(section)
-    return _delete(values, section)
+        kind = holder.get("kind") if isinstance(holder, Mapping) else None
+        harmless = _BEAMS[kind if isinstance(kind, str) and kind in _BEAMS else "collider"]
+        values[head] = _harmless(holder, harmless, "kind", section, taken)
+    elif len(section) == 2 and head in _ENTRIES and isinstance(holder, list):
+        index = int(section[1])
+        harmless = {**_ENTRIES[head], "name": _name(holder[index]) or f"#{index}"}
+        holder[index] = _harmless(holder[index], harmless, "name", section, taken)
+    else:
+        taken.add(section)
+        return _delete(values, section)
+    return True
 
 
-def _put(holder: Any, last: str | int, harmless: dict[str, Any], kept: str, section: Path, taken: set[Path]) -> bool:
-    """Put a harmless table in a place; what is known to be replaced are all its keys but the kept one."""
-    old = holder[last] if last in holder or isinstance(holder, list) else None
+def _name(entry: Any) -> str | None:
+    name = entry.get("name") if isinstance(entry, Mapping) else None
+    return name if isinstance(name, str) and 0 < len(name) <= MAX_NAME and name.isprintable() else None
+
+
+def _harmless(old: Any, new: dict[str, Any], kept: str, section: Path, taken: set[Path]) -> dict[str, Any]:
+    """The harmless table; taken out are all keys, but not the kept one where it is as it was."""
+    keys = {*new, *old} if isinstance(old, Mapping) else {*new}
     if not isinstance(old, Mapping):
         taken.add(section)
-        old = {}
-    if (*section, "harmless") in taken:
-        return False
-    word = old.get(kept)
-    good = isinstance(word, str) and 0 < len(word) <= 100 and word.isprintable()
-    new = {**harmless, kept: harmless.get(kept, f"#{last}")}
-    if good and kept == "name":
-        new[kept] = word
-    if new[kept] != word:
-        taken.add((*section, kept))
-    taken.update((*section, key) for key in {*old, *harmless, "harmless"} if key != kept)
-    holder[last] = new
-    return True
+    elif old.get(kept) == new[kept]:
+        keys.discard(kept)
+    taken.update((*section, key) for key in keys)
+    return new

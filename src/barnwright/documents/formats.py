@@ -11,7 +11,7 @@ from barnwright.errors import RequestError, Violation, show
 MAX_DOCUMENT = 10_000_000
 
 
-class _Refused(ValueError):
+class _LaxJsonError(ValueError):
     """Something that JSON readers let pass and documents do not."""
 
 
@@ -20,12 +20,12 @@ def _no_repeats(pairs: list[tuple[str, Any]]) -> dict[str, Any]:
     if len(made) != len(pairs):
         keys = [key for key, _ in pairs]
         repeated = next(key for index, key in enumerate(keys) if key in keys[:index])
-        raise _Refused(f"the key {repeated!r} is there twice")
+        raise _LaxJsonError(f"the key {repeated!r} is there twice")
     return made
 
 
 def _no_constant(text: str) -> NoReturn:
-    raise _Refused(f"{text} is no finite number")
+    raise _LaxJsonError(f"{text} is no finite number")
 
 
 def _refuse(text: str, expected: str, position: int | None = None) -> NoReturn:

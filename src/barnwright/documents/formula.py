@@ -31,5 +31,5 @@ class Formula(Document):
     spin_colour: Literal["averaged", "summed"]
     parameters: Annotated[
         dict[Name, Number], Field(max_length=MAX_ITEMS), Expects("a table of names and their default numbers")
-    ] = {}
+    ] = Field(default_factory=dict)
     peaks: Annotated[tuple[FormulaPeak, ...], Field(max_length=MAX_ITEMS), Expects("a list of peaks")] = ()

@@ -81,7 +81,8 @@ class Bins(Document):
 class HistogramRequest(Document):
     """A histogram to be filled: one observable, or two for a two-dimensional one, and the bins of each.
 
-    ``per``: "value" gives the density dσ/dX, "bin" the content of each bin, "solid_angle" dσ/dΩ.
+    ``per``: "value" gives the density in the observables, "bin" the content of each bin, "solid_angle" the density
+    in solid angle.
     """
 
     name: Name

@@ -20,7 +20,9 @@ _PART = re.compile(r"""\s*(?:"([^"]*)"|'([^']*)'|\[(\d+)\]|([^.\["'\s]+))\s*(\.(
 
 
 def split_key(key: str) -> tuple[str | int, ...]:
-    """The parts of a path: ``'masses."mu-"'`` gives ``("masses", "mu-")``, ``cuts[0].max`` gives ``("cuts", 0, "max")``.
+    """The parts of a path.
+
+    ``'masses."mu-"'`` gives ``("masses", "mu-")``, ``cuts[0].max`` gives ``("cuts", 0, "max")``.
 
     Raises:
         RequestError: when the text is no path.
@@ -32,10 +34,8 @@ def split_key(key: str) -> tuple[str | int, ...]:
         if match is None:
             expected = "a path such as beams.sqrt_s or cuts[0].max; a part with dots in it stands in quotes"
             raise RequestError([Violation(key, show(key), expected, position=position)])
-        index = match.group(3)
-        parts.append(
-            int(index) if index is not None else next(part for part in match.group(1, 2, 4) if part is not None)
-        )
+        word = next(part for part in match.group(1, 2, 3, 4) if part is not None)
+        parts.append(int(word) if match.group(3) is not None else word)
         position = match.end()
     return tuple(parts)
 

@@ -65,8 +65,10 @@ class Request(Document):
     beams: Beams
     parameters: Annotated[
         dict[Name, ParameterValue], Field(max_length=MAX_ITEMS), Expects("a table of parameters and values")
-    ] = {}
-    masses: Annotated[dict[Name, Mass], Field(max_length=MAX_ITEMS), Expects("a table of legs and masses (GeV)")] = {}
+    ] = Field(default_factory=dict)
+    masses: Annotated[dict[Name, Mass], Field(max_length=MAX_ITEMS), Expects("a table of legs and masses (GeV)")] = (
+        Field(default_factory=dict)
+    )
     cuts: Annotated[tuple[Cut, ...], Field(max_length=MAX_ITEMS), Expects(f"a list of at most {MAX_ITEMS} cuts")] = ()
     histograms: Annotated[
         tuple[HistogramRequest, ...], Field(max_length=MAX_ITEMS), Expects(f"a list of at most {MAX_ITEMS} histograms")
@@ -99,7 +101,7 @@ class Request(Document):
     @model_validator(mode="wrap")
     @classmethod
     def _all_findings(cls, data: Any, handler: ModelWrapValidatorHandler[Self]) -> Self:
-        """Outside of all other checks: the quick road; where it fails, once more with plain values (numpy's made Python's), then all findings."""
+        """Outside of all other checks: the quick road; then once more with plain values; then all findings."""
         try:
             return handler(data)
         except ValidationError:

@@ -19,7 +19,7 @@ class BeamsChange(Document):
         BeforeValidator(_of_parent),
         Field(max_length=2),
         Expects("a table of at most two beams and their polarisations, each from -1 to 1"),
-    ] = {}
+    ] = Field(default_factory=dict)
 
 
 class Variation(Document):
@@ -28,8 +28,10 @@ class Variation(Document):
     name: Name
     parameters: Annotated[
         dict[Name, ParameterValue], Field(max_length=MAX_ITEMS), Expects("a table of parameters and values")
-    ] = {}
-    masses: Annotated[dict[Name, Mass], Field(max_length=MAX_ITEMS), Expects("a table of legs and masses (GeV)")] = {}
+    ] = Field(default_factory=dict)
+    masses: Annotated[dict[Name, Mass], Field(max_length=MAX_ITEMS), Expects("a table of legs and masses (GeV)")] = (
+        Field(default_factory=dict)
+    )
     beams: Annotated[BeamsChange, Expects("a table with polarisation; nothing else of the beams can vary")] | None = (
         None
     )
