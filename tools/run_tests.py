@@ -1,0 +1,61 @@
+"""Run the tests in groups, each within its budget of seconds on two cores: python tools/run_tests.py [GROUP ...]."""
+
+from __future__ import annotations
+
+import subprocess
+import sys
+import time
+from pathlib import Path
+
+ROOT = Path(__file__).resolve().parent.parent
+
+# folder under tests/ -> budget in seconds; together under 10 minutes
+BUDGETS = {
+    "house": 30,
+    "unit": 90,
+    "engine": 60,
+    "physics": 90,
+    "property": 90,
+    "cli": 60,
+    "service": 90,
+    "docs": 45,
+    "plugin": 45,
+}
+
+
+def forgotten() -> list[str]:
+    """Test files that no group would run."""
+    found = {path.relative_to(ROOT / "tests") for path in (ROOT / "tests").rglob("test_*.py")}
+    return sorted(str(path) for path in found if path.parts[0] not in BUDGETS)
+
+
+def run(group: str) -> tuple[bool, float]:
+    """Run one group; whether it passed in time, and its seconds."""
+    began = time.monotonic()
+    command = [sys.executable, "-m", "pytest", "-q", "--durations=3", f"tests/{group}"]
+    try:
+        passed = subprocess.run(command, cwd=ROOT, timeout=BUDGETS[group], check=False).returncode == 0
+    except subprocess.TimeoutExpired:
+        print(f"tests/{group} did not end within its budget of {BUDGETS[group]} s")
+        passed = False
+    return passed, time.monotonic() - began
+
+
+def main() -> None:
+    """Run the groups asked for, or all; exit 1 when one fails or a test belongs to none."""
+    if lost := forgotten():
+        sys.exit(f"these tests belong to no group of tools/run_tests.py: {', '.join(lost)}")
+    results = {}
+    for group in sys.argv[1:] or BUDGETS:
+        print(f"\n== tests/{group} (budget {BUDGETS[group]} s)", flush=True)
+        results[group] = run(group)
+    print()
+    for group, (passed, seconds) in results.items():
+        print(f"{'passed' if passed else 'FAILED'}  {group:10} {seconds:6.1f} s of {BUDGETS[group]} s")
+    passed = sum(ok for ok, _ in results.values())
+    print(f"groups: {passed} passed, {len(results) - passed} failed")
+    sys.exit(passed < len(results))
+
+
+if __name__ == "__main__":
+    main()
