@@ -5,13 +5,20 @@ from __future__ import annotations
 from barnwright.documents.accuracy import Accuracy
 from barnwright.documents.base import Document
 from barnwright.documents.beams import ColliderBeams, DecayBeams, FixedTargetBeams
+from barnwright.documents.by_name import ByName
 from barnwright.documents.cuts import Cut, CutChange
 from barnwright.documents.derived import AsymmetryRequest, RatioRequest
+from barnwright.documents.description import ParameterDescription, ProcessDescription, ProcessSummary
+from barnwright.documents.estimate import Estimate, Total
 from barnwright.documents.findings import violations_of
 from barnwright.documents.formula import Formula, FormulaPeak
+from barnwright.documents.histogram import Covariance, Histogram
 from barnwright.documents.histograms import Bins, HistogramRequest
 from barnwright.documents.merge import merge, split_key
+from barnwright.documents.notes import Diagnostics, Note, Run
+from barnwright.documents.prediction import Prediction
 from barnwright.documents.request import Request
+from barnwright.documents.results import Derived, DerivedBins, Part
 from barnwright.documents.variations import BeamsChange, Variation
 
 __all__ = [
@@ -19,17 +26,32 @@ __all__ = [
     "AsymmetryRequest",
     "BeamsChange",
     "Bins",
+    "ByName",
     "ColliderBeams",
+    "Covariance",
     "Cut",
     "CutChange",
     "DecayBeams",
+    "Derived",
+    "DerivedBins",
+    "Diagnostics",
     "Document",
+    "Estimate",
     "FixedTargetBeams",
     "Formula",
     "FormulaPeak",
+    "Histogram",
     "HistogramRequest",
+    "Note",
+    "ParameterDescription",
+    "Part",
+    "Prediction",
+    "ProcessDescription",
+    "ProcessSummary",
     "RatioRequest",
     "Request",
+    "Run",
+    "Total",
     "Variation",
     "merge",
     "split_key",

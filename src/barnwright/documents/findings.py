@@ -168,7 +168,8 @@ def _step(place: Place, step: str | int) -> Place:
     arguments = get_args(core)
     if get_origin(core) is dict:
         return Place((*place.path, step), *_unwrap(arguments[1]))
-    if isinstance(step, int) and get_origin(core) in (tuple, list):
+    origin = get_origin(core)
+    if isinstance(step, int) and isinstance(origin, type) and issubclass(origin, Sequence):
         inner = arguments[0] if arguments[-1] is Ellipsis or step >= len(arguments) else arguments[step]
         return Place((*place.path, step), *_unwrap(inner))
     return place
