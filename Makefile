@@ -70,7 +70,7 @@ snapshots: $(BUILT) $(FOR_DEVELOPERS)  ## Accept the present public names and he
 	UPDATE_SNAPSHOTS=1 $(PY) -m pytest -q tests/house
 
 bench: $(BUILT) $(FOR_DEVELOPERS)  ## Measure: ratios against plain numpy loops in the same run
-	@for file in benchmarks/*.py; do $(PY) "$$file"; done
+	@for file in benchmarks/bench_*.py; do $(PY) "$$file"; done
 
 statistics: $(BUILT) $(FOR_DEVELOPERS)  ## The slow studies: property tests with fresh seeds and many more examples
 	HYPOTHESIS_PROFILE=statistics $(PY) -m pytest -q --timeout 3600 tests/property
