@@ -1,0 +1,125 @@
+"""The Python face: predict, scan, processes, describe, connect.
+
+A request may be the path of a TOML or JSON file, a dict, a Request, or keyword fields with the names of the document;
+keyword fields beside a request are merged into it. The values are those of the document: GeV, rad.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from os import PathLike
+from pathlib import Path
+from typing import TYPE_CHECKING, Any, NoReturn
+
+from barnwright.documents import Request
+from barnwright.documents.formats import read_json, read_toml
+from barnwright.errors import RequestError, Violation, nearest, show
+
+if TYPE_CHECKING:
+    from barnwright.client import AsyncClient, Client
+    from barnwright.documents import Prediction
+    from barnwright.documents.description import ProcessDescription, ProcessSummary
+    from barnwright.process import Process
+    from barnwright.run.local import Sweep
+
+__all__ = ["connect", "connect_async", "describe", "predict", "processes", "scan"]
+
+RequestLike = str | PathLike[str] | Mapping[str, Any] | Request
+
+
+def predict(request: RequestLike | None = None, /, **fields: Any) -> Prediction:
+    """Calculate one prediction here, in this process.
+
+    ``request`` is a path that ends in .toml or .json, a dict, or a Request; ``fields`` are fields of the request, for
+    instance ``process="qed/compton"`` (or a Process object made in a notebook), ``unit="nb"``, ``cuts=[...]``; beside
+    a request they are merged into it. The prediction's total and histograms are in the units that the request asks
+    for.
+
+    Raises RequestError with every finding at once, UnknownProcessError, PluginError when the process misbehaves, and
+    CalculationError when no answer can be given.
+    """
+    from barnwright.run.local import predict as calculate
+
+    document, process = _request(request, fields)
+    return calculate(document, process)
+
+
+def scan(request: RequestLike | None = None, /, *, over: Mapping[str, Sequence[Any]], **fields: Any) -> Sweep:
+    """Calculate a prediction at every value of a request's key, or on the grid of several, as one plan.
+
+    ``over`` gives for each dotted key (``"beams.sqrt_s"``, ``"parameters.z_mass"``) its values in GeV, rad or none.
+    The result has ``values`` and ``errors``, arrays of the totals of shape (point,), in the request's unit;
+    ``sweep[i]`` is made into a Prediction when asked for. Raises what ``predict`` raises.
+    """
+    from barnwright.run.local import scan as calculate
+
+    document, process = _request(request, fields)
+    return calculate(document, over, process)
+
+
+def processes() -> list[ProcessSummary]:
+    """Every process that is installed, sorted by name, the broken ones with the cause. Imports no plugin."""
+    from barnwright.run.describe import summaries
+
+    return summaries()
+
+
+def describe(name: str) -> ProcessDescription:
+    """What a process is: reaction, laws, parameters with units and sources, observables, cautions, a ready request.
+
+    Raises UnknownProcessError with the nearest names, and PluginError with the cause when its plugin is broken.
+    """
+    from barnwright.run.describe import describe as description
+
+    return description(name)
+
+
+def connect(address: str, **options: Any) -> Client:
+    """A client of a running server at "host:port" with the same face: predict, scan, processes, describe.
+
+    Raises ServerError when the server cannot be reached; needs the extra ``service``.
+    """
+    from barnwright.client import connect as open_client
+
+    return open_client(address, **options)
+
+
+def connect_async(address: str, **options: Any) -> AsyncClient:
+    """The same client for asyncio: ``await client.predict(...)``."""
+    from barnwright.client import connect_async as open_client
+
+    return open_client(address, **options)
+
+
+def read_request(path: str | PathLike[str]) -> dict[str, Any]:
+    """The fields of a request in a file whose name ends in .toml or .json, not yet checked.
+
+    Raises RequestError when there is no such file, or when it is not what its name says.
+    """
+    file = Path(path)
+    readers = {".toml": read_toml, ".json": read_json}
+    if file.suffix.lower() not in readers:
+        _refuse(file, "a dict, a Request, or the path of a file that ends in .toml or .json")
+    if not file.is_file():
+        siblings = [entry.name for entry in file.parent.glob("*") if entry.suffix.lower() in readers]
+        _refuse(file, "a file that exists", nearest(file.name, siblings))
+    try:
+        fields = readers[file.suffix.lower()](file.read_text(encoding="utf-8"))
+    except UnicodeDecodeError:
+        _refuse(file, "a text file in UTF-8")
+    if not isinstance(fields, dict):
+        _refuse(file, "a JSON object with the keys of a request")
+    return fields
+
+
+def _refuse(file: Path, expected: str, near: str | None = None) -> NoReturn:
+    raise RequestError([Violation("request", show(str(file)), expected, near)])
+
+
+def _request(request: RequestLike | None, fields: Mapping[str, Any]) -> tuple[Request, Process | None]:
+    """The request document, and the process object where one was handed in instead of a name."""
+    source = read_request(request) if isinstance(request, str | PathLike) else request
+    process = fields.get("process", source.get("process") if isinstance(source, Mapping) else None)
+    if process is None or isinstance(process, str):
+        return Request.accept(source, **fields), None
+    return Request.accept(source, **{**fields, "process": process.name}), process

@@ -1,0 +1,98 @@
+"""Lists and descriptions of processes for people."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Sequence
+from typing import TYPE_CHECKING
+
+from rich.console import Group, RenderableType
+from rich.table import Table
+from rich.text import Text
+
+from barnwright.cli.tables import bullets, pairs, titled
+
+if TYPE_CHECKING:
+    from barnwright.documents.description import ParameterDescription, ProcessDescription, ProcessSummary
+
+CAUTION = (
+    "Predictions hold at the stated order and range of validity; work that can hurt someone follows local rules and "
+    "a qualified radiation-protection expert."
+)
+
+
+def summaries_view(summaries: Sequence[ProcessSummary]) -> RenderableType:
+    """The list of processes, and below it the broken ones with their causes."""
+    healthy = [entry for entry in summaries if entry.broken is None]
+    broken = [entry for entry in summaries if entry.broken is not None]
+    parts: list[RenderableType] = []
+    if healthy:
+        table = titled("", ("process", "reaction", "order", "summary"), numbers=False)
+        for entry in healthy:
+            table.add_row(*(Text(text or "") for text in (entry.name, entry.reaction, entry.order, entry.summary)))
+        parts.append(table)
+    if broken:
+        table = titled("broken", ("process", "from", "cause"), numbers=False)
+        for entry in broken:
+            table.add_row(*map(Text, (entry.name, f"{entry.distribution} {entry.version}", entry.broken or "")))
+        parts.append(table)
+    return Group(*parts) if parts else Text("no process is installed: install a plugin, such as barnwright-qed")
+
+
+def description_view(description: ProcessDescription) -> RenderableType:
+    """One process in full, the ready request last so that it can be copied."""
+    return Group(*_description(description))
+
+
+def _description(description: ProcessDescription) -> Iterator[RenderableType]:
+    yield Text(description.name, style="bold")
+    yield pairs(_facts(description))
+    if description.parameters:
+        yield _parameters(description.parameters)
+    if description.masses:
+        yield _masses(description.masses)
+    lists = {
+        "observables": description.observables,
+        "derived quantities": description.derived,
+        "cautions": (*description.cautions, CAUTION),
+        "references": description.references,
+    }
+    for title, entries in lists.items():
+        if entries:
+            yield bullets(title, entries)
+    yield Text("\na request to start from", style="bold")
+    yield Text(description.request.rstrip())
+
+
+def _facts(description: ProcessDescription) -> Iterator[tuple[str, str]]:
+    yield "reaction", description.reaction or ""
+    yield "summary", description.summary or ""
+    yield "order", description.order or ""
+    yield "from", f"{description.distribution} {description.version}"
+    yield "laws", ", ".join(description.laws)
+    if description.contributions:
+        yield "contributions", ", ".join(description.contributions)
+    yield "singular", ", ".join(description.singular) or "nowhere"
+    yield "validity", validity_text(description)
+
+
+def validity_text(description: ProcessDescription) -> str:
+    """The range of sqrt(s) in GeV and the sentence that goes with it."""
+    limits = (("from", description.sqrt_s_min), ("up to", description.sqrt_s_max))
+    span = " ".join(f"{word} {limit:g} GeV" for word, limit in limits if limit is not None)
+    return "; ".join(text for text in (f"sqrt_s {span}" if span else "", description.validity) if text) or "not stated"
+
+
+def _parameters(parameters: Iterable[ParameterDescription]) -> Table:
+    table = titled("parameters", ("name", "default", "unit", "meaning", "source"), numbers=False)
+    for entry in parameters:
+        default = "required" if entry.required else str(entry.default)
+        choices = f" (one of {', '.join(entry.choices)})" if entry.choices else ""
+        table.add_row(*map(Text, (entry.name, default, entry.unit, f"{entry.meaning}{choices}", entry.source)))
+    return table
+
+
+def _masses(masses: dict[str, float]) -> Table:
+    table = titled("masses", ("leg", "GeV"), numbers=False)
+    for name, mass in masses.items():
+        table.add_row(Text(name), Text(f"{mass:.10g}"))
+    return table

@@ -1,0 +1,33 @@
+"""barnwright serve: the gRPC server."""
+
+from __future__ import annotations
+
+from typing import Annotated
+
+import typer
+
+from barnwright.cli.outcome import ExitCode, run
+
+Address = Annotated[
+    str, typer.Option("--address", metavar="HOST:PORT", help="Where to listen; port 0 takes a free one.")
+]
+Insecure = Annotated[
+    bool, typer.Option("--insecure", help="Listen on other than loopback addresses without encryption.")
+]
+
+
+def serve(address: Address = "127.0.0.1:50551", insecure: Insecure = False) -> None:
+    """Answer requests over gRPC until SIGTERM or Ctrl-C; says when it is ready.
+
+    \b
+    Examples:
+      barnwright serve
+      barnwright serve --address 127.0.0.1:0
+    """
+    run(lambda: _serve(address, insecure))
+
+
+def _serve(address: str, insecure: bool) -> ExitCode:
+    from barnwright.service import serve as start
+
+    return ExitCode(start(address, insecure=insecure))

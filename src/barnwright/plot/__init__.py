@@ -1,0 +1,13 @@
+"""Pictures of predictions and scans; matplotlib is imported when the first one is drawn.
+
+figure = barnwright.plot.draw(prediction)
+figure.savefig("angle.pdf")
+"""
+
+from __future__ import annotations
+
+from barnwright.plot.backend import check_picture, encode
+from barnwright.plot.prediction import check_drawable, draw
+from barnwright.plot.scan import check_axes, draw_scan
+
+__all__ = ["check_axes", "check_drawable", "check_picture", "draw", "draw_scan", "encode"]
