@@ -9,8 +9,8 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from ..kinematics import Collision
-from .beam_settings import BeamSettings
+from barnwright.beams.beam_settings import BeamSettings
+from barnwright.kinematics import Collision
 
 Array = NDArray[np.float64]
 
@@ -45,7 +45,9 @@ def collide(beams: BeamSettings, masses: tuple[float, float]) -> Collision:
     total = m_a + m_b
     sqrt_s = np.sqrt(total * total + excess)
     correction = excess / (sqrt_s + total) - (sqrt_s - total)
-    ahead, behind = ((first, m_a, p_a), (second, m_b, p_b)) if beams.orientation == 1 else ((second, m_b, p_b), (first, m_a, p_a))
+    ahead, behind = (
+        ((first, m_a, p_a), (second, m_b, p_b)) if beams.orientation == 1 else ((second, m_b, p_b), (first, m_a, p_a))
+    )
     stretch = np.sqrt((_large(*ahead) + _small(*behind)) / (_small(*ahead) + _large(*behind)))
     return Collision(sqrt_s, correction, stretch, beams.orientation, beams.target)
 

@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 
 from ..integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
 from ..integrate.panels import panels_between
-from ..integrate.polar_axis import Ends, Integers
+from ..integrate.polar_axis import Ends
 from ..integrate.roots import Crossings, crossings
 from ..observables import Observable
 from ..process import Process
@@ -78,7 +78,9 @@ def _azimuth_panels(rows: Rows, wanted: dict[Observable, Array]) -> tuple[Array,
         if observable.azimuthal and _azimuth_alone(rows, observable):
             for entry in range(observable.entries):
                 parts.append(crossings(lambda _, ends, o=observable, e=entry: _at(rows, o, e, ends, 0.3), 1, levels))
-    quarter = Crossings(np.zeros(2, np.intp), np.array([0, 1]), np.array([0.5, 0.5]), np.zeros(2), np.zeros(2, dtype=bool))
+    quarter = Crossings(
+        np.zeros(2, np.intp), np.array([0, 1]), np.array([0.5, 0.5]), np.zeros(2), np.zeros(2, dtype=bool)
+    )
     panels = panels_between(Crossings.join([quarter, *parts]), 1)
     ends = panels.boundaries().c[0]
     wide = np.diff(ends) > 0

@@ -10,8 +10,8 @@ from collections.abc import Callable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from ..integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
 from ..integrate.extrema import EPSILON
+from ..integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
 from ..integrate.roots import Crossings, crossings
 from ..kinematics import Collision
 from ..observables import Observable
@@ -124,5 +124,7 @@ def _searched(
 
 def _for_every_row(shared: Crossings, rows: int) -> Crossings:
     count = shared.x.size
-    side, x, uncertainty, grazing = (np.tile(a, rows) for a in (shared.side, shared.x, shared.uncertainty, shared.grazing))
+    side, x, uncertainty, grazing = (
+        np.tile(a, rows) for a in (shared.side, shared.x, shared.uncertainty, shared.grazing)
+    )
     return Crossings(np.repeat(np.arange(rows), count), side, x, uncertainty, grazing)

@@ -6,10 +6,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from ..event import Point
+from ..integrate.extrema import EPSILON
 from ..integrate.panels import Panels, panels_between
 from ..integrate.polar_axis import Ends, Integers
 from ..integrate.quadrature import PanelIntegrals, integrate_panels
-from ..integrate.extrema import EPSILON
 from ..integrate.tally import WorstPoint
 from ..kinematics import CM
 from ..observables import Observable, compile_observable
@@ -58,7 +58,9 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     if setting.law is None or not small.any():
         return result
     chosen = np.nonzero(small.any(axis=0))[0]
-    some = Panels(panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0], panels.graze[:, :0])
+    some = Panels(
+        panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0], panels.graze[:, :0]
+    )
     fine = integrate_panels(integrand.density(), some, integrand.scales(), rows.count)
     use = small[:, chosen]
     result.value[:, chosen] = np.where(use, fine.value, result.value[:, chosen])
@@ -77,7 +79,12 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
 def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
     """A closed form's observable at locations, with +z along beam a whatever the request says."""
     observable = compile_observable(text, rows.reaction)
-    if observable.axis is not None and observable.axis.kind == "cosine" and observable.axis.leg == 1 and not observable.axis.folded:
+    if (
+        observable.axis is not None
+        and observable.axis.kind == "cosine"
+        and observable.axis.leg == 1
+        and not observable.axis.folded
+    ):
         return ends.c
     own = Rows(rows.reaction, rows.collision.facing_a(), rows.masses, rows.azimuth)
     return own.values(observable, None, ends)

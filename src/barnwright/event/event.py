@@ -8,8 +8,8 @@ from typing import Any, Protocol
 import numpy as np
 from numpy.typing import NDArray
 
-from ..kinematics import LAB, FourVector, Frame
-from ..reaction import Reaction
+from barnwright.kinematics import LAB, FourVector, Frame
+from barnwright.reaction import Reaction
 
 Array = NDArray[np.float64]
 LegKey = str | int | tuple[str, int]

@@ -7,9 +7,9 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from ..kinematics import Collision
-from ..reaction import Reaction
-from .event import LegKey
+from barnwright.event.event import LegKey
+from barnwright.kinematics import Collision
+from barnwright.reaction import Reaction
 
 Array = NDArray[np.float64]
 

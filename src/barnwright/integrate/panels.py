@@ -65,7 +65,8 @@ def panels_between(found: Crossings, rows: int) -> Panels:
     side = np.repeat([BACKWARD, FORWARD], [rising.shape[1] - 1, falling.shape[1] - 1])
     at_centre = _at_centre(found, rows)
     wobble, graze = (
-        np.concatenate([b, m, f[:, ::-1]], axis=1) for b, m, f in zip(backward_slack, at_centre, forward_slack, strict=True)
+        np.concatenate([b, m, f[:, ::-1]], axis=1)
+        for b, m, f in zip(backward_slack, at_centre, forward_slack, strict=True)
     )
     return Panels(
         side,

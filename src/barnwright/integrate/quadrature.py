@@ -13,10 +13,10 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
+from .extrema import EPSILON
 from .gauss import FIRST_ORDER, ORDERS, embedded_weights, gauss_legendre
 from .panels import Panels
 from .polar_axis import Ends, Integers, ends_of
-from .extrema import EPSILON
 
 Array = NDArray[np.float64]
 Density = Callable[[Integers | None, Ends], Array]
@@ -115,7 +115,9 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
     size = _weighted(np.abs(values), weights)
     error = np.abs(fine - coarse)
     result = PanelIntegrals(fine, error, values.size)
-    result = _inspected(result, values, lambda i: (int(i[0]), *(float(e[min(i[0], len(e) - 1), i[1], i[2]]) for e in ends)))
+    result = _inspected(
+        result, values, lambda i: (int(i[0]), *(float(e[min(i[0], len(e) - 1), i[1], i[2]]) for e in ends))
+    )
     todo = np.nonzero(error > TOLERANCE * size)
     if todo[0].size:
         shape = (rows, panels.side.size)

@@ -41,9 +41,7 @@ class FourVector:
         larger = energy + np.abs(pz)
         smaller = (np.square(mass) + pt * pt) / np.where(larger > 0, larger, 1.0)
         forward = pz >= 0
-        return cls(
-            np.where(forward, larger, smaller), np.where(forward, smaller, larger), pt, np.arctan2(py, px), mass
-        )
+        return cls(np.where(forward, larger, smaller), np.where(forward, smaller, larger), pt, np.arctan2(py, px), mass)
 
     @cached_property
     def energy(self) -> Array:

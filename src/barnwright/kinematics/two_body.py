@@ -16,9 +16,9 @@ from functools import cached_property
 import numpy as np
 from numpy.typing import NDArray
 
-from .collision import Collision
-from .four_vector import FourVector, boost_to_rest
-from .frame import CM, Frame
+from barnwright.kinematics.collision import Collision
+from barnwright.kinematics.four_vector import FourVector, boost_to_rest
+from barnwright.kinematics.frame import CM, Frame
 
 Array = NDArray[np.float64]
 

@@ -1,5 +1,5 @@
 """Phase space: densities and the shape of peaks on its axes; today two bodies."""
 
-from .two_body import peak_scale, two_body_density
+from barnwright.phase_space.two_body import peak_scale, two_body_density
 
 __all__ = ["peak_scale", "two_body_density"]

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from ..kinematics import Collision, TwoBody
+from barnwright.kinematics import Collision, TwoBody
 
 Array = NDArray[np.float64]
 

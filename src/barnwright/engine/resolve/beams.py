@@ -5,11 +5,12 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
+from resolve.findings import Findings
+from resolve.legs import beam_code
+
 from ...beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
 from ...documents import ColliderBeams, DecayBeams, FixedTargetBeams
 from ...reaction import Reaction
-from .findings import Findings
-from .legs import beam_code
 
 LARGEST = 1e20
 """GeV; beyond it the squares and fourth powers in |M|² leave the range of floats."""

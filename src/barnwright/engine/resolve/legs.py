@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+from resolve.findings import Findings
+
 from ...errors import nearest
 from ...particles import find
 from ...reaction import Reaction
-from .findings import Findings
 
 BEAM_CODES = {"beam_a": -1, "beam_b": -2}
 

@@ -7,13 +7,14 @@ from dataclasses import dataclass
 
 from pydantic import ValidationError
 
+from resolve.findings import Findings
+from resolve.legs import legs_of_species
+
 from ...documents import violations_of
 from ...errors import Violation, nearest
 from ...particles import find
 from ...process import Parameters, Process
 from ..setting import ParameterValue
-from .findings import Findings
-from .legs import legs_of_species
 
 
 @dataclass(frozen=True, slots=True)
@@ -39,7 +40,9 @@ def resolve_inputs(
         codes = legs_of_species(name, process.legs)
         if not codes:
             names = tuple(dict.fromkeys((*process.legs.incoming, *process.legs.outgoing)))
-            findings.add(f"masses.{name}", mass, f"a particle of the reaction: {', '.join(names)}", nearest(name, names))
+            findings.add(
+                f"masses.{name}", mass, f"a particle of the reaction: {', '.join(names)}", nearest(name, names)
+            )
             continue
         tied = _tied(process, codes[0])
         if tied is None:

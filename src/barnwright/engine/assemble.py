@@ -1,0 +1,216 @@
+"""From closed sums to predictions: units, densities, derived quantities, notes.
+
+Everything that the points of a group share is made once; a point of a scan costs a few arrays.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any, Literal
+
+import numpy as np
+from barnwright.units import from_natural
+from numpy.typing import NDArray
+
+from barnwright.beams import collide
+from barnwright.documents import ByName, Diagnostics, Histogram, Part, Prediction, Request, Run, Total
+from barnwright.documents import Note as NoteDocument
+from barnwright.engine.derived import between_variations, point_asymmetries
+from barnwright.engine.histograms import HistogramForm, histogram_form
+from barnwright.engine.plan import Group, Plan
+from barnwright.engine.setting import Setting
+from barnwright.integrate.settled import Settled
+
+Array = NDArray[np.float64]
+Status = Literal["converged", "evaluation_limit", "time_limit", "cancelled", "suspect"]
+
+
+@dataclass(frozen=True, slots=True)
+class Origin:
+    """Versions by name and the fingerprint of the environment, as the caller found them."""
+
+    versions: Mapping[str, str]
+    environment: str
+
+
+@dataclass(frozen=True)
+class Answers:
+    """The numbers of all points of a plan; a prediction is made of one when it is asked for.
+
+    Attributes
+    ----------
+    value, error : arrays, shape (point, variation, component), in the request's unit
+        In the order of the scan.
+    """
+
+    plan: Plan
+    value: Array
+    error: Array
+    settled: Settled
+    status: Status
+    origin: Origin
+    run: Run
+
+    def prediction(self, point: int) -> Prediction:
+        """The prediction at one point of the scan."""
+        group, place = self._places[point]
+        return self._shared[group].prediction(self, point, place)
+
+    @cached_property
+    def _places(self) -> dict[int, tuple[int, int]]:
+        groups = enumerate(self.plan.groups)
+        return {point: (number, place) for number, group in groups for place, point in enumerate(group.points)}
+
+    @cached_property
+    def _shared(self) -> tuple[_Shared, ...]:
+        return tuple(_Shared(self.plan, group, self.origin, self.settled) for group in self.plan.groups)
+
+
+def assemble(plan: Plan, settled: Settled, status: Status, origin: Origin, run: Run) -> Answers:
+    """The answers of a plan from its closed round.
+
+    Parameters
+    ----------
+    settled : Settled
+        Sums in GeV⁻², shape (moment, point, variation, component), points in the order of the groups.
+    """
+    sums = settled.of(0, 0)
+    order = np.argsort(np.concatenate([np.array(group.points, dtype=np.intp) for group in plan.groups]))
+    factor = from_natural(plan.groups[0].request.unit)
+    value, error = sums.added[0][order] * factor, sums.added[1][order] * factor
+    return Answers(plan, value, error, settled, status, origin, run)
+
+
+class _Shared:
+    """What all points of a group have in common."""
+
+    def __init__(self, plan: Plan, group: Group, origin: Origin, settled: Settled) -> None:
+        self.plan, self.group = plan, group
+        self.unit = group.request.unit
+        self.forms: list[HistogramForm] = [histogram_form(h, self.unit) for h in plan.layout.histograms]
+        self.notes = tuple(NoteDocument.build(code=n.code, text=n.text) for n in group.notes)
+        nominal = group.settings[0]
+        self.fields: dict[str, Any] = {
+            "method": nominal.rule,
+            **plan.provided,
+            "parameters": dict(nominal.parameters),
+            "masses": plan.masses_by_name(nominal),
+            "sources": {**plan.sources, **plan.mass_sources(group)},
+            "versions": {**origin.versions, **plan.plugin_version},
+            "source_digests": {plan.source.name: plan.source.digest},
+            "environment": origin.environment,
+            "diagnostics": self._diagnostics(settled),
+        }
+
+    def _diagnostics(self, settled: Settled) -> Diagnostics:
+        counters = settled.counters
+        names = ("evaluations", "non_finite", "negative", "unresolved")
+        return Diagnostics.build(rounds=settled.number + 1, **{n: counters.get(n, 0) for n in names})
+
+    def prediction(self, answers: Answers, point: int, place: int) -> Prediction:
+        """The prediction of one point."""
+        value, error = answers.value[point], answers.error[point]
+        parts = [self._results(value[v], error[v]) for v in range(value.shape[0])]
+        notes = self.notes + self._notes_of_point(answers, value, place)
+        named = [
+            Part.build(
+                name=setting.name,
+                parameters=dict(setting.parameters),
+                masses=self.plan.masses_by_name(setting),
+                **part,
+            )
+            for setting, part in zip(self.group.settings[1:], parts[1:], strict=True)
+        ]
+        request = self._request(place)
+        derived = between_variations(request.derived, ByName(named), parts[0]["derived"])
+        return Prediction.build(
+            request=request,
+            status=answers.status,
+            notes=notes,
+            variations=ByName(named),
+            run=answers.run,
+            **{**parts[0], "derived": derived},
+            **self.fields,
+        )
+
+    def _request(self, place: int) -> Request:
+        """The group's request with this point's beam energies."""
+        request = self.group.request
+        changes: dict[str, Any] = {}
+        for key, column in self.group.columns.items():
+            field, _, name = key.removeprefix("beams.").partition(".")
+            if not key.startswith("beams."):
+                continue
+            if name:
+                table = changes.get(field, getattr(request.beams, field))
+                changes[field] = {**table, name: float(column[place])}
+            else:
+                changes[field] = float(column[place])
+        if not changes:
+            return request
+        return request.model_copy(update={"beams": request.beams.model_copy(update=changes)})
+
+    def _results(self, value: Array, error: Array) -> dict[str, Any]:
+        """Total, histograms and asymmetries of one variation."""
+        layout = self.plan.layout
+        histograms: Sequence[Histogram] = [
+            form.histogram(value[part], error[part])
+            for form, part in ((f, layout.histogram_slice(k)) for k, f in enumerate(self.forms))
+        ]
+        return {
+            "total": _total(float(value[0]), float(error[0]), self.unit),
+            "histograms": ByName(histograms),
+            "derived": ByName(point_asymmetries(layout, value, error)),
+        }
+
+    def _notes_of_point(self, answers: Answers, value: Array, place: int) -> tuple[NoteDocument, ...]:
+        found = []
+        threshold = sum(self.group.settings[0].masses[2:])
+        setting = self.group.settings[0]
+        if value[0, 0] == 0.0:
+            if _is_closed(setting, place):
+                text = f"√s is not above {threshold:.10g} GeV, the threshold of the final state, so σ = 0"
+                found.append(NoteDocument.build(code="below_threshold", text=text))
+            elif setting.cuts:
+                names = ", ".join(cut.name for cut in setting.cuts)
+                text = f"no event can pass the cuts ({names}), so σ = 0"
+                found.append(NoteDocument.build(code="cuts_exclude_everything", text=text))
+        return (*found, *_faults(answers.settled))
+
+
+def _is_closed(setting: Setting, place: int) -> bool:
+    collision = collide(setting.beams, setting.masses[:2]).take(slice(place, place + 1))
+    return not bool(collision.above(sum(setting.masses[2:]))[0, 0] > 0)
+
+
+def _total(value: float, error: float, unit: str) -> Total:
+    if not (np.isfinite(value) and np.isfinite(error)):
+        return Total.build(value=None, error=None, unit=unit, error_kind="numerical_bound")
+    return Total.build(value=value, error=error, unit=unit, error_kind="numerical_bound")
+
+
+def _faults(settled: Settled) -> list[NoteDocument]:
+    """Notes on points that were not finite or negative, and on panels that did not settle."""
+    counters, found = settled.counters, []
+    where = f"; the first of them: {_momenta(settled)}" if settled.worst else ""
+    if counters.get("non_finite"):
+        text = f"the law was not finite at {counters['non_finite']} points{where}"
+        found.append(NoteDocument.build(code="non_finite", text=text))
+    if counters.get("negative"):
+        text = f"the law was negative at {counters['negative']} points{where}"
+        found.append(NoteDocument.build(code="negative", text=text))
+    if counters.get("unresolved"):
+        text = (
+            f"{counters['unresolved']} pieces of the polar angle did not settle after 60 halvings: the law probably "
+            "diverges there; a cut that keeps away from cos_theta = 1 or -1 in the cm would close the region"
+        )
+        found.append(NoteDocument.build(code="not_settled", text=text))
+    return found
+
+
+def _momenta(settled: Settled) -> str:
+    point = settled.worst[0]
+    legs = "; ".join("(" + ", ".join(f"{c:.6g}" for c in leg) + ")" for leg in point.momenta)
+    return f"{point.value:g} at momenta (E, px, py, pz) {legs} GeV in the cm"

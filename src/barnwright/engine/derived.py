@@ -1,0 +1,79 @@
+"""Derived quantities with the bounds of their errors."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Sequence
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from barnwright.documents import AsymmetryRequest, ByName, Derived, DerivedBins, Part, RatioRequest
+from barnwright.engine.setting import Layout
+
+Array = NDArray[np.float64]
+Quotient = Callable[[Array, Array, Array, Array], tuple[Array, Array]]
+
+
+def asymmetry(first: Array, second: Array, first_error: Array, second_error: Array) -> tuple[Array, Array]:
+    """(first − second)/(first + second), and the bound of its error from those of the two; NaN where both are 0."""
+    total = first + second
+    with np.errstate(divide="ignore", invalid="ignore"):
+        value = (first - second) / total
+        error = 2 * (np.abs(second) * first_error + np.abs(first) * second_error) / np.square(total)
+    return value, error
+
+
+def ratio(first: Array, second: Array, first_error: Array, second_error: Array) -> tuple[Array, Array]:
+    """first/second, and the bound of its error; NaN where the second is 0."""
+    with np.errstate(divide="ignore", invalid="ignore"):
+        value = np.where(second == 0, np.nan, first / second)
+        error = (first_error + np.abs(value) * second_error) / np.abs(second)
+    return value, error
+
+
+def point_asymmetries(layout: Layout, value: Array, error: Array) -> list[Derived]:
+    """The asymmetries about a value of an observable, from their two components."""
+    found = []
+    for index, plan in enumerate(layout.asymmetries):
+        below = layout.asymmetry_start(index)
+        above = below + 1
+        numbers = asymmetry(value[above], value[below], error[above], error[below])
+        found.append(_derived(plan.name, *numbers, ByName()))
+    return found
+
+
+def between_variations(
+    asked: Sequence[AsymmetryRequest | RatioRequest], variations: ByName[Part], known: ByName[Derived]
+) -> ByName[Derived]:
+    """All derived quantities in the order of the request; those between variations bin by bin as well."""
+    found = []
+    for request in asked:
+        if request.between is None:
+            found.append(known[request.name])
+            continue
+        first, second = (variations[name] for name in request.between)
+        quotient: Quotient = ratio if isinstance(request, RatioRequest) else asymmetry
+        bins = []
+        for one, two in zip(first.histograms, second.histograms, strict=True):
+            values, errors = quotient(one.contents, two.contents, one.content_errors, two.content_errors)
+            bins.append(DerivedBins.build(name=one.name, values=values, errors=errors))
+        totals = [_number(p.total.value) for p in (first, second)] + [_number(p.total.error) for p in (first, second)]
+        found.append(_derived(request.name, *quotient(*totals), ByName(bins)))
+    return ByName(found)
+
+
+def _number(value: float | None) -> Array:
+    return np.float64(np.nan if value is None else value)  # type: ignore[return-value]
+
+
+def _derived(name: str, value: Any, error: Any, bins: ByName[DerivedBins]) -> Derived:
+    known = bool(np.isfinite(value) and np.isfinite(error))
+    return Derived.build(
+        name=name,
+        value=float(value) if known else None,
+        error=float(error) if known else None,
+        unit="",
+        error_kind="numerical_bound",
+        histograms=bins,
+    )

@@ -1,0 +1,41 @@
+"""The digest of a plan: SHA-256 over everything that shapes its numbers."""
+
+from __future__ import annotations
+
+import hashlib
+import json
+from dataclasses import asdict
+from typing import Any
+
+from ...observables import Cut
+from ...reaction import Reaction
+from ..plan import Group, ProcessSource
+from ..setting import Layout, Setting
+
+
+def plan_digest(source: ProcessSource, reaction: Reaction, layout: Layout, groups: tuple[Group, ...]) -> str:
+    """64 hexadecimal digits. What only says when to stop is left out, and so are units and names of the answer."""
+    content: dict[str, Any] = {
+        "source": [source.name, source.distribution, source.version, source.digest],
+        "reaction": reaction.text,
+        "histograms": [[h.name, [o.text for o in h.observables], h.edges] for h in layout.histograms],
+        "asymmetries": [[a.name, a.observable.text, a.at] for a in layout.asymmetries],
+        "groups": [[g.points, [_setting(s) for s in g.settings]] for g in groups],
+    }
+    text = json.dumps(content, sort_keys=True, separators=(",", ":"))
+    return hashlib.sha256(text.encode()).hexdigest()
+
+
+def _setting(setting: Setting) -> list[Any]:
+    return [
+        setting.name,
+        asdict(setting.beams),
+        setting.masses,
+        setting.parameters,
+        [_cut(cut) for cut in setting.cuts],
+        [setting.rule, setting.closed_form, setting.law, setting.peaks],
+    ]
+
+
+def _cut(cut: Cut) -> list[Any]:
+    return [cut.name, cut.observable.text, cut.min, cut.max, cut.outside]

@@ -1,0 +1,92 @@
+"""The observables of a request: cuts, histograms and asymmetries, compiled for the reaction."""
+
+from __future__ import annotations
+
+import math
+from functools import lru_cache
+
+from resolve.findings import Findings
+
+from ...documents import AsymmetryRequest, Bins, HistogramRequest, Request
+from ...observables import Cut, Observable, ObservableError, compile_observable, edges_of
+from ...reaction import Reaction
+from ..setting import AsymmetryPlan, HistogramPlan, Layout
+
+MOST_COMPONENTS = 100_000
+
+
+def resolve_cuts(request: Request, reaction: Reaction, findings: Findings) -> tuple[Cut, ...]:
+    """The cuts, in the order of the request; a wrong one is left out and found."""
+    cuts = []
+    for index, asked in enumerate(request.cuts):
+        observable = _observable(asked.observable, reaction, f"cuts[{index}].observable", findings)
+        if observable is not None:
+            cuts.append(Cut(asked.name, observable, asked.min, asked.max, asked.outside))
+    return tuple(cuts)
+
+
+def resolve_layout(request: Request, reaction: Reaction, findings: Findings) -> Layout:
+    """Histograms and asymmetries; a wrong one is left out and found."""
+    histograms = [_histogram(asked, index, reaction, findings) for index, asked in enumerate(request.histograms)]
+    asymmetries = []
+    for index, asked in enumerate(request.derived):
+        if isinstance(asked, AsymmetryRequest) and asked.observable is not None and asked.at is not None:
+            observable = _observable(asked.observable, reaction, f"derived[{index}].observable", findings)
+            if observable is not None:
+                asymmetries.append(AsymmetryPlan(asked.name, observable, asked.at))
+    layout = Layout(tuple(h for h in histograms if h is not None), tuple(asymmetries))
+    if layout.components > MOST_COMPONENTS:
+        findings.add("histograms", f"{layout.components} components", f"at most {MOST_COMPONENTS} in one request")
+    return layout
+
+
+def _histogram(asked: HistogramRequest, index: int, reaction: Reaction, findings: Findings) -> HistogramPlan | None:
+    where = f"histograms[{index}]"
+    observables = [
+        _observable(text, reaction, f"{where}.observables[{k}]", findings) for k, text in enumerate(asked.observables)
+    ]
+    found = tuple(o for o in observables if o is not None)
+    if len(found) < len(observables):
+        return None
+    entries = {o.entries for o in found if o.quantifier == "each"}
+    if any(o.quantifier == "any" for o in found):
+        findings.add(f"{where}.observables", asked.observables, "no any(...): it belongs into a cut", "each(...)")
+    if len(entries) > 1:
+        findings.add(f"{where}.observables", asked.observables, "each(...) over the same particles on both axes")
+    edges = tuple(bin_edges(axis) for axis in asked.bins)
+    if asked.per == "solid_angle":
+        _check_solid_angle(found[0], edges[0], where, findings)
+    return HistogramPlan(asked.name, found, edges, asked.per)
+
+
+@lru_cache(maxsize=256)
+def bin_edges(bins: Bins) -> tuple[float, ...]:
+    """The edges of one axis."""
+    if bins.edges is not None:
+        return tuple(bins.edges)
+    assert bins.count is not None and bins.low is not None and bins.high is not None
+    return tuple(float(e) for e in edges_of(bins.count, bins.low, bins.high, bins.spacing))
+
+
+def _check_solid_angle(observable: Observable, edges: tuple[float, ...], where: str, findings: Findings) -> None:
+    if not is_polar_angle(observable):
+        expected = "'value' or 'bin'; a solid angle needs cos_theta(x) or theta(x) of one particle"
+        findings.add(f"{where}.per", "solid_angle", expected, "'value'")
+        return
+    low, high = (0.0, math.pi) if observable.unit == "rad" else (-1.0, 1.0)
+    if edges[0] < low or edges[-1] > high * (1 + 1e-15):
+        expected = f"edges from {low:g} to {high:.16g}, where the solid angle is defined"
+        findings.add(f"{where}.bins[0]", f"{edges[0]:g} to {edges[-1]:g}", expected)
+
+
+def is_polar_angle(observable: Observable) -> bool:
+    """Whether the observable is the polar angle of one particle in some frame, or its cosine."""
+    return getattr(observable.tree, "function", None) in ("cos_theta", "theta")
+
+
+def _observable(text: str, reaction: Reaction, where: str, findings: Findings) -> Observable | None:
+    try:
+        return compile_observable(text, reaction)
+    except ObservableError as error:
+        findings.violations.extend(error.violations(where))
+        return None

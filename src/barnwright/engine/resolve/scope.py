@@ -1,0 +1,44 @@
+"""What no law here can answer yet, or ever: said by name before anything is calculated."""
+
+from __future__ import annotations
+
+from resolve.findings import Findings
+
+from ...documents import Request
+from ...errors import nearest
+from ...process import Process
+from ...units import AREA_UNITS
+
+
+def check_scope(request: Request, process: Process, findings: Findings) -> None:
+    """Final states, units, contributions and accuracy that do not fit the process."""
+    reaction = process.legs
+    if len(reaction.incoming) != 2 or len(reaction.outgoing) != 2 or reaction.inclusive:
+        expected = "a reaction of two particles into two"
+        findings.add("formula.reaction" if request.formula else "process", reaction.text, expected)
+        findings.refuse()
+    if request.unit not in AREA_UNITS:
+        expected = f"a unit of area: {', '.join(AREA_UNITS)}"
+        findings.add("unit", request.unit, expected, nearest(request.unit, AREA_UNITS))
+    _check_contributions(request, process, findings)
+    if request.accuracy.method == "monte_carlo":
+        expected = "closed_form or quadrature, the methods for two-body final states"
+        findings.add("accuracy.method", "monte_carlo", expected, "quadrature")
+    names = {variation.name for variation in request.variations}
+    for index, derived in enumerate(request.derived):
+        for k, name in enumerate(derived.between or ()):
+            if name not in names:
+                expected = f"the name of a variation: {', '.join(sorted(names)) or 'there is none'}"
+                findings.add(f"derived[{index}].between[{k}]", name, expected, nearest(name, names))
+
+
+def _check_contributions(request: Request, process: Process, findings: Findings) -> None:
+    known = tuple(process.contributions)
+    for index, name in enumerate(request.contributions or ()):
+        if name not in known:
+            expected = (
+                f"a contribution of {process.name}: {', '.join(known)}"
+                if known
+                else (f"no contributions: {process.name} declares none")
+            )
+            findings.add(f"contributions[{index}]", name, expected, nearest(name, known))
