@@ -1,0 +1,33 @@
+"""Closed forms: an antiderivative, whose differences are totals, cuts and bins."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import Any
+
+from numpy.typing import ArrayLike, NDArray
+
+from ..event import Point
+
+Cumulative = Callable[[NDArray[Any], Point, Any], ArrayLike]
+
+
+@dataclass(frozen=True, slots=True)
+class ClosedForm:
+    """∫ up to x of dσ/dx in GeV⁻² (a width: GeV), identical particles counted once.
+
+    Attributes
+    ----------
+    cumulative : function ``(x, point, parameters)``
+        x has the shape (point, edge) and broadcasts against the arrays of the point, (point, 1); so does the answer. Where
+        the integral starts is free. +z is the direction of beam a.
+    observable : str
+        What x is, as text of the observable language.
+    massless : particles or legs
+        The closed form is skipped when one of these masses is not 0.
+    """
+
+    cumulative: Cumulative
+    observable: str
+    massless: tuple[str, ...] = ()

@@ -1,0 +1,96 @@
+"""Laws for momenta: functions that give |M|² of a batch of events.
+
+Rules of this file
+------------------
+- |M|² in GeV^(2(4 − N)), N the number of all legs; averaged over the physical initial states, summed over the final ones.
+- Factors for identical particles belong to the core, not to a law.
+- A law takes masses from ``event.mass``, never from a table, and returns something that broadcasts to ``event.shape``.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from math import prod
+from typing import Any, ClassVar, Literal
+
+import numpy as np
+from numpy.typing import ArrayLike, NDArray
+
+from ..event import Event
+from ..formula import Formula, compile_formula
+from ..particles import find
+from ..reaction import Reaction
+from .parameters import Parameters
+
+Array = NDArray[np.float64]
+LawFunction = Callable[[Event, Any], ArrayLike]
+
+
+@dataclass(frozen=True, slots=True)
+class SquaredAmplitude:
+    """|M|² as a plain function.
+
+    Attributes
+    ----------
+    function : function ``(event, parameters)``
+    massless : particles or legs
+        The law is skipped when one of these masses is not 0.
+    compiled : bool
+        Whether the function is a compiled kernel that releases the interpreter's lock.
+    """
+
+    kind: ClassVar[str] = "squared_amplitude"
+
+    function: LawFunction
+    massless: tuple[str, ...] = ()
+    compiled: bool = False
+
+    def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
+        """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``. Raises what the function raises."""
+        return self.function(event, parameters)
+
+
+@dataclass(frozen=True, slots=True)
+class Expression:
+    """|M|² as text of the formula language, or as a sympy expression.
+
+    Attributes
+    ----------
+    squared_amplitude : str or sympy expression
+    spin_colour : "averaged" or "summed"
+        Whether the initial states are averaged over already.
+    massless : particles or legs
+        The law is skipped when one of these masses is not 0.
+    """
+
+    kind: ClassVar[str] = "expression"
+    compiled: ClassVar[bool] = False
+
+    squared_amplitude: Any
+    spin_colour: Literal["averaged", "summed"] = "averaged"
+    massless: tuple[str, ...] = ()
+
+    def compile(self, reaction: Reaction, parameter_names: tuple[str, ...]) -> Formula:
+        """The batch function of the expression.
+
+        Raises
+        ------
+        FormulaError
+            With positions, for unknown names and anything else that is no formula.
+        """
+        return compile_formula(self.squared_amplitude, reaction, parameter_names)
+
+    def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
+        """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``."""
+        values = parameters.model_dump()
+        found = self.compile(event.reaction, tuple(values)).evaluate(event, values)
+        return found if self.spin_colour == "averaged" else found / initial_states(event.reaction)
+
+
+Law = SquaredAmplitude | Expression
+
+
+def initial_states(reaction: Reaction) -> int:
+    """How many spin and colour states the incoming particles have together: neutrinos one helicity, photons two."""
+    return prod(particle.spin_states * particle.colour for particle in map(find, reaction.incoming))
