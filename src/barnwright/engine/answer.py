@@ -7,8 +7,8 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from ..integrate.polar_axis import Integers
-from ..integrate.tally import WorstPoint
+from barnwright.integrate.polar_axis import Integers
+from barnwright.integrate.tally import WorstPoint
 
 Array = NDArray[np.float64]
 

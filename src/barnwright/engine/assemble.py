@@ -11,7 +11,6 @@ from functools import cached_property
 from typing import Any, Literal
 
 import numpy as np
-from barnwright.units import from_natural
 from numpy.typing import NDArray
 
 from barnwright.beams import collide
@@ -22,6 +21,7 @@ from barnwright.engine.histograms import HistogramForm, histogram_form
 from barnwright.engine.plan import Group, Plan
 from barnwright.engine.setting import Setting
 from barnwright.integrate.settled import Settled
+from barnwright.units import from_natural
 
 Array = NDArray[np.float64]
 Status = Literal["converged", "evaluation_limit", "time_limit", "cancelled", "suspect"]

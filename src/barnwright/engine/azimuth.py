@@ -1,7 +1,8 @@
 """The outer axis: the azimuth, integrated only where a cut or a histogram asks for it.
 
-Without transverse polarisation nothing depends on the azimuth but the observables themselves. Panels in the azimuth end where an
-observable of the azimuth alone crosses an edge; where azimuth and polar angle mix, panels are halved until the answer settles.
+Without transverse polarisation nothing depends on the azimuth but the observables themselves. Panels in the azimuth
+end where an observable of the azimuth alone crosses an edge; where azimuth and polar angle mix, panels are halved
+until the answer settles.
 """
 
 from __future__ import annotations
@@ -9,17 +10,17 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from ..integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
-from ..integrate.panels import panels_between
-from ..integrate.polar_axis import Ends
-from ..integrate.roots import Crossings, crossings
-from ..observables import Observable
-from ..process import Process
-from .answer import Answer
-from .edges import levels_by_observable
-from .polar import over_polar_angle
-from .rows import Rows
-from .setting import Layout, Setting
+from barnwright.engine.answer import Answer
+from barnwright.engine.edges import levels_by_observable
+from barnwright.engine.polar import over_polar_angle
+from barnwright.engine.rows import Rows
+from barnwright.engine.setting import Layout, Setting
+from barnwright.integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
+from barnwright.integrate.panels import panels_between
+from barnwright.integrate.polar_axis import Ends
+from barnwright.integrate.roots import Crossings, crossings
+from barnwright.observables import Observable
+from barnwright.process import Process
 
 Array = NDArray[np.float64]
 

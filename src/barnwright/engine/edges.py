@@ -1,6 +1,7 @@
 """Where observables cross their edges and cut thresholds on the polar axis.
 
-Polar observables of the cm have their crossings in closed form, the same for every point of a scan; all others are searched.
+Polar observables of the cm have their crossings in closed form, the same for every point of a scan; all others are
+searched.
 """
 
 from __future__ import annotations
@@ -10,12 +11,12 @@ from collections.abc import Callable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from ..integrate.extrema import EPSILON
-from ..integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
-from ..integrate.roots import Crossings, crossings
-from ..kinematics import Collision
-from ..observables import Observable
-from .setting import Layout, Setting
+from barnwright.engine.setting import Layout, Setting
+from barnwright.integrate.extrema import EPSILON
+from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
+from barnwright.integrate.roots import Crossings, crossings
+from barnwright.kinematics import Collision
+from barnwright.observables import Observable
 
 Array = NDArray[np.float64]
 

@@ -1,6 +1,7 @@
 """A worker's whole job: from a block to its tally.
 
-The sums of a block have the shape (moment, point, variation, component), with the moments value and error bound in GeV⁻².
+The sums of a block have the shape (moment, point, variation, component), with the moments value and error bound in
+GeV⁻².
 """
 
 from __future__ import annotations
@@ -8,15 +9,15 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from ..beams import collide
-from ..integrate.block import Block
-from ..integrate.tally import Sums, Tally
-from ..process import Process
-from .answer import Answer
-from .azimuth import over_azimuth
-from .plan import Stage
-from .rows import Rows
-from .setting import Setting
+from barnwright.beams import collide
+from barnwright.engine.answer import Answer
+from barnwright.engine.azimuth import over_azimuth
+from barnwright.engine.plan import Stage
+from barnwright.engine.rows import Rows
+from barnwright.engine.setting import Setting
+from barnwright.integrate.block import Block
+from barnwright.integrate.tally import Sums, Tally
+from barnwright.process import Process
 
 Array = NDArray[np.float64]
 

@@ -8,13 +8,13 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from ..beams import flux
-from ..integrate.polar_axis import Ends, Integers, ends_of
-from ..phase_space import peak_scale, two_body_density
-from ..process import Parameters, Process
-from .law import squared_amplitude
-from .rows import Rows
-from .setting import Setting
+from barnwright.beams import flux
+from barnwright.engine.law import squared_amplitude
+from barnwright.engine.rows import Rows
+from barnwright.engine.setting import Setting
+from barnwright.integrate.polar_axis import Ends, Integers, ends_of
+from barnwright.phase_space import peak_scale, two_body_density
+from barnwright.process import Parameters, Process
 
 Array = NDArray[np.float64]
 

@@ -5,15 +5,16 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from ..errors import PluginError
-from ..event import Event, Point
-from ..process import Parameters, Process
+from barnwright.errors import PluginError
+from barnwright.event import Event, Point
+from barnwright.process import Parameters, Process
 
 Array = NDArray[np.float64]
 
 
 def squared_amplitude(process: Process, law: int, event: Event, parameters: Parameters) -> Array:
-    """|M|² of a batch, GeV^(2(4 − N)), averaged over the initial and summed over the final states; broadcasts to the event.
+    """|M|² of a batch, GeV^(2(4 − N)), averaged over the initial and summed over the final states; broadcasts to the
+    event.
 
     Raises
     ------

@@ -7,13 +7,13 @@ from collections.abc import Callable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from ..integrate.polar_axis import Integers
-from ..observables import Observable
-from .setting import HistogramPlan, Layout, Setting
+from barnwright.engine.setting import HistogramPlan, Layout, Setting
+from barnwright.integrate.polar_axis import Integers
+from barnwright.observables import Observable
 
 Array = NDArray[np.float64]
 Valuation = Callable[[Observable], Array]
-"""An observable's values in the middle of every panel, (row or 1, panel), with the entries first where it has a quantifier."""
+"""An observable's values in the middle of every panel, (row or 1, panel); entries first where it has a quantifier."""
 
 OUTSIDE = -1
 
@@ -60,7 +60,7 @@ def bin_numbers(edges: Array, values: Array) -> Integers:
 
 
 def _combined(shape: tuple[int, ...], axes: list[Integers]) -> Integers:
-    """One number for all axes: row-major bin, or underflow (low on any axis), or overflow (high on any, low on none)."""
+    """One number for all axes: row-major bin, or underflow (low on any axis), or overflow (high on any only)."""
     total = int(np.prod(shape))
     low = np.logical_or.reduce(np.broadcast_arrays(*[a < 0 for a in axes]))
     high = np.logical_or.reduce(np.broadcast_arrays(*[a >= n for a, n in zip(axes, shape, strict=True)]))

@@ -2,10 +2,10 @@
 
 Rules of this file
 ------------------
-- A plan holds points × variations. A prediction is a scan of one point. Points that differ only in beam energies share a
-  group, whose settings hold arrays of energies; every other change makes a group of its own.
-- The digest covers everything that shapes the numbers and nothing that only says when to stop: not `relative`, `absolute`,
-  `max_evaluations`, `max_seconds`, `rounds`.
+- A plan holds points × variations. A prediction is a scan of one point. Points that differ only in beam energies
+  share a group, whose settings hold arrays of energies; every other change makes a group of its own.
+- The digest covers everything that shapes the numbers and nothing that only says when to stop: not `relative`,
+  `absolute`, `max_evaluations`, `max_seconds`, `rounds`.
 - No functions: a process is named by its identity, a formula by its text.
 """
 
@@ -16,10 +16,10 @@ from dataclasses import dataclass, field
 from functools import cached_property
 from typing import Any
 
-from ..documents import Request
-from ..integrate.block import Block
-from ..reaction import Reaction
-from .setting import Layout, Setting
+from barnwright.documents import Request
+from barnwright.engine.setting import Layout, Setting
+from barnwright.integrate.block import Block
+from barnwright.reaction import Reaction
 
 NODES_A_BLOCK = 30_000
 
@@ -28,8 +28,8 @@ NODES_A_BLOCK = 30_000
 class ProcessSource:
     """Where a process's functions come from.
 
-    ``digest`` is the SHA-256 over the source and data files of the plugin, or of the formula's text; ``formula`` holds the
-    formula as plain values where the request brought one.
+    ``digest`` is the SHA-256 over the source and data files of the plugin, or of the formula's text; ``formula``
+    holds the formula as plain values where the request brought one.
     """
 
     name: str

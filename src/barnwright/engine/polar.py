@@ -5,22 +5,22 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from ..event import Point
-from ..integrate.extrema import EPSILON
-from ..integrate.panels import Panels, panels_between
-from ..integrate.polar_axis import Ends, Integers
-from ..integrate.quadrature import PanelIntegrals, integrate_panels
-from ..integrate.tally import WorstPoint
-from ..kinematics import CM
-from ..observables import Observable, compile_observable
-from ..process import Process
-from .answer import Answer
-from .edges import axis_crossings, levels_by_observable
-from .integrand import Integrand
-from .law import cumulative
-from .membership import OUTSIDE, memberships, passes
-from .rows import Rows
-from .setting import Layout, Setting
+from barnwright.engine.answer import Answer
+from barnwright.engine.edges import axis_crossings, levels_by_observable
+from barnwright.engine.integrand import Integrand
+from barnwright.engine.law import cumulative
+from barnwright.engine.membership import OUTSIDE, memberships, passes
+from barnwright.engine.rows import Rows
+from barnwright.engine.setting import Layout, Setting
+from barnwright.event import Point
+from barnwright.integrate.extrema import EPSILON
+from barnwright.integrate.panels import Panels, panels_between
+from barnwright.integrate.polar_axis import Ends, Integers
+from barnwright.integrate.quadrature import PanelIntegrals, integrate_panels
+from barnwright.integrate.tally import WorstPoint
+from barnwright.kinematics import CM
+from barnwright.observables import Observable, compile_observable
+from barnwright.process import Process
 
 Array = NDArray[np.float64]
 

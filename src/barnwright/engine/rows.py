@@ -7,13 +7,13 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from ..event import Event
-from ..integrate.polar_axis import Ends, Integers
-from ..kinematics import Collision, TwoBody
-from ..observables import Observable
-from ..reaction import Reaction
-from .edges import is_polar, polar_values
-from .setting import Masses
+from barnwright.engine.edges import is_polar, polar_values
+from barnwright.engine.setting import Masses
+from barnwright.event import Event
+from barnwright.integrate.polar_axis import Ends, Integers
+from barnwright.kinematics import Collision, TwoBody
+from barnwright.observables import Observable
+from barnwright.reaction import Reaction
 
 Array = NDArray[np.float64]
 
@@ -35,8 +35,8 @@ class Rows:
     def event(self, row: Integers | None, ends: Ends) -> Event:
         """The events at locations on the polar axis.
 
-        ``row`` None: all rows, ends of shape (row or 1, node). Else ends of shape (line, node) with a row number a line, or
-        row numbers of the same shape as the ends.
+        ``row`` None: all rows, ends of shape (row or 1, node). Else ends of shape (line, node) with a row number a
+        line, or row numbers of the same shape as the ends.
         """
         collision, azimuth = self.collision, self.azimuth
         if row is not None:

@@ -6,8 +6,8 @@ from dataclasses import dataclass
 from math import prod
 from typing import Literal
 
-from ..beams import BeamSettings
-from ..observables import Cut, Observable
+from barnwright.beams import BeamSettings
+from barnwright.observables import Cut, Observable
 
 Masses = tuple[float, float, float, float]
 ParameterValue = float | int | bool | str
@@ -15,7 +15,7 @@ ParameterValue = float | int | bool | str
 
 @dataclass(frozen=True, slots=True)
 class HistogramPlan:
-    """A histogram: observables (one or two), their edges, and whether contents are asked per value, bin or solid angle."""
+    """A histogram: one or two observables, their edges, and whether it is asked per value, bin or solid angle."""
 
     name: str
     observables: tuple[Observable, ...]
@@ -44,7 +44,7 @@ class AsymmetryPlan:
 
 @dataclass(frozen=True, slots=True)
 class Layout:
-    """Which component is what: the total first, then each histogram's bins, underflow, overflow, then (below, above) pairs."""
+    """Which component is what: the total, each histogram's bins, underflow and overflow, then (below, above) pairs."""
 
     histograms: tuple[HistogramPlan, ...]
     asymmetries: tuple[AsymmetryPlan, ...]

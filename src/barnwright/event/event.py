@@ -19,23 +19,36 @@ class Kinematics(Protocol):
     """What an event needs of the phase space that made it; legs by code."""
 
     @property
-    def shape(self) -> tuple[int, ...]: ...
+    def shape(self) -> tuple[int, ...]:
+        """The shape of one quantity of the batch."""
+
     @property
-    def s(self) -> Array: ...
+    def s(self) -> Array:
+        """s in GeV²."""
+
     @property
-    def sqrt_s(self) -> Array: ...
-    def mass(self, code: int) -> float: ...
-    def dot(self, first: int, second: int) -> Array: ...
-    def transfer(self, first: int, second: int) -> Array: ...
-    def vector(self, code: int, frame: Frame) -> FourVector: ...
+    def sqrt_s(self) -> Array:
+        """√s in GeV."""
+
+    def mass(self, code: int) -> float:
+        """The mass of a leg in GeV."""
+
+    def dot(self, first: int, second: int) -> Array:
+        """The four-product of two legs in GeV²."""
+
+    def transfer(self, first: int, second: int) -> Array:
+        """The squared difference of two momenta in GeV²."""
+
+    def vector(self, code: int, frame: Frame) -> FourVector:
+        """The momentum of a leg in a frame."""
 
 
 class Event:
     """A batch of events; each quantity is worked out once, when it is first asked for, and is read-only.
 
-    Legs are asked for by name (an outgoing particle), by ``(name, k)`` for the k-th of identical ones, by number 1…n, or
-    as ``"beam_a"``, ``"beam_b"``. In quadrature ``s`` has the shape (point, 1), ``t`` and ``u`` (point, node); a law
-    returns something that broadcasts to ``event.shape``. GeV throughout.
+    Legs are asked for by name (an outgoing particle), by ``(name, k)`` for the k-th of identical ones, by number
+    1…n, or as ``"beam_a"``, ``"beam_b"``. In quadrature ``s`` has the shape (point, 1), ``t`` and ``u`` (point,
+    node); a law returns something that broadcasts to ``event.shape``. GeV throughout.
 
     Raises
     ------
@@ -64,12 +77,12 @@ class Event:
     @property
     def s(self) -> Array:
         """s in GeV²."""
-        return self._once("s", lambda: self.kinematics.s.view())
+        return self._once("s", self.kinematics.s.view)
 
     @property
     def sqrt_s(self) -> Array:
         """√s in GeV."""
-        return self._once("sqrt_s", lambda: self.kinematics.sqrt_s.view())
+        return self._once("sqrt_s", self.kinematics.sqrt_s.view)
 
     @property
     def t(self) -> Array:

@@ -3,8 +3,9 @@
 Rules of this file
 ------------------
 - GeV, hbar = c = 1.
-- √s is carried as an unevaluated sum ``sqrt_s + correction``. A photon of 1 eV on an electron has √s − m = 1 eV, two parts in a
-  million of √s: a single float would leave ten digits of it. `above` subtracts a mass first and adds the correction last.
+- √s is carried as an unevaluated sum ``sqrt_s + correction``. A photon of 1 eV on an electron has √s − m = 1 eV, two
+  parts in a million of √s: a single float would leave ten digits of it. `above` subtracts a mass first and adds the
+  correction last.
 - Momenta come from the factored Källén function. The difference of squares of the textbook loses every digit near a
   threshold and for masses far below the energy.
 """

@@ -116,8 +116,8 @@ class FourVector:
 def boost_to_rest(vector: FourVector, system: FourVector) -> FourVector:
     """``vector`` in the rest frame of ``system``: the pure boost, axes kept (GeV).
 
-    Both are given in the same frame. The mass of ``vector`` is kept. Jackson, Classical Electrodynamics, 3rd ed., eq. (11.98), from
-    memory, with (γ − 1)/β² written as γ²/(γ + 1).
+    Both are given in the same frame. The mass of ``vector`` is kept. Jackson, Classical Electrodynamics, 3rd ed.,
+    eq. (11.98), from memory, with (γ − 1)/β² written as γ²/(γ + 1).
     """
     energy, *momentum = system.components()
     mass = system.mass

@@ -2,10 +2,12 @@
 
 Rules of this file
 ------------------
-- The polar angle is between leg 1 and beam a in the centre of mass, given as 1 − cos θ and 1 + cos θ *apart*: near a pole the
-  small one of them carries the digits (a Compton photon scattered backwards at 10 TeV lives at 1 + cos θ ~ 1e−7).
-- A four-product of a beam and an outgoing leg is (E E' − p p') + p p'(1 ∓ cos θ), both terms positive; a squared momentum
-  transfer is (E − E')² − (p − p')² − 2 p p'(1 ∓ cos θ), where the first two vanish identically for elastic scattering.
+- The polar angle is between leg 1 and beam a in the centre of mass, given as 1 − cos θ and 1 + cos θ *apart*: near a
+  pole the small one of them carries the digits (a Compton photon scattered backwards at 10 TeV lives at 1 + cos θ ~
+  1e−7).
+- A four-product of a beam and an outgoing leg is (E E' − p p') + p p'(1 ∓ cos θ), both terms positive; a squared
+  momentum transfer is (E − E')² − (p − p')² − 2 p p'(1 ∓ cos θ), where the first two vanish identically for elastic
+  scattering.
 - Leg codes: −1 and −2 the beams a and b, 1 and 2 the outgoing legs. GeV.
 """
 

@@ -1,6 +1,7 @@
 """Where and with what a prediction was made: versions and the fingerprint of the environment.
 
-Equal bits are promised for equal fingerprints: library versions and the processor's vector features decide how numpy rounds.
+Equal bits are promised for equal fingerprints: library versions and the processor's vector features decide how numpy
+rounds.
 """
 
 from __future__ import annotations
@@ -12,9 +13,9 @@ from dataclasses import dataclass
 from functools import lru_cache
 
 import numpy as np
-from barnwright.particles import table_version
 
 from barnwright import __version__
+from barnwright.particles import table_version
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,5 +1,6 @@
 """From a request to a plan: names and physics checked, every finding in one answer."""
 
-from resolve.resolve import Loaded, Lookup, resolve
+from barnwright.engine.resolve.formula import formula_process
+from barnwright.engine.resolve.resolve import Loaded, Lookup, resolve
 
-__all__ = ["Loaded", "Lookup", "resolve"]
+__all__ = ["Loaded", "Lookup", "formula_process", "resolve"]

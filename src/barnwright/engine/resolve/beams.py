@@ -8,9 +8,9 @@ from dataclasses import dataclass
 from resolve.findings import Findings
 from resolve.legs import beam_code
 
-from ...beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
-from ...documents import ColliderBeams, DecayBeams, FixedTargetBeams
-from ...reaction import Reaction
+from barnwright.beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
+from barnwright.documents import ColliderBeams, DecayBeams, FixedTargetBeams
+from barnwright.reaction import Reaction
 
 LARGEST = 1e20
 """GeV; beyond it the squares and fourth powers in |M|² leave the range of floats."""

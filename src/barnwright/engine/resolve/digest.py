@@ -7,10 +7,10 @@ import json
 from dataclasses import asdict
 from typing import Any
 
-from ...observables import Cut
-from ...reaction import Reaction
-from ..plan import Group, ProcessSource
-from ..setting import Layout, Setting
+from barnwright.engine.plan import Group, ProcessSource
+from barnwright.engine.setting import Layout, Setting
+from barnwright.observables import Cut
+from barnwright.reaction import Reaction
 
 
 def plan_digest(source: ProcessSource, reaction: Reaction, layout: Layout, groups: tuple[Group, ...]) -> str:

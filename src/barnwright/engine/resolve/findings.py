@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 
-from ...errors import RequestError, Violation, show
+from barnwright.errors import RequestError, Violation, show
 
 
 @dataclass(slots=True)

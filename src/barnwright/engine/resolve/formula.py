@@ -7,13 +7,13 @@ import json
 from functools import lru_cache
 from typing import Any
 
-from ...documents import Formula
-from ...errors import RequestError, Violation, show
-from ...formula import FormulaError
-from ...peaks import Peak
-from ...process import Expression, Parameters, Process, parameters_model
-from ...reaction import ReactionError, parse_reaction
-from ..plan import ProcessSource
+from barnwright.documents import Formula
+from barnwright.engine.plan import ProcessSource
+from barnwright.errors import RequestError, Violation, show
+from barnwright.formula import FormulaError
+from barnwright.peaks import Peak
+from barnwright.process import Expression, Parameters, Process, parameters_model
+from barnwright.reaction import ReactionError, parse_reaction
 
 NAME = "formula"
 

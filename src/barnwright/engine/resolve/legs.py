@@ -1,12 +1,12 @@
-"""Which leg a request means by a name: beams by particle or as beam_a and beam_b, species by particle or antiparticle."""
+"""Which leg a request means by a name: beams by particle, or beam_a and beam_b; species by particle or antiparticle."""
 
 from __future__ import annotations
 
 from resolve.findings import Findings
 
-from ...errors import nearest
-from ...particles import find
-from ...reaction import Reaction
+from barnwright.errors import nearest
+from barnwright.particles import find
+from barnwright.reaction import Reaction
 
 BEAM_CODES = {"beam_a": -1, "beam_b": -2}
 

@@ -6,15 +6,14 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from pydantic import ValidationError
-
 from resolve.findings import Findings
 from resolve.legs import legs_of_species
 
-from ...documents import violations_of
-from ...errors import Violation, nearest
-from ...particles import find
-from ...process import Parameters, Process
-from ..setting import ParameterValue
+from barnwright.documents import violations_of
+from barnwright.engine.setting import ParameterValue
+from barnwright.errors import Violation, nearest
+from barnwright.particles import find
+from barnwright.process import Parameters, Process
 
 
 @dataclass(frozen=True, slots=True)
@@ -31,8 +30,8 @@ def resolve_inputs(
 ) -> Inputs | None:
     """Parameters and masses, or None and findings.
 
-    A mass belongs to a species: setting that of mu- sets that of mu+. Where the process ties a mass to a parameter, the two
-    are names of one number.
+    A mass belongs to a species: setting that of mu- sets that of mu+. Where the process ties a mass to a parameter,
+    the two are names of one number.
     """
     wanted = dict(parameters)
     own: dict[int, float] = {}

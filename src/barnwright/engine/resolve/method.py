@@ -9,8 +9,8 @@ from typing import Literal
 from resolve.findings import Findings
 from resolve.masses import Inputs
 
-from ...documents import Request
-from ...process import Process
+from barnwright.documents import Request
+from barnwright.process import Process
 
 
 @dataclass(frozen=True, slots=True)
@@ -52,11 +52,7 @@ def _first_valid(process: Process, laws: tuple[object, ...], masses: Mapping[int
 
 def resolve_peaks(process: Process, inputs: Inputs) -> tuple[tuple[str, float], ...]:
     """Declared peaks in t and u with the masses in GeV of what is exchanged."""
-    found = []
-    for peak in process.peaks:
-        if peak.of in ("t", "u"):
-            found.append((peak.of, _mass(peak.at, process, inputs)))
-    return tuple(found)
+    return tuple((p.of, _mass(p.at, process, inputs)) for p in process.peaks if p.of in ("t", "u"))
 
 
 def _mass(at: str | float | None, process: Process, inputs: Inputs) -> float:

@@ -4,10 +4,10 @@ from __future__ import annotations
 
 import numpy as np
 
-from ...beams import collide
-from ...process import Process
-from ..plan import Note
-from ..setting import Setting
+from barnwright.beams import collide
+from barnwright.engine.plan import Note
+from barnwright.engine.setting import Setting
+from barnwright.process import Process
 
 
 def notes_of(process: Process, setting: Setting) -> tuple[Note, ...]:

@@ -7,10 +7,10 @@ from functools import lru_cache
 
 from resolve.findings import Findings
 
-from ...documents import AsymmetryRequest, Bins, HistogramRequest, Request
-from ...observables import Cut, Observable, ObservableError, compile_observable, edges_of
-from ...reaction import Reaction
-from ..setting import AsymmetryPlan, HistogramPlan, Layout
+from barnwright.documents import AsymmetryRequest, Bins, HistogramRequest, Request
+from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout
+from barnwright.observables import Cut, Observable, ObservableError, compile_observable, edges_of
+from barnwright.reaction import Reaction
 
 MOST_COMPONENTS = 100_000
 
@@ -64,7 +64,9 @@ def bin_edges(bins: Bins) -> tuple[float, ...]:
     """The edges of one axis."""
     if bins.edges is not None:
         return tuple(bins.edges)
-    assert bins.count is not None and bins.low is not None and bins.high is not None
+    assert bins.count is not None
+    assert bins.low is not None
+    assert bins.high is not None
     return tuple(float(e) for e in edges_of(bins.count, bins.low, bins.high, bins.spacing))
 
 

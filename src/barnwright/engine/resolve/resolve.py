@@ -17,35 +17,45 @@ from resolve.scan import Part, parts_of, scan_shape
 from resolve.scope import check_scope
 from resolve.ties import check_ties
 
-from ...beams import BeamSettings
-from ...documents import Request
-from ...errors import RequestError, Violation, show
-from ...process import Process
-from ...reaction import Reaction
-from ..plan import Group, Note, Plan, ProcessSource
-from ..setting import Layout, Setting
+from barnwright.beams import BeamSettings
+from barnwright.documents import Request
+from barnwright.engine.plan import Group, Note, Plan, ProcessSource
+from barnwright.engine.setting import Layout, Setting
+from barnwright.errors import RequestError, Violation, show
+from barnwright.process import Process
+from barnwright.reaction import Reaction
 
 
 class Identity(Protocol):
     """Where a process comes from."""
 
     @property
-    def name(self) -> str: ...
+    def name(self) -> str:
+        """The process."""
+
     @property
-    def distribution(self) -> str: ...
+    def distribution(self) -> str:
+        """The installed distribution."""
+
     @property
-    def version(self) -> str: ...
+    def version(self) -> str:
+        """Its version."""
+
     @property
-    def digest(self) -> str: ...
+    def digest(self) -> str:
+        """SHA-256 of its files."""
 
 
 class Loaded(Protocol):
     """A process and its identity, as the registry hands them out."""
 
     @property
-    def process(self) -> Process: ...
+    def process(self) -> Process:
+        """The process itself."""
+
     @property
-    def identity(self) -> Identity: ...
+    def identity(self) -> Identity:
+        """Where it comes from."""
 
 
 Lookup = Callable[[str], Loaded]

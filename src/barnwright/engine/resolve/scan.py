@@ -7,8 +7,8 @@ from itertools import product
 from math import prod
 from typing import Any, NamedTuple
 
-from ...documents import Request
-from ...errors import RequestError, Violation, nearest, show
+from barnwright.documents import Request
+from barnwright.errors import RequestError, Violation, nearest, show
 
 MOST_POINTS = 1_000_000
 MOST_GROUPS = 10_000

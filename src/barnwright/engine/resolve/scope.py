@@ -4,10 +4,10 @@ from __future__ import annotations
 
 from resolve.findings import Findings
 
-from ...documents import Request
-from ...errors import nearest
-from ...process import Process
-from ...units import AREA_UNITS
+from barnwright.documents import Request
+from barnwright.errors import nearest
+from barnwright.process import Process
+from barnwright.units import AREA_UNITS
 
 
 def check_scope(request: Request, process: Process, findings: Findings) -> None:

@@ -4,10 +4,10 @@ from __future__ import annotations
 
 from resolve.findings import Findings
 
-from ...beams import collide
-from ...observables import tied_selections
-from ..edges import lab_is_cm
-from ..setting import Layout, Setting
+from barnwright.beams import collide
+from barnwright.engine.edges import lab_is_cm
+from barnwright.engine.setting import Layout, Setting
+from barnwright.observables import tied_selections
 
 
 def check_ties(layout: Layout, settings: tuple[Setting, ...], findings: Findings) -> None:
