@@ -1,4 +1,4 @@
-"""What callers hold on to, pinned: public names, help texts, the fields of a request. Accept a change: `make snapshots`."""
+"""What callers hold on to, pinned: names, help texts, fields of a request. Accept a change: `make snapshots`."""
 
 from __future__ import annotations
 

@@ -1,0 +1,122 @@
+"""Fenced blocks of a Markdown page, run in order as a reader would: one folder, one Python session, one shell.
+
+toml      the first line names a file (`# request.toml`): it is written
+python    executed; pycon: its outputs are compared too ("..." stands for anything)
+console   `$ command` lines are run and their outputs compared; a command that ends in & runs until the page ends
+sh, text  only shown
+"""
+
+from __future__ import annotations
+
+import doctest
+import os
+import re
+import socket
+import subprocess
+import sys
+from collections.abc import Iterator
+from dataclasses import dataclass, field
+from pathlib import Path
+from typing import Any
+
+FENCE = re.compile(r"^```(\w*)\n(.*?)^```$", re.MULTILINE | re.DOTALL)
+PORT = "50551"
+OPTIONS = doctest.ELLIPSIS | doctest.NORMALIZE_WHITESPACE
+
+
+@dataclass(frozen=True, slots=True)
+class Block:
+    """A fenced block: its language, its text and the line where the text begins (1-based)."""
+
+    language: str
+    text: str
+    line: int
+
+
+def blocks(page: str) -> Iterator[Block]:
+    """The fenced blocks of a page in order."""
+    for match in FENCE.finditer(page):
+        yield Block(match[1], match[2], page.count("\n", 0, match.start(2)) + 1)
+
+
+def free_port() -> str:
+    """A port of this machine on which nobody listens."""
+    with socket.create_server(("127.0.0.1", 0)) as listener:
+        return str(listener.getsockname()[1])
+
+
+@dataclass
+class Reader:
+    """Somebody who types a page's blocks into a folder; ``port`` stands in for the page's own."""
+
+    page: Path
+    folder: Path
+    port: str = field(default_factory=free_port)
+    names: dict[str, Any] = field(default_factory=lambda: {"__name__": "__page__"})
+    servers: list[subprocess.Popen[str]] = field(default_factory=list)
+
+    def read(self) -> None:
+        """Run every block; an AssertionError or the block's own error names the line."""
+        try:
+            for block in blocks(self.page.read_text(encoding="utf-8").replace(PORT, self.port)):
+                getattr(self, f"_{block.language}")(block)
+        finally:
+            self.close()
+
+    def close(self) -> None:
+        """End what still runs."""
+        for server in self.servers:
+            server.terminate()
+            server.communicate(timeout=30)
+
+    def _sh(self, block: Block) -> None:
+        """Only shown: installing, or what takes minutes."""
+
+    _text = _sh
+
+    def _toml(self, block: Block) -> None:
+        name = re.match(r"# (\S+\.toml)\n", block.text)
+        assert name, f"{self.page.name}:{block.line}: a toml block names its file in its first line"
+        (self.folder / name[1]).write_text(block.text, encoding="utf-8")
+
+    def _python(self, block: Block) -> None:
+        exec(compile("\n" * (block.line - 1) + block.text, self.page.name, "exec"), self.names)  # noqa: S102
+
+    def _pycon(self, block: Block) -> None:
+        test = doctest.DocTestParser().get_doctest(block.text, self.names, self.page.name, None, block.line - 1)
+        report: list[str] = []
+        doctest.DocTestRunner(optionflags=OPTIONS, verbose=False).run(test, out=report.append, clear_globs=False)
+        assert not report, "".join(report)
+        self.names.update(test.globs)
+
+    def _console(self, block: Block) -> None:
+        for entry in re.split(r"^\$ ", block.text, flags=re.MULTILINE)[1:]:
+            command, _, expected = re.sub(r"\\\n", "", entry).partition("\n")
+            run = self._start if command.endswith("&") else self._shell
+            got = run(command.rstrip("& "))
+            same = doctest.OutputChecker().check_output(expected.strip() + "\n", got.strip() + "\n", OPTIONS)
+            assert same, f"{self.page.name}:{block.line}: $ {command}\nexpected:\n{expected}\ngot:\n{got}"
+
+    def _environment(self) -> dict[str, str]:
+        path = f"{Path(sys.executable).parent}{os.pathsep}{os.environ['PATH']}"
+        return {**os.environ, "PATH": path, "COLUMNS": "100", "NO_COLOR": "1"}
+
+    def _shell(self, command: str) -> str:
+        run = subprocess.run(  # noqa: S602
+            command, shell=True, cwd=self.folder, env=self._environment(), capture_output=True, text=True, timeout=100
+        )
+        return run.stdout + run.stderr
+
+    def _start(self, command: str) -> str:
+        """Start a server and wait for its first line."""
+        server = subprocess.Popen(
+            command.split(),
+            cwd=self.folder,
+            env=self._environment(),
+            stdout=subprocess.PIPE,
+            stderr=subprocess.STDOUT,
+            text=True,
+        )
+        self.servers.append(server)
+        assert server.stdout is not None
+        return server.stdout.readline()
