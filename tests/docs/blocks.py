@@ -102,8 +102,9 @@ class Reader:
         return {**os.environ, "PATH": path, "COLUMNS": "100", "NO_COLOR": "1"}
 
     def _shell(self, command: str) -> str:
-        run = subprocess.run(  # noqa: S602
-            command, shell=True, cwd=self.folder, env=self._environment(), capture_output=True, text=True, timeout=100
+        shell = ["bash", "-c", command]
+        run = subprocess.run(
+            shell, cwd=self.folder, env=self._environment(), capture_output=True, text=True, timeout=100, check=False
         )
         return run.stdout + run.stderr
 

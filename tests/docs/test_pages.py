@@ -2,13 +2,11 @@
 
 from __future__ import annotations
 
-import importlib.util
 import re
-import sys
 from pathlib import Path
-from types import ModuleType
 
 import pytest
+from docs.blocks import Reader
 
 import barnwright
 
@@ -16,22 +14,11 @@ ROOT = Path(__file__).resolve().parents[2]
 PAGES = ("README.md", "DEVELOPERS.md")
 
 
-def neighbour(name: str) -> ModuleType:
-    """A module that lies beside this file."""
-    spec = importlib.util.spec_from_file_location(name, Path(__file__).with_name(f"{name}.py"))
-    assert spec is not None
-    assert spec.loader is not None
-    module = importlib.util.module_from_spec(spec)
-    sys.modules[name] = module
-    spec.loader.exec_module(module)
-    return module
-
-
 @pytest.mark.parametrize("page", PAGES)
 def test_the_blocks_of_a_page_run(page: str, tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
     """Typed in order into an empty folder, the blocks do what the page shows."""
     monkeypatch.chdir(tmp_path)
-    neighbour("blocks").Reader(ROOT / page, tmp_path).read()
+    Reader(ROOT / page, tmp_path).read()
 
 
 @pytest.mark.parametrize("page", PAGES)
