@@ -1,6 +1,6 @@
 """Start a server on a free port, ask it for a prediction over gRPC, print it, draw it, end the server.
 
-    python examples/demo.py FOLDER        (make demo)
+python examples/demo.py FOLDER        (make demo)
 """
 
 from __future__ import annotations
