@@ -1,0 +1,1 @@
+"""Quantum electrodynamics at lowest order: lepton pairs and Compton scattering, masses exact."""

@@ -1,0 +1,7 @@
+"""qed/muon-pair: e- e+ -> mu- mu+."""
+
+from __future__ import annotations
+
+from barnwright_qed.pairs import pair
+
+process = pair("muon-pair", "mu", "muon")

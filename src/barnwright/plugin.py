@@ -1,0 +1,70 @@
+"""Everything that a plugin may use of barnwright, imported when it is first used.
+
+    from barnwright.plugin import Event, Parameters, Process, SquaredAmplitude, parameter
+
+These names are the contract of the entry-point group ``barnwright.processes.v1``: they stay, and grow by fields with defaults.
+"""
+
+from __future__ import annotations
+
+from importlib import import_module
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from barnwright.errors import PluginError
+    from barnwright.event import Event, Point
+    from barnwright.peaks import Peak
+    from barnwright.process import (
+        Claims,
+        ClosedForm,
+        Expression,
+        Parameters,
+        Process,
+        SquaredAmplitude,
+        Validity,
+        parameter,
+    )
+
+_PLACES = {
+    "Claims": "barnwright.process",
+    "ClosedForm": "barnwright.process",
+    "Event": "barnwright.event",
+    "Expression": "barnwright.process",
+    "Parameters": "barnwright.process",
+    "Peak": "barnwright.peaks",
+    "PluginError": "barnwright.errors",
+    "Point": "barnwright.event",
+    "Process": "barnwright.process",
+    "SquaredAmplitude": "barnwright.process",
+    "Validity": "barnwright.process",
+    "parameter": "barnwright.process",
+}
+
+__all__ = [
+    "Claims",
+    "ClosedForm",
+    "Event",
+    "Expression",
+    "Parameters",
+    "Peak",
+    "PluginError",
+    "Point",
+    "Process",
+    "SquaredAmplitude",
+    "Validity",
+    "parameter",
+]
+
+
+def __getattr__(name: str) -> Any:
+    """Import a name of the contract where it lives, once."""
+    if name not in _PLACES:
+        raise AttributeError(f"module 'barnwright.plugin' has no attribute {name!r}")
+    value = getattr(import_module(_PLACES[name]), name)
+    globals()[name] = value
+    return value
+
+
+def __dir__() -> list[str]:
+    """The names of the contract, for completion."""
+    return list(__all__)
