@@ -1,0 +1,8 @@
+"""Particles by the names of the Particle Data Group, with masses in GeV; the table is read when first asked for."""
+
+from __future__ import annotations
+
+from .data import ParticleData
+from .index import UnknownParticleError, find, names, table_version
+
+__all__ = ["ParticleData", "UnknownParticleError", "find", "names", "table_version"]
