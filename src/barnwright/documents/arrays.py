@@ -6,7 +6,7 @@ A number that is not known is ``null`` in JSON and NaN in Python; infinity is re
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Annotated, Any
+from typing import Annotated, Any, Self
 
 import numpy as np
 from numpy.typing import NDArray
@@ -127,7 +127,7 @@ class ArrayDocument(Document):
     """A document with arrays: built with read-only views of them, equal where every entry is (NaN equals NaN)."""
 
     @classmethod
-    def build(cls, **fields: Any) -> Any:
+    def build(cls, **fields: Any) -> Self:
         """As ``Document.build``; arrays are handed over as read-only views."""
         for name, value in fields.items():
             if type(value) is np.ndarray:
@@ -148,4 +148,6 @@ def _equal(one: Any, two: Any) -> bool:
         return np.array_equal(one, two, equal_nan=True)
     if isinstance(one, tuple) and isinstance(two, tuple):
         return len(one) == len(two) and all(map(_equal, one, two))
+    if isinstance(one, dict) and isinstance(two, dict):
+        return one.keys() == two.keys() and all(_equal(one[key], two[key]) for key in one)
     return bool(one == two)

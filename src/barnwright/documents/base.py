@@ -110,10 +110,11 @@ Observable = Annotated[
     Field(strict=True, min_length=1, max_length=MAX_TEXT, pattern=_VISIBLE),
     Expects(f"an observable, as a text of at most {MAX_TEXT} characters"),
 ]
+#: Whole numbers above 2**53 in size, which no JSON reader keeps, are taken as floats.
 ParameterValue = Annotated[
     Annotated[bool, Strict()]
     | Annotated[int, Field(strict=True, ge=-MAX_WHOLE, le=MAX_WHOLE)]
     | Annotated[float, Field(strict=True, allow_inf_nan=False)]
     | Annotated[str, Field(strict=True, min_length=1, max_length=MAX_NAME, pattern=_VISIBLE)],
-    Expects("a finite number, a whole number of at most 2**53 in size, true, false or a word"),
+    Expects("a finite number, true, false or a word"),
 ]

@@ -14,10 +14,12 @@ from pydantic import BaseModel, ValidationError
 
 from barnwright.documents.base import MAX_NAME
 from barnwright.documents.checks import Path
-from barnwright.documents.findings import Located, located
+from barnwright.documents.findings import Located, located, shortened
 from barnwright.errors import Violation
 
 _ROUNDS = 12
+_DEEPEST = 20
+_TAG = "kind"
 
 _BEAMS: dict[str, dict[str, Any]] = {
     "collider": {"kind": "collider", "sqrt_s": 1.0},
@@ -32,14 +34,19 @@ _ENTRIES: dict[str, dict[str, Any]] = {
 }
 
 
-def plain(value: Any) -> Any:
-    """The same values as Python's own: documents as tables, numpy's numbers and arrays as numbers and lists."""
+def plain(value: Any, depth: int = 0) -> Any:
+    """The same values as Python's own: documents as tables, numpy's numbers and arrays as numbers and lists.
+
+    What is nested deeper than any document stays as it is; it is refused where it stands.
+    """
+    if depth > _DEEPEST:
+        return value
     if isinstance(value, BaseModel):
-        return plain(value.model_dump(exclude_unset=True))
+        return plain(value.model_dump(exclude_unset=True), depth)
     if isinstance(value, Mapping):
-        return {key: plain(entry) for key, entry in value.items()}
+        return {key: plain(entry, depth + 1) for key, entry in value.items()}
     if isinstance(value, (list, tuple)):
-        return [plain(entry) for entry in value]
+        return [plain(entry, depth + 1) for entry in value]
     return value.tolist() if type(value).__module__ == "numpy" and hasattr(value, "tolist") else value
 
 
@@ -54,14 +61,15 @@ def examine(
         for entry in found:
             if not _follows(entry, taken):
                 kept.setdefault(entry.path, entry.violation)
-        if not isinstance(values, dict) or not any([_take_out(values, entry, taken) for entry in found]):
+        done = [_take_out(values, entry, taken) for entry in found] if isinstance(values, dict) else []
+        if not any(done):
             break
         try:
             validate(values)
             break
         except ValidationError as further:
             error = further
-    return list(kept.values())
+    return shortened(list(kept.values()))
 
 
 def _follows(entry: Located, taken: set[Path]) -> bool:
@@ -74,6 +82,9 @@ def _take_out(values: dict[str, Any], entry: Located, taken: set[Path]) -> bool:
     """Take the value of a finding out, or make its whole section harmless; False when neither can be done."""
     section = entry.path[:2] if len(entry.path) > 1 and isinstance(entry.path[1], int) else entry.path[:1]
     key = _key(entry.path, len(section))
+    if entry.missing and _fill(values, entry.path, section):
+        taken.add(entry.path)
+        return True
     if not entry.missing and not entry.of and key not in taken and _delete(values, key):
         taken.update((entry.path, key))
         return True
@@ -87,9 +98,24 @@ def _key(path: Path, least: int) -> Path:
     return path
 
 
+def _fill(values: dict[str, Any], path: Path, section: Path) -> bool:
+    """Give an entry of a list the one field that it lacks, where that says nothing about its other fields."""
+    if len(section) != 2 or len(path) != 3 or path[2] == _TAG:
+        return False
+    harmless = {**_ENTRIES.get(str(path[0]), {}), "name": f"#{path[1]}"}
+    entry: Any = values[str(path[0])]
+    entry = entry[path[1]]
+    if path[2] not in harmless or not isinstance(entry, dict) or path[2] in entry:
+        return False
+    entry[path[2]] = harmless[str(path[2])]
+    return True
+
+
 def _delete(values: dict[str, Any], path: Path) -> bool:
     holder: Any = values
     for part in path[:-1]:
+        if isinstance(holder, dict) and part not in holder:
+            return False
         holder = holder[part]
     if not isinstance(holder, dict) or path[-1] not in holder:
         return False

@@ -14,6 +14,10 @@ from barnwright.documents.base import MAX_NAME, Expects
 from barnwright.documents.checks import Finding, Path, Shown
 from barnwright.errors import Violation, nearest, show
 
+#: More findings than these are not listed, more than those are not looked at.
+MAX_FINDINGS = 100
+MAX_LOOKED_AT = 200
+
 _TAG = "kind"
 KEY_EXPECTS = f"a key that is a name of 1 to {MAX_NAME} printable characters"
 
@@ -39,17 +43,25 @@ class Located:
 
 def violations_of(error: ValidationError, model: type[BaseModel]) -> list[Violation]:
     """Every finding of a validation of ``model``, once each, in the order of the fields."""
-    return [entry.violation for entry in located(error, model)]
+    return shortened([entry.violation for entry in located(error, model)])
 
 
 def located(error: ValidationError, model: type[BaseModel]) -> list[Located]:
     """The same with paths in parts; only the first of several findings of a union about one field is kept."""
     kept: dict[Path, Located] = {}
-    for details in error.errors(include_url=False):
+    for details in error.errors(include_url=False)[:MAX_LOOKED_AT]:
         place = _place(model, details["loc"])
         for entry in _entries(cast(Mapping[str, Any], details), place):
             kept.setdefault(entry.path, entry)
     return list(kept.values())
+
+
+def shortened(violations: list[Violation]) -> list[Violation]:
+    """At most ``MAX_FINDINGS`` of them, and then a last one that says how many there are."""
+    if len(violations) <= MAX_FINDINGS:
+        return violations
+    expected = f"a request of which the first {MAX_FINDINGS} are corrected; the others come then"
+    return [*violations[:MAX_FINDINGS], Violation("request", f"{len(violations)} findings or more", expected)]
 
 
 def written(path: Sequence[str | int]) -> str:
@@ -157,17 +169,17 @@ def _place(model: type[BaseModel], steps: Sequence[str | int]) -> Place:
 
 def _step(place: Place, step: str | int) -> Place:
     core = place.core
-    if step == "[key]":
-        return replace(place, core=str, expects=KEY_EXPECTS)
     if isinstance(core, type) and issubclass(core, BaseModel):
         hint = _hints(core).get(str(step))
         path = (*place.path, step)
         return Place(path, core, None) if hint is None else Place(path, *_unwrap(hint))
-    if _is_union(core):
-        return _into_union(place, str(step))
     arguments = get_args(core)
     if get_origin(core) is dict:
         return Place((*place.path, step), *_unwrap(arguments[1]))
+    if step == "[key]":
+        return replace(place, core=str, expects=KEY_EXPECTS)
+    if _is_union(core):
+        return _into_union(place, str(step))
     origin = get_origin(core)
     if isinstance(step, int) and isinstance(origin, type) and issubclass(origin, Sequence):
         inner = arguments[0] if arguments[-1] is Ellipsis or step >= len(arguments) else arguments[step]

@@ -50,11 +50,11 @@ class Results(ArrayDocument):
     @classmethod
     def build(cls, **fields: Any) -> Self:
         """As ``Document.build``; the histograms get their replicates."""
-        made: Self = super().build(**fields)
+        made = super().build(**fields)
         made.model_post_init(None)
         return made
 
-    def model_post_init(self, context: Any) -> None:
+    def model_post_init(self, _context: Any, /) -> None:
         """Give each histogram its columns of the replicates; pydantic calls this after a validation."""
         if self.replicates is None:
             return
