@@ -50,7 +50,7 @@ class ProcessDescription(ProcessSummary):
     """
 
     laws: tuple[str, ...] = ()
-    parameters: ByName[ParameterDescription] = ByName()
+    parameters: ByName[ParameterDescription] = Field(default_factory=ByName[ParameterDescription])
     masses: Annotated[dict[str, float], Expects("a table of legs and masses (GeV)")] = Field(default_factory=dict)
     contributions: tuple[str, ...] = ()
     derived: tuple[str, ...] = ()

@@ -42,11 +42,11 @@ class Prediction(Results):
     scheme: str | None = None
     notes: tuple[Note, ...] = ()
     total: Total
-    histograms: ByName[Histogram] = ByName()
-    derived: ByName[Derived] = ByName()
-    contributions: ByName[Part] = ByName()
-    processes: ByName[Part] = ByName()
-    variations: ByName[Part] = ByName()
+    histograms: ByName[Histogram] = Field(default_factory=ByName[Histogram])
+    derived: ByName[Derived] = Field(default_factory=ByName[Derived])
+    contributions: ByName[Part] = Field(default_factory=ByName[Part])
+    processes: ByName[Part] = Field(default_factory=ByName[Part])
+    variations: ByName[Part] = Field(default_factory=ByName[Part])
     parameters: Values
     masses: Masses
     constants: Numbers

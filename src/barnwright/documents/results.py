@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Annotated, Any, Self
 
+from pydantic import Field
+
 from barnwright.documents.arrays import Array, ArrayDocument, FloatArray, Matrix
 from barnwright.documents.base import Expects, Name, ParameterValue
 from barnwright.documents.by_name import ByName
@@ -27,7 +29,7 @@ class Derived(Estimate):
     """An asymmetry or a ratio, of the total and, between two variations, of every histogram bin by bin."""
 
     name: Name
-    histograms: ByName[DerivedBins] = ByName()
+    histograms: ByName[DerivedBins] = Field(default_factory=ByName[DerivedBins])
 
     def __str__(self) -> str:
         """``A_FB = 0.0163(4)``."""
@@ -69,8 +71,8 @@ class Part(Results):
 
     name: Name
     total: Total
-    histograms: ByName[Histogram] = ByName()
-    derived: ByName[Derived] = ByName()
+    histograms: ByName[Histogram] = Field(default_factory=ByName[Histogram])
+    derived: ByName[Derived] = Field(default_factory=ByName[Derived])
     parameters: Values | None = None
     masses: Masses | None = None
     notes: tuple[Note, ...] = ()
