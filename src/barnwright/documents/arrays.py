@@ -52,10 +52,11 @@ def to_array(values: Any) -> Array:
 
 
 def to_lists(array: Array) -> Any:
-    """Nested lists, None where a number is not known."""
-    if not np.isnan(array).any():
+    """Nested lists, None where a number is not known or not finite."""
+    known = np.isfinite(array)
+    if known.all():
         return array.tolist()
-    return np.where(np.isnan(array), np.array(None, dtype=object), array.astype(object)).tolist()
+    return np.where(known, array.astype(object), np.array(None, dtype=object)).tolist()
 
 
 @dataclass(frozen=True, slots=True)

@@ -21,6 +21,7 @@ def test_unknown_entries() -> None:
     assert adapter.dump_json(array) == b"[1.0,null,2.5]"
     assert adapter.dump_python(adapter.validate_python([[1, None]]), mode="json") == [[1.0, None]]
     assert adapter.validate_python([]).shape == (0,)
+    assert adapter.dump_json(np.array([np.inf, 0.0])) == b"[null,0.0]"
 
 
 @pytest.mark.parametrize("wrong", [3, "ab", [True], ["1"], [[1], [1, 2]], [1, [2]], [float("inf")], [[[1]]], {"a": 1}])
