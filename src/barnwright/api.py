@@ -20,7 +20,7 @@ if TYPE_CHECKING:
     from barnwright.documents import Prediction
     from barnwright.documents.description import ProcessDescription, ProcessSummary
     from barnwright.process import Process
-    from barnwright.run.local import Sweep
+    from barnwright.analysis import Sweep
 
 __all__ = ["connect", "connect_async", "describe", "predict", "processes", "scan"]
 
@@ -51,7 +51,7 @@ def scan(request: RequestLike | None = None, /, *, over: Mapping[str, Sequence[A
     The result has ``values`` and ``errors``, arrays of the totals of shape (point,), in the request's unit;
     ``sweep[i]`` is made into a Prediction when asked for. Raises what ``predict`` raises.
     """
-    from barnwright.run.local import scan as calculate
+    from barnwright.analysis import scan as calculate
 
     document, process = _request(request, fields)
     return calculate(document, over, process)

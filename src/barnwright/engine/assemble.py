@@ -80,7 +80,8 @@ def assemble(plan: Plan, settled: Settled, status: Status, origin: Origin, run: 
     order = np.argsort(np.concatenate([np.array(group.points, dtype=np.intp) for group in plan.groups]))
     factor = from_natural(plan.groups[0].request.unit)
     value, error = sums.added[0][order] * factor, sums.added[1][order] * factor
-    return Answers(plan, value, error, settled, status, origin, run)
+    doubtful = settled.counters.get("unresolved", 0) or settled.counters.get("negative", 0)
+    return Answers(plan, value, error, settled, "suspect" if doubtful else status, origin, run)
 
 
 class _Shared:

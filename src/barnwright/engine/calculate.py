@@ -1,7 +1,7 @@
 """The law of a calculation, without any input or output: rounds of blocks go out, a verdict comes back.
 
 Whoever drives it adds the tally of every block to the ledger and advances the generator when ``ledger.missing(round)``
-is empty. To end early, it calls ``ledger.stop(reason)`` and advances. To resume, hand in a ledger that has come some way.
+is empty. To end early, it calls ``ledger.stop(reason)`` and advances. A ledger that has come some way is handed in.
 """
 
 from __future__ import annotations

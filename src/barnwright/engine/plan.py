@@ -18,7 +18,9 @@ from typing import Any
 
 from barnwright.documents import Request
 from barnwright.engine.setting import Layout, Setting
-from barnwright.integrate.block import Block
+from barnwright.integrate.block import Round, Strand
+from barnwright.integrate.estimate import Rule
+from barnwright.integrate.ledger import Frozen
 from barnwright.reaction import Reaction
 
 NODES_A_BLOCK = 30_000
@@ -127,12 +129,30 @@ class Plan:
             for first in range(start, stop, step):
                 yield first, min(first + step, stop)
 
-    def blocks(self) -> list[Block]:
-        """The one round of a closed form or a quadrature."""
-        return [
-            Block(stage=self.digest, round=0, points=r, stratum=0, replicate=0, chunks=(0, 1), seed=())
-            for r in self.ranges()
-        ]
+    @property
+    def name(self) -> str:
+        """What messages call it, as ``qed/compton``."""
+        return self.source.name
+
+    @property
+    def rule(self) -> Rule:
+        """How sums become values and errors: closed forms and quadrature both state bounds."""
+        return "exact" if all(s.rule == "closed_form" for g in self.groups for s in g.settings) else "embedded"
+
+    @property
+    def training(self) -> None:
+        """Nothing to train."""
+        return None
+
+    @property
+    def ladder(self) -> None:
+        """One round answers."""
+        return None
+
+    def round(self, frozen: Frozen, number: int) -> Round:
+        """The one round of closed forms and quadrature: a block for each range of points."""
+        del frozen
+        return Round(self.digest, number, tuple(Strand(points) for points in self.ranges()))
 
     def stage(self) -> Stage:
         """The plan with its frozen arrays: none for closed forms and quadrature."""

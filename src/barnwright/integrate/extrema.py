@@ -8,8 +8,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from .polar_axis import Ends, Integers, ends_of
-from .search_grid import search_grid
+from barnwright.integrate.polar_axis import Ends, Integers, ends_of
+from barnwright.integrate.search_grid import search_grid
 
 Array = NDArray[np.float64]
 AxisFunction = Callable[[Integers, Ends], Array]
@@ -61,7 +61,6 @@ def extrema(function: AxisFunction, on_grid: Array) -> Extrema:
     on_grid : array, shape (row, node)
         The function on the nodes of the search grid.
     """
-    grid = search_grid()
     with np.errstate(invalid="ignore"):
         step = np.diff(on_grid, axis=1)
         noise = 2 * SAME * np.maximum(np.abs(on_grid[:, 1:]), np.abs(on_grid[:, :-1]))
@@ -73,7 +72,6 @@ def extrema(function: AxisFunction, on_grid: Array) -> Extrema:
     sides = [_on_one_side(function, on_grid, row, left + later, sign) for later in (0, 1)]
     place, value = (np.concatenate([s[i] for s in sides]) for i in (0, 1))
     mode_left = np.concatenate([left, left + 1])
-    assert place.size == mode_left.size == 2 * row.size and grid.low.size == step.shape[1]
     return Extrema(np.tile(row, 2), mode_left, place, value, np.tile(sign, 2))
 
 

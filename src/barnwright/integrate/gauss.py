@@ -1,7 +1,7 @@
 """Gauss–Legendre rules on [0, 1], and a coarser rule on some of the same nodes.
 
-Nodes and weights are arrays of shape (node,). The first order has an embedded partner: its five nodes without the middle
-one, exact to third degree. Higher orders are compared with the order before.
+Nodes and weights are arrays of shape (node,). The first order has an embedded partner: its five nodes without the
+middle one, exact to third degree. Higher orders are compared with the order before.
 """
 
 from __future__ import annotations

@@ -10,8 +10,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from .polar_axis import BACKWARD, FORWARD, Ends, Integers, ends_of
-from .roots import Crossings
+from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers, ends_of
+from barnwright.integrate.roots import Crossings
 
 Array = NDArray[np.float64]
 
@@ -27,7 +27,8 @@ class Panels:
     left, right : arrays, shape (row or 1, panel)
         x, the distance from the pole, at the end of smaller and of larger c.
     wobble, graze : arrays, shape (row or 1, panel − 1)
-        The uncertainty in c of the boundary between each panel and the next where a level is crossed, and where one is grazed.
+        The uncertainty in c of the boundary between each panel and the next where a level is crossed, and where one
+        is grazed.
     """
 
     side: Integers
@@ -86,7 +87,7 @@ def _at_centre(found: Crossings, rows: int) -> tuple[Array, Array]:
 
 
 def _sorted_by_row(found: Crossings, rows: int, side: int) -> tuple[Array, tuple[Array, Array]]:
-    """x of one hemisphere's crossings, (row, most crossings), sorted, padded with the centre; and its two uncertainties."""
+    """x of one hemisphere's crossings, (row, most crossings), sorted, padded with 1; and its two uncertainties."""
     chosen = (found.side == side) & (found.x > 0) & (found.x < 1)
     order = np.lexsort((found.x[chosen], found.row[chosen]))
     row, x, slack, grazing = (a[chosen][order] for a in (found.row, found.x, found.uncertainty, found.grazing))

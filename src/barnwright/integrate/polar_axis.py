@@ -1,7 +1,7 @@
 """Locations on an axis c in [−1, 1] that keep all their digits near both ends.
 
-A location is a hemisphere and the distance x = 1 − |c| in [0, 1] from its pole. In c alone the last representable step below 1 is
-1e−16, and an edge or a peak 1e−12 away from a pole would keep four digits.
+A location is a hemisphere and the distance x = 1 − |c| in [0, 1] from its pole. In c alone the last representable
+step below 1 is 1e−16, and an edge or a peak 1e−12 away from a pole would keep four digits.
 
 Hemisphere 0 belongs to c = −1, hemisphere 1 to c = +1; they meet at x = 1. The same structure serves any interval.
 """

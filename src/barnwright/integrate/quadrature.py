@@ -1,8 +1,8 @@
 """Gauss–Legendre quadrature of a density over panels, refined where a panel asks for it.
 
-A panel is accepted when the fine rule and the coarser one agree to `TOLERANCE` of its own integral; otherwise the order rises to
-40 and then the panel is halved, near a pole geometrically (x from the pole keeps its digits). What a panel does depends on
-that panel alone, so a point of a scan has the bits of a point asked for by itself.
+A panel is accepted when the fine rule and the coarser one agree to `TOLERANCE` of its own integral; otherwise the
+order rises to 40 and then the panel is halved, near a pole geometrically (x from the pole keeps its digits). What a
+panel does depends on that panel alone, so a point of a scan has the bits of a point asked for by itself.
 """
 
 from __future__ import annotations
@@ -13,14 +13,14 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from .extrema import EPSILON
-from .gauss import FIRST_ORDER, ORDERS, embedded_weights, gauss_legendre
-from .panels import Panels
-from .polar_axis import Ends, Integers, ends_of
+from barnwright.integrate.extrema import EPSILON
+from barnwright.integrate.gauss import FIRST_ORDER, ORDERS, embedded_weights, gauss_legendre
+from barnwright.integrate.panels import Panels
+from barnwright.integrate.polar_axis import Ends, Integers, ends_of
 
 Array = NDArray[np.float64]
 Density = Callable[[Integers | None, Ends], Array]
-"""``density(rows, ends)``: rows None means all of them, with ends (row or 1, node); else one row number a line of ends."""
+"""``density(rows, ends)``: rows None means all of them, ends (row or 1, node); else one row number a line of ends."""
 
 TOLERANCE = 4e-14
 ROUNDING = 4 * EPSILON

@@ -1,9 +1,10 @@
 """Where a function on the axis crosses given levels: extrema first, then brackets, then roots.
 
-An edge just below an extremum is a double root, which plain bracketing misses: so the extrema are found and refined first, and
-every stretch between neighbouring nodes and extrema is monotone when its crossings are looked for.
+An edge just below an extremum is a double root, which plain bracketing misses: so the extrema are found and refined
+first, and every stretch between neighbouring nodes and extrema is monotone when its crossings are looked for.
 
-The function has the signature ``function(row, ends) -> values``: ``row`` an integer array, ``ends`` an `Ends`, which broadcast.
+The function has the signature ``function(row, ends) -> values``: ``row`` an integer array, ``ends`` an `Ends`, which
+broadcast.
 """
 
 from __future__ import annotations
@@ -13,9 +14,9 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from .extrema import EPSILON, AxisFunction, Extrema, extrema
-from .polar_axis import Integers, ends_of, hemisphere_of
-from .search_grid import search_grid
+from barnwright.integrate.extrema import EPSILON, AxisFunction, Extrema, extrema
+from barnwright.integrate.polar_axis import Integers, ends_of, hemisphere_of
+from barnwright.integrate.search_grid import search_grid
 
 Array = NDArray[np.float64]
 
@@ -32,7 +33,8 @@ class Crossings:
     uncertainty : array
         How far rounding of the function may move the crossing.
     grazing : bools
-        An extremum that meets a level within rounding: the function stays on one side of it, the uncertainty counts all the same.
+        An extremum that meets a level within rounding: the function stays on one side of it, the uncertainty counts
+        all the same.
     """
 
     row: Integers
@@ -121,7 +123,7 @@ def _rank(levels: Array, values: Array) -> Integers:
 def _refine(function: AxisFunction, stretch: _Stretch, levels: Array) -> Crossings:
     """All levels between the end values of each stretch."""
     first, last = _rank(levels, stretch.at_low), _rank(levels, stretch.at_high)
-    count = np.abs(last - first)
+    count = np.where(stretch.low == stretch.high, 0, np.abs(last - first))
     which = np.repeat(np.arange(count.size), count)
     if which.size == 0:
         return Crossings.none()

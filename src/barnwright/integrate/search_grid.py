@@ -8,7 +8,7 @@ from typing import NamedTuple
 import numpy as np
 from numpy.typing import NDArray
 
-from .polar_axis import BACKWARD, FORWARD, Integers
+from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Integers
 
 Array = NDArray[np.float64]
 
@@ -16,8 +16,8 @@ Array = NDArray[np.float64]
 class SearchGrid(NamedTuple):
     """Nodes in the order of c, and the intervals between neighbours.
 
-    ``mode`` and ``value`` locate the nodes; ``interval_mode`` is the hemisphere of each interval and ``low``, ``high`` are x at
-    its end of smaller and of larger c.
+    ``mode`` and ``value`` locate the nodes; ``interval_mode`` is the hemisphere of each interval and ``low``,
+    ``high`` are x at its end of smaller and of larger c.
     """
 
     mode: Integers

@@ -5,8 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
-from resolve.findings import Findings
-from resolve.legs import beam_code
+from barnwright.engine.resolve.findings import Findings
+from barnwright.engine.resolve.legs import beam_code
 
 from barnwright.beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
 from barnwright.documents import ColliderBeams, DecayBeams, FixedTargetBeams

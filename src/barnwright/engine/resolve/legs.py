@@ -1,11 +1,10 @@
-"""Which leg a request means by a name: beams by particle, or beam_a and beam_b; species by particle or antiparticle."""
+"""Which beam a request means by a name: by its particle, or as beam_a and beam_b."""
 
 from __future__ import annotations
 
-from resolve.findings import Findings
+from barnwright.engine.resolve.findings import Findings
 
 from barnwright.errors import nearest
-from barnwright.particles import find
 from barnwright.reaction import Reaction
 
 BEAM_CODES = {"beam_a": -1, "beam_b": -2}
@@ -24,13 +23,3 @@ def beam_code(name: str, reaction: Reaction, where: str, findings: Findings) -> 
         choices = (*dict.fromkeys(reaction.incoming), *BEAM_CODES)
         findings.add(where, name, f"one of the beams: {', '.join(choices)}", nearest(name, choices))
     return None
-
-
-def legs_of_species(name: str, reaction: Reaction) -> tuple[int, ...]:
-    """The codes of all legs that are this particle or its antiparticle."""
-    try:
-        both = {name, find(name).antiparticle}
-    except LookupError:
-        return ()
-    names = {**{-1 - i: p for i, p in enumerate(reaction.incoming)}, **dict(enumerate(reaction.outgoing, 1))}
-    return tuple(code for code, particle in names.items() if particle in both)

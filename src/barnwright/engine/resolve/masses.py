@@ -6,8 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from pydantic import ValidationError
-from resolve.findings import Findings
-from resolve.legs import legs_of_species
+from barnwright.engine.resolve.findings import Findings
 
 from barnwright.documents import violations_of
 from barnwright.engine.setting import ParameterValue
@@ -36,8 +35,9 @@ def resolve_inputs(
     wanted = dict(parameters)
     own: dict[int, float] = {}
     for name, mass in masses.items():
-        codes = legs_of_species(name, process.legs)
-        if not codes:
+        try:
+            codes = process.codes_of(name)
+        except LookupError:
             names = tuple(dict.fromkeys((*process.legs.incoming, *process.legs.outgoing)))
             findings.add(
                 f"masses.{name}", mass, f"a particle of the reaction: {', '.join(names)}", nearest(name, names)

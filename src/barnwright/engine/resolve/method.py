@@ -6,8 +6,8 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Literal
 
-from resolve.findings import Findings
-from resolve.masses import Inputs
+from barnwright.engine.resolve.findings import Findings
+from barnwright.engine.resolve.masses import Inputs
 
 from barnwright.documents import Request
 from barnwright.process import Process

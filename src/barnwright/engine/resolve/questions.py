@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from functools import lru_cache
 
-from resolve.findings import Findings
+from barnwright.engine.resolve.findings import Findings
 
 from barnwright.documents import AsymmetryRequest, Bins, HistogramRequest, Request
 from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout

@@ -5,24 +5,24 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping, Sequence
 from typing import Any, NamedTuple, Protocol
 
-from resolve.beams import BeamContext, resolve_beams
-from resolve.digest import plan_digest
-from resolve.findings import Findings
-from resolve.formula import formula_process, formula_source
-from resolve.masses import Inputs, resolve_inputs
-from resolve.method import resolve_method, resolve_peaks
-from resolve.notes import notes_of
-from resolve.questions import resolve_cuts, resolve_layout
-from resolve.scan import Part, parts_of, scan_shape
-from resolve.scope import check_scope
-from resolve.ties import check_ties
+from barnwright.engine.resolve.beams import BeamContext, resolve_beams
+from barnwright.engine.resolve.digest import plan_digest
+from barnwright.engine.resolve.findings import Findings
+from barnwright.engine.resolve.formula import formula_process, formula_source
+from barnwright.engine.resolve.masses import Inputs, resolve_inputs
+from barnwright.engine.resolve.method import resolve_method, resolve_peaks
+from barnwright.engine.resolve.notes import notes_of
+from barnwright.engine.resolve.questions import resolve_cuts, resolve_layout
+from barnwright.engine.resolve.scan import Part, parts_of, scan_shape
+from barnwright.engine.resolve.scope import check_scope
+from barnwright.engine.resolve.ties import check_ties
 
 from barnwright.beams import BeamSettings
 from barnwright.documents import Request
 from barnwright.engine.plan import Group, Note, Plan, ProcessSource
 from barnwright.engine.setting import Layout, Setting
 from barnwright.errors import RequestError, Violation, show
-from barnwright.process import Process
+from barnwright.process import Process, facts_of
 from barnwright.reaction import Reaction
 
 
@@ -99,7 +99,10 @@ def provided_of(process: Process) -> dict[str, Any]:
 
 def sources_of(process: Process) -> dict[str, str]:
     """The sources of parameters' defaults, and of the constants."""
-    return {**process.parameter_sources(), "hbar_c_squared": "CODATA through scipy.constants; GeV² mb"}
+    return {
+        **{fact.name: fact.source for fact in facts_of(process.parameters)},
+        "hbar_c_squared": "CODATA through scipy.constants; GeV² mb",
+    }
 
 
 def _process(request: Request, lookup: Lookup) -> tuple[Process, ProcessSource]:

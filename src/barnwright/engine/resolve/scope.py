@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from resolve.findings import Findings
+from barnwright.engine.resolve.findings import Findings
 
 from barnwright.documents import Request
 from barnwright.errors import nearest

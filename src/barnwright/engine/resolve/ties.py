@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from resolve.findings import Findings
+from barnwright.engine.resolve.findings import Findings
 
 from barnwright.beams import collide
 from barnwright.engine.edges import lab_is_cm

@@ -1,0 +1,5 @@
+"""Questions about many predictions at once."""
+
+from barnwright.analysis.sweep import Sweep, scan
+
+__all__ = ["Sweep", "scan"]

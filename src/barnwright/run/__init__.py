@@ -1,0 +1,1 @@
+"""Running plans: the inline driver, what workers do, where numbers come from."""
