@@ -27,7 +27,7 @@ FOR_DEVELOPERS := $(STAMPS)/developers-$(PINS)
 PROTO_PY := .venv-proto/bin/python
 PROTO_MADE := .venv-proto/made-$(call digest,tools/stubs-requirements.txt)
 
-.PHONY: help demo test check lint types imports dependencies stubs protos proto proto-image snapshots bench statistics clean
+.PHONY: help demo test check lint types imports dependencies stubs protos proto proto-image constraints snapshots bench statistics clean
 
 help:  ## Show this list
 	@sed -nE 's/^([a-z-]+):.*##/\1\t/p' $(MAKEFILE_LIST) | expand -t 16
@@ -65,6 +65,12 @@ proto: $(PROTO_MADE)  ## Write the stubs of protos/ anew
 
 proto-image: $(FOR_DEVELOPERS)  ## At a release: freeze protos/ as the image that later changes must not break
 	$(VENV)/bin/buf build protos --exclude-source-info -o protos/image.binpb
+
+constraints: $(BUILT)  ## At a release: pin the newest versions that fit pyproject.toml
+	rm -rf build/newest && $(PY) -m venv build/newest
+	build/newest/bin/python -m pip install -qq "$$(echo $(WHEELS)/barnwright-*.whl)[service,plot,dev]"
+	echo "# What CI installed and tested: pip install -c constraints.txt ..." > constraints.txt
+	build/newest/bin/python -m pip freeze | grep -v '^barnwright' >> constraints.txt
 
 snapshots: $(BUILT) $(FOR_DEVELOPERS)  ## Accept the present public names and help texts as the pinned ones
 	UPDATE_SNAPSHOTS=1 $(PY) -m pytest -q tests/house

@@ -40,9 +40,10 @@ def test_no_function_is_over_40_lines() -> None:
 
 
 def test_versions_are_in_lock_step() -> None:
-    """The package, the bundled plugins and the citation carry one version."""
+    """The package, the bundled plugins, what these ask for and the citation carry one version."""
     found = {"CITATION.cff": re.search(r"^version: (.+)$", (ROOT / "CITATION.cff").read_text(), re.MULTILINE)[1]}
     for file in sorted((ROOT / "plugins").glob("*/pyproject.toml")):
         project = tomllib.loads(file.read_text(encoding="utf-8"))["project"]
         found[project["name"]] = project["version"]
+        found[f"{project['name']} asks for"] = project["dependencies"][0].removeprefix("barnwright==")
     assert found == dict.fromkeys(found, barnwright.__version__)
