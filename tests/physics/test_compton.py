@@ -97,8 +97,8 @@ def test_photon_spectrum(method: str) -> None:
 
     lowest = mpmath.mpf(PHOTON) / (1 + 2 * mpmath.mpf(PHOTON) / mpmath.mpf(ELECTRON))
     for a, b, content in zip(edges, edges[1:], p.histograms["energy"].values, strict=False):
-        a, b = max(mpmath.mpf(a), lowest), min(mpmath.mpf(b), mpmath.mpf(PHOTON))
-        assert content == pytest.approx(float(mpmath.quad(density, [a, b])), rel=1e-10)
+        ends = [max(mpmath.mpf(a), lowest), min(mpmath.mpf(b), mpmath.mpf(PHOTON))]
+        assert content == pytest.approx(float(mpmath.quad(density, ends)), rel=1e-10)
 
 
 @pytest.mark.parametrize("method", ["closed_form", "quadrature"])
@@ -152,7 +152,7 @@ def test_backscattered_laser_light() -> None:
         return 2 * mpmath.pi * mpmath.mpf(RADIUS_SQUARED) / x * bracket
 
     def share(photon_energy: float) -> mpmath.mpf:
-        """y of a photon energy in the lab: E' = (E + k)-weighted, linear between k (y = 0) and the edge (y = x/(1 + x))."""
+        """y of a photon energy in the lab: linear between k (y = 0) and the edge (y = x/(1 + x))."""
         fraction = (min(mpmath.mpf(photon_energy), edge) - photon) / (edge - photon)
         return fraction * x / (1 + x)
 

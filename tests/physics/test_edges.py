@@ -115,7 +115,8 @@ def test_crack() -> None:
 @pytest.mark.parametrize("method", ["closed_form", "quadrature"])
 def test_azimuth(method: str) -> None:
     """Bins of the azimuth share the total evenly; a sector times a polar range factorises; mixed cuts meet 1e-6."""
-    sector = {"name": "phi", "observables": ["phi(mu-)"], "bins": [{"edges": [-3.0, -1.0, 0.0, 0.5, 3.0]}], "per": "bin"}
+    sector: dict[str, Any] = {"name": "phi", "observables": ["phi(mu-)"], "per": "bin"}
+    sector["bins"] = [{"edges": [-3.0, -1.0, 0.0, 0.5, 3.0]}]
     plane = {
         "name": "plane",
         "observables": ["phi(mu-)", "cos_theta(mu-)"],

@@ -30,8 +30,8 @@ def predict(sqrt_s: float, method: str | None = None, **more: Any) -> barnwright
 def published_total(sqrt_s: float, muon: float = MUON, electron: float = ELECTRON) -> float:
     """σ = 4πα²/3s · β_μ/β_e · (1 + 2m_μ²/s)(1 + 2m_e²/s) in nb, in 50 digits.
 
-    Source: Peskin and Schroeder, An Introduction to Quantum Field Theory, eq. (5.13), with the electron's mass kept by the
-    same argument for its current; from memory.
+    Source: Peskin and Schroeder, An Introduction to Quantum Field Theory, eq. (5.13), with the electron's mass kept by
+    the same argument for its current; from memory.
     """
     mpmath.mp.dps = 50
     s, m, n = mpmath.mpf(sqrt_s) ** 2, mpmath.mpf(muon) ** 2, mpmath.mpf(electron) ** 2

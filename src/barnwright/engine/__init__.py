@@ -1,4 +1,4 @@
-"""The engine: from a request to a plan, from blocks to tallies, from sums to predictions. No input, no output, no clock."""
+"""The engine: from a request to a plan, from blocks to tallies, from sums to predictions; no input, output or clock."""
 
 from barnwright.engine.assemble import Answers, Origin, assemble
 from barnwright.engine.evaluate import evaluate

@@ -74,11 +74,12 @@ def _summed(values: Array, weights: Array) -> Array:
 
 def _azimuth_panels(rows: Rows, wanted: dict[Observable, Array]) -> tuple[Array, Array]:
     """Ends of the azimuth panels as shares of π, between −1 and 1."""
-    parts = []
-    for observable, levels in wanted.items():
-        if observable.azimuthal and _azimuth_alone(rows, observable):
-            for entry in range(observable.entries):
-                parts.append(crossings(lambda _, ends, o=observable, e=entry: _at(rows, o, e, ends, 0.3), 1, levels))
+    parts = [
+        crossings(lambda _, ends, o=observable, e=entry: _at(rows, o, e, ends, 0.3), 1, levels)
+        for observable, levels in wanted.items()
+        if observable.azimuthal and _azimuth_alone(rows, observable)
+        for entry in range(observable.entries)
+    ]
     quarter = Crossings(
         np.zeros(2, np.intp), np.array([0, 1]), np.array([0.5, 0.5]), np.zeros(2), np.zeros(2, dtype=bool)
     )

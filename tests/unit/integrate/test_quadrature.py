@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import partial
 
 import mpmath
 import numpy as np
@@ -27,8 +28,7 @@ def integral(density: Callable[[Ends], Array], levels: list[float], scales: Arra
         if levels
         else Crossings.none()
     )
-    function: Callable[[Integers | None, Ends], Array] = lambda _, ends: density(ends)
-    return integrate_panels(function, panels_between(found, 1), scales, 1)
+    return integrate_panels(lambda _, ends: density(ends), panels_between(found, 1), scales, 1)
 
 
 @pytest.mark.parametrize("order", [5, 10, 20, 40])
@@ -83,14 +83,14 @@ def test_what_is_not_finite_or_negative_is_counted_and_placed() -> None:
 
 def test_rows_keep_their_bits_in_company() -> None:
     """A row integrated among others has the bits it has alone."""
-    widths = np.array([1e-2, 1e-6, 0.3])
-    function = lambda row, ends: (
-        1
-        / (widths[:, None] if row is None else widths[row][:, None])
-        / (1 + ends.one_minus / (widths[:, None] if row is None else widths[row][:, None]))
-    )
+    widths = np.array([[1e-2], [1e-6], [0.3]])
+
+    def peaks(chosen: Array, row: Integers | None, ends: Ends) -> Array:
+        width = chosen if row is None else chosen[row]
+        return 1 / (width + ends.one_minus)
+
     panels = panels_between(Crossings.none(), 1)
-    together = integrate_panels(function, panels, FLAT, 3).value
+    together = integrate_panels(partial(peaks, widths), panels, FLAT, 3).value
     for k in range(3):
-        alone = integrate_panels(lambda row, ends, w=widths[k]: 1 / w / (1 + ends.one_minus / w), panels, FLAT, 1).value
+        alone = integrate_panels(partial(peaks, widths[k : k + 1]), panels, FLAT, 1).value
         assert np.array_equal(together[k], alone[0])

@@ -5,11 +5,10 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
-from barnwright.engine.resolve.findings import Findings
-from barnwright.engine.resolve.legs import beam_code
-
 from barnwright.beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
 from barnwright.documents import ColliderBeams, DecayBeams, FixedTargetBeams
+from barnwright.engine.resolve.findings import Findings
+from barnwright.engine.resolve.legs import beam_code
 from barnwright.reaction import Reaction
 
 LARGEST = 1e20

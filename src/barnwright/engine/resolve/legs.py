@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from barnwright.engine.resolve.findings import Findings
-
 from barnwright.errors import nearest
 from barnwright.reaction import Reaction
 

@@ -6,9 +6,9 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from pydantic import ValidationError
-from barnwright.engine.resolve.findings import Findings
 
 from barnwright.documents import violations_of
+from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.setting import ParameterValue
 from barnwright.errors import Violation, nearest
 from barnwright.particles import find

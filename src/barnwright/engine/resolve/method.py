@@ -6,10 +6,9 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Literal
 
+from barnwright.documents import Request
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.resolve.masses import Inputs
-
-from barnwright.documents import Request
 from barnwright.process import Process
 
 

@@ -5,9 +5,8 @@ from __future__ import annotations
 import math
 from functools import lru_cache
 
-from barnwright.engine.resolve.findings import Findings
-
 from barnwright.documents import AsymmetryRequest, Bins, HistogramRequest, Request
+from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout
 from barnwright.observables import Cut, Observable, ObservableError, compile_observable, edges_of
 from barnwright.reaction import Reaction

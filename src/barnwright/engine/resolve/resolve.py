@@ -5,6 +5,9 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping, Sequence
 from typing import Any, NamedTuple, Protocol
 
+from barnwright.beams import BeamSettings
+from barnwright.documents import Request
+from barnwright.engine.plan import Group, Note, Plan, ProcessSource
 from barnwright.engine.resolve.beams import BeamContext, resolve_beams
 from barnwright.engine.resolve.digest import plan_digest
 from barnwright.engine.resolve.findings import Findings
@@ -16,14 +19,11 @@ from barnwright.engine.resolve.questions import resolve_cuts, resolve_layout
 from barnwright.engine.resolve.scan import Part, parts_of, scan_shape
 from barnwright.engine.resolve.scope import check_scope
 from barnwright.engine.resolve.ties import check_ties
-
-from barnwright.beams import BeamSettings
-from barnwright.documents import Request
-from barnwright.engine.plan import Group, Note, Plan, ProcessSource
 from barnwright.engine.setting import Layout, Setting
 from barnwright.errors import RequestError, Violation, show
 from barnwright.process import Process, facts_of
 from barnwright.reaction import Reaction
+from barnwright.units import HBARC2
 
 
 class Identity(Protocol):
@@ -93,7 +93,7 @@ def resolve(request: Request, lookup: Lookup, over: Mapping[str, Sequence[Any]] 
 
 def provided_of(process: Process) -> dict[str, Any]:
     """What a prediction repeats of its process."""
-    constants = {"hbar_c_squared": HBAR_C_SQUARED}
+    constants = {"hbar_c_squared": HBARC2}
     return {"order": process.order, "scheme": None, "constants": constants}
 
 
@@ -101,7 +101,7 @@ def sources_of(process: Process) -> dict[str, str]:
     """The sources of parameters' defaults, and of the constants."""
     return {
         **{fact.name: fact.source for fact in facts_of(process.parameters)},
-        "hbar_c_squared": "CODATA through scipy.constants; GeV² mb",
+        "hbar_c_squared": "exact in the SI, through scipy.constants",
     }
 
 

@@ -2,9 +2,8 @@
 
 from __future__ import annotations
 
-from barnwright.engine.resolve.findings import Findings
-
 from barnwright.documents import Request
+from barnwright.engine.resolve.findings import Findings
 from barnwright.errors import nearest
 from barnwright.process import Process
 from barnwright.units import AREA_UNITS

@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-from barnwright.engine.resolve.findings import Findings
-
 from barnwright.beams import collide
 from barnwright.engine.edges import lab_is_cm
+from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.setting import Layout, Setting
 from barnwright.observables import tied_selections
 
