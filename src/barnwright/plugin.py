@@ -2,7 +2,8 @@
 
     from barnwright.plugin import Event, Parameters, Process, SquaredAmplitude, parameter
 
-These names are the contract of the entry-point group ``barnwright.processes.v1``: they stay, and grow by fields with defaults.
+These names are the contract of the entry-point group ``barnwright.processes.v1``: they stay, and grow by fields with
+defaults.
 """
 
 from __future__ import annotations

@@ -8,7 +8,7 @@ from typing import Any
 
 from numpy.typing import ArrayLike, NDArray
 
-from ..event import Point
+from barnwright.event import Point
 
 Cumulative = Callable[[NDArray[Any], Point, Any], ArrayLike]
 
@@ -20,8 +20,8 @@ class ClosedForm:
     Attributes
     ----------
     cumulative : function ``(x, point, parameters)``
-        x has the shape (point, edge) and broadcasts against the arrays of the point, (point, 1); so does the answer. Where
-        the integral starts is free. +z is the direction of beam a.
+        x has the shape (point, edge) and broadcasts against the arrays of the point, (point, 1); so does the answer.
+        Where the integral starts is free. +z is the direction of beam a.
     observable : str
         What x is, as text of the observable language.
     massless : particles or legs

@@ -2,7 +2,8 @@
 
 Rules of this file
 ------------------
-- |M|² in GeV^(2(4 − N)), N the number of all legs; averaged over the physical initial states, summed over the final ones.
+- |M|² in GeV^(2(4 − N)), N the number of all legs; averaged over the physical initial states, summed over the final
+  ones.
 - Factors for identical particles belong to the core, not to a law.
 - A law takes masses from ``event.mass``, never from a table, and returns something that broadcasts to ``event.shape``.
 """
@@ -17,10 +18,12 @@ from typing import Any, ClassVar, Literal
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
-from ..event import Event
-from ..formula import Formula, compile_formula
-from ..particles import find
-from ..reaction import Reaction
+from barnwright.errors import RequestError, Violation, show
+from barnwright.event import Event
+from barnwright.formula import Formula, compile_formula
+from barnwright.particles import find
+from barnwright.reaction import Reaction
+
 from .parameters import Parameters
 
 Array = NDArray[np.float64]
@@ -47,7 +50,7 @@ class SquaredAmplitude:
     compiled: bool = False
 
     def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
-        """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``. Raises what the function raises."""
+        """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``; raises what the function raises."""
         return self.function(event, parameters)
 
 
@@ -78,7 +81,11 @@ class Expression:
         ------
         FormulaError
             With positions, for unknown names and anything else that is no formula.
+        RequestError
+            When it is summed, and the table does not know the spin of an incoming particle.
         """
+        if self.spin_colour == "summed":
+            initial_states(reaction)
         return compile_formula(self.squared_amplitude, reaction, parameter_names)
 
     def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
@@ -92,5 +99,19 @@ Law = SquaredAmplitude | Expression
 
 
 def initial_states(reaction: Reaction) -> int:
-    """How many spin and colour states the incoming particles have together: neutrinos one helicity, photons two."""
-    return prod(particle.spin_states * particle.colour for particle in map(find, reaction.incoming))
+    """How many spin and colour states the incoming particles have together: neutrinos one helicity, photons two.
+
+    Raises
+    ------
+    RequestError
+        For a particle whose spin the table does not know (a nucleus).
+    """
+    return prod(_states(name) for name in reaction.incoming)
+
+
+def _states(name: str) -> int:
+    particle = find(name)
+    if particle.spin_states is None:
+        expected = f"'averaged', since the particle table does not know the spin of {name}"
+        raise RequestError([Violation("formula.spin_colour", show("summed"), expected, "averaged")])
+    return particle.spin_states * particle.colour

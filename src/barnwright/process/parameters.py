@@ -16,7 +16,7 @@ from pydantic import BaseModel, ConfigDict, Field, create_model
 from pydantic.fields import FieldInfo
 from pydantic_core import PydanticUndefined
 
-from ..errors import RequestError, Violation, show
+from barnwright.errors import RequestError, Violation, show
 
 ParameterValue = float | int | bool | str
 
@@ -24,7 +24,7 @@ _KINDS: dict[Any, Literal["float", "int", "bool"]] = {float: "float", int: "int"
 
 
 class Parameters(BaseModel):
-    """The base of a process's parameters: frozen, no unknown names, finite numbers; a process without any uses it as it is."""
+    """The base of a process's parameters: frozen, no unknown names, finite numbers; as it is, a process without any."""
 
     model_config = ConfigDict(
         frozen=True, extra="forbid", strict=True, allow_inf_nan=False, validate_default=True, protected_namespaces=()
@@ -48,7 +48,7 @@ def parameter(default: Any = ..., *, unit: str = "", meaning: str = "", source: 
 
 @dataclass(frozen=True, slots=True)
 class ParameterFacts:
-    """What a user needs to know of one parameter; ``choices`` are the words of a ``word``, ``default`` None when required."""
+    """What a user needs to know of a parameter: ``choices`` are the words of a ``word``, ``default`` None when required."""
 
     name: str
     type: Literal["float", "int", "bool", "word"]

@@ -1,4 +1,4 @@
-"""The process: what goes in and out, its laws, and everything a user must know to trust them. Composition, no inheritance."""
+"""The process: what goes in and out, its laws, and what a user must know to trust them. Composition, no inheritance."""
 
 from __future__ import annotations
 
@@ -6,8 +6,9 @@ from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 from typing import Any
 
-from ..peaks import Peak
-from ..reaction import Reaction
+from barnwright.peaks import Peak
+from barnwright.reaction import Reaction
+
 from .claims import Claims
 from .closed_form import ClosedForm
 from .declaration import checked_reaction
@@ -93,7 +94,7 @@ class Process:
         return codes_of(self.legs, leg)
 
     def mass_of(self, code: int) -> float | str | None:
-        """The declared mass of a leg in GeV, the name of the parameter that is its mass, or None: the particle table's."""
+        """The declared mass of a leg in GeV, the name of the parameter that is its mass, or None: see the particle table."""
         for leg, mass in self.masses.items():
             if code in self.codes_of(leg):
                 return mass

@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-from ..particles import find
-from ..reaction import Reaction
+from barnwright.particles import find
+from barnwright.reaction import Reaction
 
 BEAMS = {"beam_a": -1, "beam_b": -2}
 
 
 def codes_of(reaction: Reaction, leg: str | int) -> tuple[int, ...]:
-    """The codes of a leg (``beam_a`` −1, ``beam_b`` −2, a number) or of all legs that are this particle or its antiparticle.
+    """The codes of a leg (``beam_a`` −1, ``beam_b`` −2, a number), or of all that are this particle or its antiparticle.
 
     Raises
     ------

@@ -1,11 +1,12 @@
 """qed/compton: gamma e- -> gamma e-, the electron's mass exact, from the Thomson limit to any energy.
 
-Source: O. Klein, Y. Nishina, Z. Phys. 52 (1929) 853; |M|² in the invariant form of Peskin and Schroeder (1995), eq. 5.87.
+Source: O. Klein, Y. Nishina, Z. Phys. 52 (1929) 853; |M|² in the invariant form of Peskin and Schroeder (1995),
+eq. 5.87.
 
 Rules of this file
 ------------------
-- a = p·k and b = p·k' (p the electron before, k and k' the photons); a − b = k·k' holds exactly, so 1/a − 1/b is taken as
-  −k·k'/ab and never as a difference.
+- a = p·k and b = p·k' (p the electron before, k and k' the photons); a − b = k·k' holds exactly, so 1/a − 1/b is
+  taken as −k·k'/ab and never as a difference.
 - In the cm, with v = 1 − cos θ: y = b/a = 1 − z, z = v (s − m²)/2s, w = v m²/s, and
   dσ/dv = (πα²/s) [y + 1/y − 2w/y + w²/y²]. s − m² is 2√s p; y is summed from positive terms, since at high energies the
   backward photons live where y is tiny.

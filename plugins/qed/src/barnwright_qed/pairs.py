@@ -1,7 +1,7 @@
 """e- e+ into a pair of heavier leptons through one photon, the masses of both kinds exact.
 
-Source: M. Peskin, D. Schroeder, An Introduction to Quantum Field Theory (1995), section 5.1, with the traces kept to all
-orders in both masses. With E = √s/2, momenta p before and q after, and c = cos θ between e- and l- in the cm,
+Source: M. Peskin, D. Schroeder, An Introduction to Quantum Field Theory (1995), section 5.1, with the traces kept to
+all orders in both masses. With E = √s/2, momenta p before and q after, and c = cos θ between e- and l- in the cm,
 
     |M|² = e⁴ [1 + 4(m² + M²)/s + 16 p²q²c²/s²],   dσ/dc = |M|² q/(32π s p).
 """
