@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal, get_args
 
-from .errors import nearest
+from barnwright.errors import nearest
 
 Shape = Literal["resonance", "power", "logarithm", "soft", "collinear"]
 SHAPES: tuple[str, ...] = get_args(Shape)

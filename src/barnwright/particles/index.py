@@ -8,7 +8,8 @@ from decimal import Decimal
 from functools import lru_cache
 from typing import TYPE_CHECKING
 
-from ..errors import BarnwrightError, show
+from barnwright.errors import BarnwrightError, show
+
 from .data import ParticleData
 from .nuclear_mass import bare_mass
 from .quantum_numbers import baryon_number, colour, lepton_numbers, spin_states

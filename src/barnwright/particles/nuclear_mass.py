@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from math import pow  # noqa: A004 (a float, where ** may be complex)
+import math
 
 
 def bare_mass(atomic_mass: float, protons: int, electron_mass: float) -> float:
@@ -22,5 +22,5 @@ def bare_mass(atomic_mass: float, protons: int, electron_mass: float) -> float:
     B, the binding energy of all electrons, is 14.4381 Z^2.39 + 1.55468e-6 Z^5.35 eV: D. Lunney, J. M. Pearson and
     C. Thibault, Rev. Mod. Phys. 75 (2003) 1021, eq. (A4).
     """
-    binding = 14.4381 * pow(protons, 2.39) + 1.55468e-6 * pow(protons, 5.35)
+    binding = 14.4381 * math.pow(protons, 2.39) + 1.55468e-6 * math.pow(protons, 5.35)
     return atomic_mass - protons * electron_mass + binding * 1e-6

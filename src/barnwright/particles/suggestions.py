@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from typing import TYPE_CHECKING
 
-from ..errors import nearest
+from barnwright.errors import nearest
 
 if TYPE_CHECKING:
     from collections.abc import Sequence

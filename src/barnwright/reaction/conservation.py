@@ -5,10 +5,10 @@ from __future__ import annotations
 from collections.abc import Callable
 from typing import TYPE_CHECKING
 
-from ..particles import find
+from barnwright.particles import find
 
 if TYPE_CHECKING:
-    from ..particles import ParticleData
+    from barnwright.particles import ParticleData
 
 
 def _lepton_thirds(family: int) -> Callable[[ParticleData], int]:

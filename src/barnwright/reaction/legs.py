@@ -5,8 +5,8 @@ from __future__ import annotations
 from functools import lru_cache
 from typing import TYPE_CHECKING
 
-from ..errors import BarnwrightError, Violation, nearest, show
-from ..particles import UnknownParticleError, find
+from barnwright.errors import BarnwrightError, Violation, nearest, show
+from barnwright.particles import UnknownParticleError, find
 
 if TYPE_CHECKING:
     from .reaction import Reaction

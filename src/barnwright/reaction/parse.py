@@ -5,8 +5,9 @@ from __future__ import annotations
 import re
 from functools import lru_cache
 
-from ..errors import BarnwrightError, Violation, show
-from ..particles import UnknownParticleError, find
+from barnwright.errors import BarnwrightError, Violation, show
+from barnwright.particles import UnknownParticleError, find
+
 from .reaction import ANYTHING, Reaction
 
 MAX_INCOMING = 2

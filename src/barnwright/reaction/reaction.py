@@ -5,7 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 from math import factorial
 
-from ..errors import show
+from barnwright.errors import show
+
 from .conservation import unbalanced
 from .legs import LegError, LegKey, code_of
 
