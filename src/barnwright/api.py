@@ -16,11 +16,11 @@ from barnwright.documents.formats import read_json, read_toml
 from barnwright.errors import RequestError, Violation, nearest, show
 
 if TYPE_CHECKING:
+    from barnwright.analysis import Sweep
     from barnwright.client import AsyncClient, Client
     from barnwright.documents import Prediction
     from barnwright.documents.description import ProcessDescription, ProcessSummary
     from barnwright.process import Process
-    from barnwright.analysis import Sweep
 
 __all__ = ["connect", "connect_async", "describe", "predict", "processes", "scan"]
 
@@ -48,8 +48,8 @@ def scan(request: RequestLike | None = None, /, *, over: Mapping[str, Sequence[A
     """Calculate a prediction at every value of a request's key, or on the grid of several, as one plan.
 
     ``over`` gives for each dotted key (``"beams.sqrt_s"``, ``"parameters.z_mass"``) its values in GeV, rad or none.
-    The result has ``values`` and ``errors``, arrays of the totals of shape (point,), in the request's unit;
-    ``sweep[i]`` is made into a Prediction when asked for. Raises what ``predict`` raises.
+    The result has ``values`` and ``errors``, arrays of the totals with one axis a key, in the request's unit;
+    ``sweep[i]`` is made into a Prediction when asked for, the first key slowest. Raises what ``predict`` raises.
     """
     from barnwright.analysis import scan as calculate
 
@@ -58,7 +58,7 @@ def scan(request: RequestLike | None = None, /, *, over: Mapping[str, Sequence[A
 
 
 def processes() -> list[ProcessSummary]:
-    """Every process that is installed, sorted by name, the broken ones with the cause. Imports no plugin."""
+    """Every process that is installed, sorted by name, the broken ones with the cause."""
     from barnwright.run.describe import summaries
 
     return summaries()

@@ -27,8 +27,15 @@ app = typer.Typer(
     pretty_exceptions_enable=False,
     context_settings={"help_option_names": ["-h", "--help"], "max_content_width": 100},
 )
-for command in (predict, scan, processes, describe, serve):
-    app.command()(command)
+COMMANDS = {
+    predict: "One request, one prediction.",
+    scan: "One request at many values of its keys.",
+    processes: "What is installed.",
+    describe: "One process in full, and a request to copy.",
+    serve: "Answer requests over gRPC.",
+}
+for command, short_help in COMMANDS.items():
+    app.command(short_help=short_help)(command)
 
 
 def _show_version(wanted: bool) -> None:

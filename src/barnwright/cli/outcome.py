@@ -14,9 +14,11 @@ A traceback is never shown; BARNWRIGHT_TRACEBACK=1 in the environment lets one t
 from __future__ import annotations
 
 import os
+import signal
 import sys
 from collections.abc import Callable
 from enum import IntEnum
+from types import FrameType
 
 import typer
 
@@ -35,20 +37,42 @@ class ExitCode(IntEnum):
 
 def run(action: Callable[[], ExitCode]) -> None:
     """Run one command's action and end with its exit code; errors are printed, one line per violation."""
+    interrupts = Interrupts()
     try:
-        code = action()
-        sys.stdout.flush()
+        with interrupts:
+            code = action()
+            sys.stdout.flush()
     except typer.Exit:
         raise
-    except KeyboardInterrupt:
-        code = _say("interrupted; nothing was written", ExitCode.INTERRUPTED)
+    except KeyboardInterrupt as interrupt:
+        code = _say(str(interrupt) or "interrupted", ExitCode.INTERRUPTED)
     except BrokenPipeError:
         code = _forget_standard_output()
     except Exception as error:
         if os.environ.get("BARNWRIGHT_TRACEBACK"):
             raise
         code = explain(error)
-    raise typer.Exit(int(code))
+    raise typer.Exit(int(ExitCode.INTERRUPTED if interrupts.happened else code))
+
+
+class Interrupts:
+    """Remembers that Ctrl-C was pressed, also where a calculation then ends in its own way with what it had."""
+
+    def __init__(self) -> None:
+        self.happened = False
+
+    def __enter__(self) -> None:
+        self._before = signal.getsignal(signal.SIGINT)
+        if self._before is signal.default_int_handler:
+            signal.signal(signal.SIGINT, self._note)
+
+    def __exit__(self, *_: object) -> None:
+        if self._before is signal.default_int_handler:
+            signal.signal(signal.SIGINT, self._before)
+
+    def _note(self, number: int, frame: FrameType | None) -> None:
+        self.happened = True
+        signal.default_int_handler(number, frame)
 
 
 def explain(error: Exception) -> ExitCode:

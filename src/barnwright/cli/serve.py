@@ -14,9 +14,13 @@ Address = Annotated[
 Insecure = Annotated[
     bool, typer.Option("--insecure", help="Listen on other than loopback addresses without encryption.")
 ]
+Workers = Annotated[
+    int | None,
+    typer.Option("--workers", metavar="N", min=1, help="Processes that calculate; default one for each processor."),
+]
 
 
-def serve(address: Address = "127.0.0.1:50551", insecure: Insecure = False) -> None:
+def serve(address: Address = "127.0.0.1:50551", insecure: Insecure = False, workers: Workers = None) -> None:
     """Answer requests over gRPC until SIGTERM or Ctrl-C; says when it is ready.
 
     \b
@@ -24,10 +28,10 @@ def serve(address: Address = "127.0.0.1:50551", insecure: Insecure = False) -> N
       barnwright serve
       barnwright serve --address 127.0.0.1:0
     """
-    run(lambda: _serve(address, insecure))
+    run(lambda: _serve(address, insecure, workers))
 
 
-def _serve(address: str, insecure: bool) -> ExitCode:
+def _serve(address: str, insecure: bool, workers: int | None) -> ExitCode:
     from barnwright.service import serve as start
 
-    return ExitCode(start(address, insecure=insecure))
+    return ExitCode(start(address, insecure=insecure, workers=workers))
