@@ -73,14 +73,16 @@ def _find(name: str) -> ParticleData | None:
     known = _by_name()
     row = known.get(name) or known.get(_OTHER_SPELLINGS.get(name, name))
     if row is not None:
-        return _data(row)
+        return _data(row, particles())
     nucleus = _nucleus(name)
-    return None if nucleus is None else _with_bare_mass(_data(nucleus), nucleus)
+    return None if nucleus is None else _with_bare_mass(_data(nucleus, nuclei()), nucleus)
 
 
 @lru_cache(maxsize=1)
 def _by_name() -> dict[str, Particle]:
-    return {row.name: row for row in particles()}
+    """Rows by name; where two rows share a name, as psi(4160) does, the one with a mass."""
+    rows = {row.name: row for row in particles()}
+    return rows | {row.name: row for row in particles() if row.mass is not None}
 
 
 def _nucleus(name: str) -> Particle | None:
@@ -103,9 +105,10 @@ def _gev(mev: float) -> float:
     return float(Decimal(repr(mev)).scaleb(-3))
 
 
-def _data(row: Particle) -> ParticleData:
-    """The row in the units of the program: the table is in MeV and thirds of a charge."""
+def _data(row: Particle, rows: tuple[Particle, ...]) -> ParticleData:
+    """The row in the units of the program; its antiparticle is the row with the opposite number, where there is one."""
     pdg_id = row.pdgid
+    antiparticle = next((other.name for other in rows if other.pdgid == -pdg_id), row.name)
     return ParticleData(
         name=row.name,
         pdg_id=int(pdg_id),
@@ -117,7 +120,7 @@ def _data(row: Particle) -> ParticleData:
         colour=colour(pdg_id),
         baryon_number=baryon_number(pdg_id),
         lepton_numbers=lepton_numbers(pdg_id),
-        antiparticle=row.invert().name,
+        antiparticle=antiparticle,
         latex=row.latex_name,
-        is_self_conjugate=row.is_self_conjugate,
+        is_self_conjugate=antiparticle == row.name,
     )

@@ -97,7 +97,8 @@ def _not_one(reaction: Reaction, name: str, legs: tuple[int, ...]) -> LegError:
         pairs = " or ".join(f'("{name}", {k})' for k in range(1, len(legs) + 1))
         return LegError(show(name), f"one particle; {len(legs)} {name} come out, so take {pairs}")
     beams = dict(zip(reaction.incoming, beams_of(reaction), strict=True))
-    near = beams.get(name) or nearest(name, (*reaction.outgoing, *beams.values()))
+    outgoing = () if reaction.inclusive else reaction.outgoing
+    near = beams.get(name) or nearest(name, (*outgoing, *beams.values()))
     return LegError(show(name), _candidates(reaction), near)
 
 
