@@ -71,6 +71,12 @@ class Violation(_message.Message):
     position: int
     def __init__(self, field: _Optional[str] = ..., value: _Optional[str] = ..., expected: _Optional[str] = ..., nearest: _Optional[str] = ..., position: _Optional[int] = ...) -> None: ...
 
+class Violations(_message.Message):
+    __slots__ = ("violations",)
+    VIOLATIONS_FIELD_NUMBER: _ClassVar[int]
+    violations: _containers.RepeatedCompositeFieldContainer[Violation]
+    def __init__(self, violations: _Optional[_Iterable[_Union[Violation, _Mapping]]] = ...) -> None: ...
+
 class PredictRequest(_message.Message):
     __slots__ = ("request",)
     REQUEST_FIELD_NUMBER: _ClassVar[int]

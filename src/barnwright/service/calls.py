@@ -1,0 +1,140 @@
+"""The calls of the service, each a generator of what it waits for."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Generator, Mapping
+from time import perf_counter
+from typing import Any
+
+from google.protobuf.message import Message
+
+from barnwright.engine import Answers, Plan, assemble
+from barnwright.engine.calculate import calculate
+from barnwright.errors import RequestError, Violation, show
+from barnwright.integrate.ledger import Ledger
+from barnwright.run.drive import Pace
+from barnwright.run.local import origin, run_record
+from barnwright.service.steps import Blocks, Credit, Light, Step, Steps
+from barnwright.wire import decode, encode, parse
+from barnwright.wire.v1 import service_pb2 as wire
+
+EXECUTOR = "server"
+SLICE = 16
+"""Predictions in one message of a scan."""
+
+Reply = Callable[[bytes, bool], None]
+Call = Callable[[bytes, Reply], Steps]
+
+
+def list_processes(message: bytes, reply: Reply) -> Steps:
+    """Every process."""
+    parse(message, wire.ListProcessesRequest)
+    reply((yield Light("list", ())), True)
+
+
+def get_process(message: bytes, reply: Reply) -> Steps:
+    """One process in full."""
+    asked = parse(message, wire.GetProcessRequest)
+    _require(asked, "name", "the name of a process, plugin/name")
+    reply((yield Light("describe", (asked.name,), asked.name)), True)
+
+
+def validate_request(message: bytes, reply: Reply) -> Steps:
+    """What a request would mean and cost, or what is wrong with it."""
+    try:
+        plan = yield from _plan(_document(parse(message, wire.ValidateRequestRequest)), None)
+        cost = {"points": plan.points, "components": _components(plan), "blocks": len(plan.round((), 0))}
+        answer: Mapping[str, Any] = {"request": plan.groups[0].request.canonical(), "cost": cost}
+    except RequestError as error:
+        answer = {"violations": [_fields(violation) for violation in error.violations]}
+    reply(encode(answer, wire.ValidateRequestResponse).SerializeToString(), True)
+
+
+def predict(message: bytes, reply: Reply) -> Steps:
+    """One prediction."""
+    answers = yield from _answers(_document(parse(message, wire.PredictRequest)), None)
+    answer = {"prediction": answers.prediction(0).model_dump(mode="json")}
+    reply(encode(answer, wire.PredictResponse).SerializeToString(), True)
+
+
+def scan(message: bytes, reply: Reply) -> Steps:
+    """A prediction at every point, some in each message."""
+    asked = parse(message, wire.ScanRequest)
+    over = {axis["key"]: axis["values"] for axis in _axes(asked)}
+    answers = yield from _answers(_document(asked), over)
+    points = answers.plan.points
+    for first in range(0, points, SLICE):
+        stop = min(first + SLICE, points)
+        some = [answers.prediction(point).model_dump(mode="json") for point in range(first, stop)]
+        yield Credit()
+        answer = {"first": first, "points": points, "predictions": some}
+        reply(encode(answer, wire.ScanResponse).SerializeToString(), stop == points)
+
+
+CALLS: Mapping[str, Call] = {
+    "ListProcesses": list_processes,
+    "GetProcess": get_process,
+    "ValidateRequest": validate_request,
+    "Predict": predict,
+    "Scan": scan,
+}
+
+
+def _plan(document: Mapping[str, Any], over: Mapping[str, Any] | None) -> Generator[Step, Any, Plan]:
+    """Resolve a request where plugins' code may run. The plan comes with every default filled in."""
+    plan: Plan = yield Light("plan", (document, over), _process_of(document))
+    return plan
+
+
+def _answers(document: Mapping[str, Any], over: Mapping[str, Any] | None) -> Generator[Step, Any, Answers]:
+    """Resolve, calculate, assemble."""
+    started = perf_counter()
+    plan = yield from _plan(document, over)
+    ledger, stage = Ledger(plan.digest), plan.stage()
+    pace = Pace(perf_counter, plan.groups[0].request.accuracy.max_seconds)
+    calculation = calculate(plan, ledger)
+    while True:
+        try:
+            wanted = next(calculation)
+        except StopIteration as end:
+            verdict = end.value
+            return assemble(plan, verdict.settled, verdict.status, origin(), run_record(started, EXECUTOR))
+        yield Blocks(wanted, stage, ledger, pace)
+
+
+def _document(asked: Message) -> dict[str, Any]:
+    _require(asked, "request", "a request")
+    document: dict[str, Any] = decode(asked)["request"]
+    return document
+
+
+def _axes(asked: wire.ScanRequest) -> list[dict[str, Any]]:
+    """The keys and values of a scan, each key once."""
+    axes: list[dict[str, Any]] = decode(asked)["over"]
+    found = [] if axes else [Violation("over", "nothing", "at least one key with its values")]
+    for number, axis in enumerate(axes):
+        if not axis["key"]:
+            found.append(Violation(f"over[{number}].key", "nothing", "a key of the request, such as beams.sqrt_s"))
+        elif axis["key"] in [earlier["key"] for earlier in axes[:number]]:
+            found.append(Violation(f"over[{number}].key", show(axis["key"]), "a key that is not scanned already"))
+    if found:
+        raise RequestError(found)
+    return axes
+
+
+def _require(message: Message, field: str, expected: str) -> None:
+    if not message.HasField(field):
+        raise RequestError([Violation(field, "nothing", expected)])
+
+
+def _process_of(document: Mapping[str, Any]) -> str:
+    """Whom to blame if resolving hangs."""
+    return str(document.get("process") or ", ".join(document.get("processes", ())) or "the formula")
+
+
+def _components(plan: Plan) -> int:
+    return plan.layout.components * len(plan.groups[0].settings)
+
+
+def _fields(violation: Violation) -> dict[str, Any]:
+    return {name: getattr(violation, name) for name in ("field", "value", "expected", "nearest", "position")}
