@@ -90,7 +90,7 @@ def judge(plan: PlanProtocol, ledger: Ledger) -> Continue | Verdict:
         if plan.ladder is None:
             return Verdict("converged", "one round answers", *last)
         past.append(excess(found, plan.ladder.target))
-        if (reason := _reached(plan.ladder.target, past)) is not None:
+        if (reason := reached(plan.ladder.target, past)) is not None:
             return Verdict("converged", reason, *last)
     return _after_the_last(plan, ledger, past, last)
 
@@ -107,6 +107,14 @@ def excess(found: Estimate, target: Target) -> float:
     return float(max(ratios))
 
 
+def reached(target: Target, past: list[float]) -> str | None:
+    """Why the last of some rounds may be reported, given the excess of each; None where it may not."""
+    if target.rounds is not None:
+        return f"{target.rounds} rounds were asked for" if len(past) == target.rounds else None
+    *before, own = past
+    return f"the error is {own:.2g} times the target" if own <= 1 and _foreseen(before) else None
+
+
 def _suspicion(settled: Settled) -> str:
     count = settled.counters.get(NON_FINITE, 0)
     return f"the integrand was not finite at {count} points" if count else "a sum is not finite"
@@ -116,15 +124,6 @@ def _ratio(error: Array, allowed: Array) -> Array:
     with np.errstate(divide="ignore", invalid="ignore"):
         ratio = np.where(error == 0, 0.0, error / allowed)
     return np.where(np.isnan(ratio), inf, ratio)
-
-
-def _reached(target: Target, past: list[float]) -> str | None:
-    """Why the last of some rounds may be reported; None where it may not."""
-    if target.rounds is not None:
-        return f"{target.rounds} rounds were asked for" if len(past) == target.rounds else None
-    *before, own = past
-    reached = own <= 1 and _foreseen(before)
-    return f"the error is {own:.2g} times the target" if reached else None
 
 
 def _foreseen(past: Iterable[float]) -> bool:
@@ -140,11 +139,11 @@ def _fits(ladder: Ladder, number: int) -> bool:
 
 
 def _limit_reason(ladder: Ladder, number: int, own: float) -> str:
-    reached = f"the error is {own:.3g} times the target"
+    far = f"the error is {own:.3g} times the target"
     if number > LAST_RUNG:
-        return f"{reached} after {number} rounds, the most that are taken"
+        return f"{far} after {number} rounds, the most that are taken"
     return (
-        f"{reached}; another round would make it {ladder.evaluations(number + 1)} evaluations, more than "
+        f"{far}; another round would make it {ladder.evaluations(number + 1)} evaluations, more than "
         f"max_evaluations = {ladder.target.max_evaluations}"
     )
 

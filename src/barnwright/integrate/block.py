@@ -80,7 +80,7 @@ class Block:
 class Strand:
     """A run of chunks that a round adds to one sum; the fields are those of `Block`."""
 
-    points: Range
+    points: Range = (0, 1)
     stratum: int = 0
     replicate: int = 0
     chunks: Range = (0, 1)
