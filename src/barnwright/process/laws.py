@@ -50,7 +50,7 @@ class SquaredAmplitude:
     compiled: bool = False
 
     def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
-        """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``; raises what the function raises."""
+        """|M|² in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``; raises what the function raises."""
         return self.function(event, parameters)
 
 

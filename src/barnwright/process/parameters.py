@@ -48,7 +48,7 @@ def parameter(default: Any = ..., *, unit: str = "", meaning: str = "", source: 
 
 @dataclass(frozen=True, slots=True)
 class ParameterFacts:
-    """What a user needs to know of a parameter: ``choices`` are the words of a ``word``, ``default`` None when required."""
+    """What a user must know of a parameter; ``choices`` are the words of a ``word``, ``default`` None when required."""
 
     name: str
     type: Literal["float", "int", "bool", "word"]

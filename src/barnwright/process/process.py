@@ -94,7 +94,7 @@ class Process:
         return codes_of(self.legs, leg)
 
     def mass_of(self, code: int) -> float | str | None:
-        """The declared mass of a leg in GeV, the name of the parameter that is its mass, or None: see the particle table."""
+        """The declared mass of a leg in GeV, or the parameter that is its mass; None: that of the particle table."""
         for leg, mass in self.masses.items():
             if code in self.codes_of(leg):
                 return mass

@@ -9,7 +9,7 @@ BEAMS = {"beam_a": -1, "beam_b": -2}
 
 
 def codes_of(reaction: Reaction, leg: str | int) -> tuple[int, ...]:
-    """The codes of a leg (``beam_a`` −1, ``beam_b`` −2, a number), or of all that are this particle or its antiparticle.
+    """The codes of a leg (``beam_a`` −1, ``beam_b`` −2, a number), or of all legs of a particle and its antiparticle.
 
     Raises
     ------

@@ -14,7 +14,7 @@ from barnwright.observables import ObservableError, compile_observable
 from barnwright.process.claims import Claims
 from barnwright.process.parameters import ParameterValue, facts_of
 from barnwright.process.species import codes_of, leg_choices
-from barnwright.reaction import Reaction
+from barnwright.reaction import LegError, Reaction
 
 if TYPE_CHECKING:
     from barnwright.process.process import Process
@@ -85,11 +85,13 @@ def _singular(process: Process, reaction: Reaction) -> Iterator[Violation]:
 
 
 def _claims(claims: Claims, reaction: Reaction) -> Iterator[Violation]:
-    for pair in claims.exchange:
-        for leg in pair:
-            yield from _leg("claims.exchange", leg, reaction)
-    for leg in claims.gauge_legs:
-        yield from _leg("claims.gauge_legs", leg, reaction)
+    named = [("claims.exchange", leg) for pair in claims.exchange for leg in pair]
+    named += [("claims.gauge_legs", leg) for leg in claims.gauge_legs]
+    for field, leg in named:
+        try:
+            reaction.leg(leg)
+        except LegError as error:
+            yield Violation(field, show(leg), error.expected, error.nearest)
 
 
 def _leg(field: str, leg: str | int, reaction: Reaction, also: tuple[str, ...] = ()) -> Iterator[Violation]:

@@ -48,15 +48,16 @@ class CheckPoints:
             )
         return cls(process, masses, np.asarray(low * (high / low) ** _SHARES))
 
-    def event(self, points: slice) -> Event:
-        """The events of some of the points, shape (point, 4)."""
-        two_body = TwoBody(self._collision(points), self.masses, 1 - COSINES, 1 + COSINES)
+    def event(self, points: slice, cosines: Array = COSINES) -> Event:
+        """The events of some of the points at cosines of the polar angle of shape (1, node) in the cm."""
+        two_body = TwoBody(self.collision(points), self.masses, 1 - cosines, 1 + cosines)
         return Event(self.process.legs, two_body)
 
     def point(self, points: slice) -> Point:
         """What a closed form sees of some of the points."""
-        return Point.of(self.process.legs, self._collision(points), self.masses)
+        return Point.of(self.process.legs, self.collision(points), self.masses)
 
-    def _collision(self, points: slice) -> Collision:
+    def collision(self, points: slice) -> Collision:
+        """The collisions of some of the points in their centre of mass, beam a along +z."""
         sqrt_s = self.sqrt_s[points, None]
         return Collision(sqrt_s, np.zeros_like(sqrt_s), np.ones_like(sqrt_s))
