@@ -8,12 +8,10 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from os import PathLike
-from pathlib import Path
-from typing import TYPE_CHECKING, Any, NoReturn
+from typing import TYPE_CHECKING, Any
 
 from barnwright.documents import Request
-from barnwright.documents.formats import read_json, read_toml
-from barnwright.errors import RequestError, Violation, nearest, show
+from barnwright.run.reading import read_request
 
 if TYPE_CHECKING:
     from barnwright.analysis import Sweep
@@ -89,31 +87,6 @@ def connect_async(address: str, **options: Any) -> AsyncClient:
     from barnwright.client import connect_async as open_client
 
     return open_client(address, **options)
-
-
-def read_request(path: str | PathLike[str]) -> dict[str, Any]:
-    """The fields of a request in a file whose name ends in .toml or .json, not yet checked.
-
-    Raises RequestError when there is no such file, or when it is not what its name says.
-    """
-    file = Path(path)
-    readers = {".toml": read_toml, ".json": read_json}
-    if file.suffix.lower() not in readers:
-        _refuse(file, "a dict, a Request, or the path of a file that ends in .toml or .json")
-    if not file.is_file():
-        siblings = [entry.name for entry in file.parent.glob("*") if entry.suffix.lower() in readers]
-        _refuse(file, "a file that exists", nearest(file.name, siblings))
-    try:
-        fields = readers[file.suffix.lower()](file.read_text(encoding="utf-8"))
-    except UnicodeDecodeError:
-        _refuse(file, "a text file in UTF-8")
-    if not isinstance(fields, dict):
-        _refuse(file, "a JSON object with the keys of a request")
-    return fields
-
-
-def _refuse(file: Path, expected: str, near: str | None = None) -> NoReturn:
-    raise RequestError([Violation("request", show(str(file)), expected, near)])
 
 
 def _request(request: RequestLike | None, fields: Mapping[str, Any]) -> tuple[Request, Process | None]:

@@ -18,7 +18,7 @@ from barnwright.run.useful_observables import useful_observables
 def summaries() -> list[ProcessSummary]:
     """Every installed process by name; one that cannot be loaded is listed with its cause."""
     known = catalogue()
-    return [_summary(entry.name, entry.distribution, entry.version) for entry in known.entries()]
+    return [summary(entry.name, entry.distribution, entry.version) for entry in known.entries()]
 
 
 def describe(name: str) -> ProcessDescription:
@@ -52,7 +52,8 @@ def describe(name: str) -> ProcessDescription:
     )
 
 
-def _summary(name: str, distribution: str, version: str) -> ProcessSummary:
+def summary(name: str, distribution: str, version: str) -> ProcessSummary:
+    """The short line of one installed process; where it cannot be loaded, with the cause."""
     try:
         loaded = catalogue().load(name)
     except PluginError as error:

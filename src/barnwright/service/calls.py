@@ -10,7 +10,7 @@ from google.protobuf.message import Message
 
 from barnwright.engine import Answers, Plan, assemble
 from barnwright.engine.calculate import calculate
-from barnwright.errors import RequestError, Violation, show
+from barnwright.errors import PluginError, RequestError, ServerError, Violation, show
 from barnwright.integrate.ledger import Ledger
 from barnwright.run.drive import Pace
 from barnwright.run.local import origin, run_record
@@ -29,7 +29,15 @@ Call = Callable[[bytes, Reply], Steps]
 def list_processes(message: bytes, reply: Reply) -> Steps:
     """Every process."""
     parse(message, wire.ListProcessesRequest)
-    reply((yield Light("list", ())), True)
+    lines = []
+    for name, distribution, version in (yield Light("names", ())):
+        try:
+            line = yield Light("summary", (name, distribution, version), name)
+        except (PluginError, ServerError) as error:  # it hangs, or takes its worker down: the others are listed
+            broken = error.cause if isinstance(error, PluginError) else str(error)
+            line = {"name": name, "distribution": distribution, "version": version, "broken": broken}
+        lines.append({"plugin": name.partition("/")[0], **line})
+    reply(encode({"processes": lines}, wire.ListProcessesResponse).SerializeToString(), True)
 
 
 def get_process(message: bytes, reply: Reply) -> Steps:

@@ -37,8 +37,15 @@ class Job:
 
     def advance(self, value: Any = None) -> None:
         """Resume the call with what it waited for, up to its next step that takes time, or its end."""
+        self._resume(lambda: self._steps.send(value))
+
+    def refuse(self, error: BarnwrightError) -> None:
+        """What it waited for ended with an error that the caller may see; the call may know better."""
+        self._resume(lambda: self._steps.throw(error))
+
+    def _resume(self, further: Callable[[], Step]) -> None:
         try:
-            self.step = self._steps.send(value)
+            self.step = further()
             while not self._begin(self.step):
                 self.step = self._steps.send(None)
         except StopIteration:
@@ -62,14 +69,10 @@ class Job:
         try:
             is_complete = self._queue is not None and self._queue.take(task, result)
         except BarnwrightError as error:
-            self._end(Failed(self.number, error))
+            self.refuse(error)
             return
         if is_complete:
             self.advance(result if isinstance(task.step, Light) else None)
-
-    def refuse(self, error: BarnwrightError) -> None:
-        """A task ended with an error that the caller may see."""
-        self._end(Failed(self.number, error))
 
     def fault(self, trace: str) -> None:
         """A task ended with an error that nobody foresaw."""
@@ -79,14 +82,14 @@ class Job:
         """A task was ended because it took too long."""
         what = f"working out {task.block.name}" if task.block else "loading and checking"
         cause = f"{what} took longer than {seconds:g} s, so the worker was ended: one of its functions hangs"
-        self._end(Failed(self.number, PluginError(task.plugin, task.process, cause)))
+        self.refuse(PluginError(task.plugin, task.process, cause))
 
     def lost(self, task: Task, limit: int) -> None:
         """The worker of a task was lost; another one tries, unless that happened too often."""
         self._deaths += 1
         if self._deaths >= limit or self._queue is None:
             message = f"{self._deaths} workers were lost while they worked on this request; it may be what ends them"
-            self._end(Failed(self.number, ServerError(message, "UNAVAILABLE")))
+            self.refuse(ServerError(message, "UNAVAILABLE"))
         elif isinstance(self._queue, RoundQueue):
             self._queue.give_back(task)
         else:

@@ -8,19 +8,24 @@ from typing import Any
 from barnwright.engine import Plan, Stage
 from barnwright.integrate.block import Block
 from barnwright.integrate.tally import Tally
-from barnwright.run.describe import describe, summaries
+from barnwright.registry import catalogue
+from barnwright.run.describe import describe, summary
 from barnwright.run.worker import evaluate_task, resolve_task
 from barnwright.service.shelf import Shelf
 from barnwright.wire import encode
-from barnwright.wire.v1.service_pb2 import GetProcessResponse, ListProcessesResponse
+from barnwright.wire.v1.service_pb2 import GetProcessResponse
 
 STAGES: Shelf[Stage] = Shelf()
 
 
-def list_task() -> bytes:
-    """The message that lists all processes."""
-    entries = [summary.model_dump(mode="json") for summary in summaries()]
-    return encode({"processes": entries}, ListProcessesResponse).SerializeToString()
+def names_task() -> list[tuple[str, str, str]]:
+    """Name, distribution and version of every installed process; imports none of them."""
+    return [(entry.name, entry.distribution, entry.version) for entry in catalogue().entries()]
+
+
+def summary_task(name: str, distribution: str, version: str) -> dict[str, Any]:
+    """The short line of a process, also of one that is broken."""
+    return summary(name, distribution, version).model_dump(mode="json")
 
 
 def describe_task(name: str) -> bytes:
@@ -39,7 +44,8 @@ def tally_task(block: Block, name: str, stage: Stage | None) -> Tally:
 
 
 TASKS: Mapping[str, Callable[..., Any]] = {
-    "list": list_task,
+    "names": names_task,
+    "summary": summary_task,
     "describe": describe_task,
     "plan": plan_task,
     "tally": tally_task,
