@@ -7,10 +7,10 @@ import tomllib
 from collections.abc import Sequence
 from typing import Any
 
-from barnwright import api
 from barnwright.documents import Request, merge
 from barnwright.documents.formats import read_text
 from barnwright.errors import RequestError, Violation, show
+from barnwright.run.reading import read_request as read_file
 
 
 def read_request(source: str, overrides: Sequence[str]) -> Request:
@@ -18,7 +18,7 @@ def read_request(source: str, overrides: Sequence[str]) -> Request:
 
     Raises RequestError with every finding.
     """
-    fields = read_text(sys.stdin.read()) if source == "-" else api.read_request(source)
+    fields = read_text(sys.stdin.read()) if source == "-" else read_file(source)
     for key, value in parse_overrides(overrides):
         fields = merge(fields, {key: value})
     return Request.model_validate(fields)
