@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import sys
+from io import StringIO
 
 from rich.console import Console, RenderableType
 
@@ -17,5 +18,12 @@ def write_line(text: str) -> None:
 
 def show_table(view: RenderableType) -> None:
     """A table on standard output: as wide as the terminal and in colour there, plain and wide elsewhere."""
-    width = None if sys.stdout.isatty() else PLAIN_WIDTH
-    Console(file=sys.stdout, width=width, highlight=False, markup=False, emoji=False).print(view)
+    if sys.stdout.isatty():
+        Console(highlight=False).print(view)
+        return
+    console = Console(file=StringIO(), width=PLAIN_WIDTH, color_system=None)
+    with console.capture() as captured:
+        console.print(view)
+    text = "".join(f"{line.rstrip()}\n" for line in captured.get().splitlines())
+    encoding = sys.stdout.encoding or "utf-8"
+    sys.stdout.write(text.encode(encoding, "replace").decode(encoding))

@@ -121,7 +121,8 @@ def bullets(title: str, entries: Iterable[str]) -> Group:
 
 def titled(title: str, columns: Iterable[str], *, numbers: bool = True) -> Table:
     """An empty table with a title; with ``numbers`` every column but the first is set flush right."""
-    table = Table(box=box.SIMPLE_HEAD, title=Text(title), title_justify="left", title_style="bold", pad_edge=False)
+    heading = Text(f"\n{title}") if title else None
+    table = Table(box=box.SIMPLE_HEAD, title=heading, title_justify="left", title_style="bold", pad_edge=False)
     for number, column in enumerate(columns):
         justify: Literal["left", "right"] = "right" if numbers and number > 0 else "left"
         table.add_column(Text(column), justify=justify, overflow="fold")
