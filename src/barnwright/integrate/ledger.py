@@ -65,6 +65,8 @@ class Ledger:
     round : Round or None
         The open one.
     stopped : "time_limit", "cancelled" or None
+    lacking : int
+        How many chunks of the open round have not come yet; `missing` says which.
     """
 
     def __init__(self, plan: str) -> None:
@@ -74,6 +76,7 @@ class Ledger:
         self.frozen: Frozen = ()
         self.round: Round | None = None
         self.stopped: StopReason | None = None
+        self.lacking = 0
         self._training_counters: Mapping[str, int] = {}
         self._training_worst: tuple[WorstPoint, ...] = ()
         self._accounts: dict[StrandKey, Account] = {}
@@ -126,6 +129,7 @@ class Ledger:
         self._accounts[key] = self._account(key).plus(tally)
         whole = chunks == self._strands[key].chunks
         self._seen[key, chunks] = tally if whole else tally.fingerprint()
+        self.lacking -= chunks[1] - chunks[0]
         return True
 
     def missing(self, wanted: Round) -> Round:
@@ -213,13 +217,13 @@ class Ledger:
         ledger.settled = [load_settled(settled) for settled in state["settled"]]
         ledger.trained = state["trained"]
         ledger.frozen = tuple(load_array(array) for array in state["frozen"])
-        if state["round"] is not None:
-            ledger._expect(load_round(state["round"]))
         ledger._training_counters = dict(state["training_counters"])
         ledger._training_worst = load_worst(state["training_worst"])
         ledger._accounts = {load_key(key): load_account(account) for key, account in state["accounts"]}
         ledger._seen = {(load_key(key), (start, stop)): mark for key, (start, stop), mark in state["seen"]}
         ledger._past = {(training, number, stage): {} for training, number, stage in state["past"]}
+        if state["round"] is not None:
+            ledger._expect(load_round(state["round"]))
         return ledger
 
     def _account(self, key: StrandKey) -> Account:
@@ -228,6 +232,7 @@ class Ledger:
     def _expect(self, wanted: Round) -> None:
         self._strands = {strand.key: strand for strand in wanted.strands}
         self.round = wanted
+        self.lacking = self.missing(wanted).chunks
 
     def _check_open(self, wanted: Round) -> None:
         if self.round is None or self.round.with_length(wanted.length) != wanted:

@@ -43,6 +43,7 @@ def test_partly_known_tally_is_dropped_and_the_rest_asked_for() -> None:
     assert ledger.add(tally(ROUND, (1, 2)))
     assert not ledger.add(tally(ROUND, (0, 2)))
     assert not ledger.add(tally(ROUND, (0, 4)))
+    assert ledger.lacking == Ledger.from_state(ledger.state()).lacking == 3
     assert [block.chunks for block in ledger.missing(ROUND)] == [(0, 1), (2, 4)]
     assert [block.chunks for block in ledger.missing(ROUND.with_length(1))] == [(0, 1), (2, 3), (3, 4)]
 
@@ -51,6 +52,7 @@ def test_rounds_extend_each_other() -> None:
     """The second round's sums hold the first one's chunks; the first one's stay as they were."""
     ledger = opened()
     ledger.add(tally(ROUND, (0, 4)))
+    assert ledger.lacking == 0
     first = ledger.close(ROUND)
     wanted = Round("stage", 1, (Strand(chunks=(4, 8)),))
     ledger.open(wanted)
