@@ -7,10 +7,13 @@ keyword fields beside a request are merged into it. The values are those of the 
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
+from importlib import import_module
 from os import PathLike
+from types import ModuleType
 from typing import TYPE_CHECKING, Any
 
 from barnwright.documents import Request
+from barnwright.errors import BarnwrightError
 from barnwright.run.reading import read_request
 
 if TYPE_CHECKING:
@@ -75,18 +78,26 @@ def describe(name: str) -> ProcessDescription:
 def connect(address: str, **options: Any) -> Client:
     """A client of a running server at "host:port" with the same face: predict, scan, processes, describe.
 
-    Raises ServerError when the server cannot be reached; needs the extra ``service``.
+    ``patience`` is how many seconds its first question waits for the server, ``timeout`` how many any may take.
+    Raises RequestError for what is no address, BarnwrightError without the extra ``service``.
     """
-    from barnwright.client import connect as open_client
-
-    return open_client(address, **options)
+    client: Client = _client_room().connect(address, **options)
+    return client
 
 
 def connect_async(address: str, **options: Any) -> AsyncClient:
     """The same client for asyncio: ``await client.predict(...)``."""
-    from barnwright.client import connect_async as open_client
+    client: AsyncClient = _client_room().connect_async(address, **options)
+    return client
 
-    return open_client(address, **options)
+
+def _client_room() -> ModuleType:
+    try:
+        return import_module("barnwright.client")
+    except ModuleNotFoundError as error:
+        if (error.name or "").startswith("barnwright"):
+            raise
+        raise BarnwrightError(f"a client needs {error.name}: install barnwright with its extra 'service'") from error
 
 
 def _request(request: RequestLike | None, fields: Mapping[str, Any]) -> tuple[Request, Process | None]:
