@@ -10,8 +10,10 @@ from typing import TYPE_CHECKING
 from pydantic import ValidationError
 
 from barnwright.errors import Violation, nearest, show
+from barnwright.formula import FormulaError
 from barnwright.observables import ObservableError, compile_observable
 from barnwright.process.claims import Claims
+from barnwright.process.laws import Expression
 from barnwright.process.parameters import ParameterValue, facts_of
 from barnwright.process.species import codes_of, leg_choices
 from barnwright.reaction import LegError, Reaction
@@ -27,6 +29,7 @@ def statement_findings(process: Process, reaction: Reaction) -> Iterator[Violati
     if not (process.laws or process.closed_forms):
         yield Violation("laws", "none", "at least one law or closed form")
     yield from _validity(process)
+    yield from _expressions(process, reaction)
     yield from _closed_forms(process, reaction)
     yield from _massless(process, reaction)
     yield from _masses(process, reaction)
@@ -42,6 +45,16 @@ def _validity(process: Process) -> Iterator[Violation]:
         low, high = process.valid.sqrt_s
         if not 0 <= low < high:
             yield Violation("valid.sqrt_s", show(process.valid.sqrt_s), "(low, high) in GeV with 0 <= low < high")
+
+
+def _expressions(process: Process, reaction: Reaction) -> Iterator[Violation]:
+    names = tuple(process.parameters.model_fields)
+    for index, law in enumerate(process.laws):
+        if isinstance(law, Expression):
+            try:
+                law.compile(reaction, names)
+            except FormulaError as error:
+                yield from error.violations(f"laws[{index}].squared_amplitude")
 
 
 def _closed_forms(process: Process, reaction: Reaction) -> Iterator[Violation]:

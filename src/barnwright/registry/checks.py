@@ -26,6 +26,7 @@ from barnwright.process import ClosedForm, Expression, Law, Parameters, Process
 from .check_points import COSINES, CheckPoints, Masses
 
 Array = NDArray[np.float64]
+Flags = NDArray[np.bool_]
 Answer = Callable[[slice], Any]
 
 AGREEMENT = 1e-9
@@ -157,7 +158,7 @@ def _mixing(together: Array, alone: Array, points: CheckPoints) -> list[str]:
     return _offending(together, np.abs(together - alone) > AGREEMENT * scale, points, expected)
 
 
-def _offending(values: Array, wrong: Array, points: CheckPoints, expected: str) -> list[str]:
+def _offending(values: Array, wrong: Flags, points: CheckPoints, expected: str) -> list[str]:
     if not wrong.any():
         return []
     row, node = (int(k) for k in np.argwhere(wrong)[0])
