@@ -60,7 +60,7 @@ def estimate(settled: Settled, rule: Rule, chunk: int) -> Estimate:
         Points in a chunk.
     """
     if rule != "replicates":
-        parts = [settled.of(stratum, 0).added for stratum in settled.strata]
+        parts = [settled.added_of(stratum, 0) for stratum in settled.strata]
         return Estimate(_total(part[0] for part in parts), _total(part[1] for part in parts), rule)
     values = replicate_values(settled, chunk)
     count = len(values)
@@ -76,12 +76,12 @@ def replicate_values(settled: Settled, chunk: int) -> Array:
 
 def hits(settled: Settled) -> Array:
     """How many points passed, of all strata and replicates; shape (point, variation, component)."""
-    return _total(settled.of(s, r).added[2] for s in settled.strata for r in settled.replicates)
+    return _total(settled.added_of(s, r)[2] for s in settled.strata for r in settled.replicates)
 
 
 def _replicate_value(settled: Settled, replicate: int, chunk: int) -> Array:
     return _total(
-        settled.of(stratum, replicate).added[0] / (chunk * settled.chunks_of(stratum, replicate))
+        settled.added_of(stratum, replicate)[0] / (chunk * settled.chunks_of(stratum, replicate))
         for stratum in settled.strata
     )
 

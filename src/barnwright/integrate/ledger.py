@@ -143,7 +143,7 @@ class Ledger:
         self._check_open(wanted)
         strands = tuple(
             Strand(s.points, s.stratum, s.replicate, hole, s.seed)
-            for s in wanted.strands
+            for s in (wanted.strands if self.lacking else ())
             for hole in self._account(s.key).holes(s.chunks[1])
         )
         return Round(wanted.stage, wanted.number, strands, wanted.length, wanted.training)
@@ -232,7 +232,8 @@ class Ledger:
     def _expect(self, wanted: Round) -> None:
         self._strands = {strand.key: strand for strand in wanted.strands}
         self.round = wanted
-        self.lacking = self.missing(wanted).chunks
+        holes = (hole for s in wanted.strands for hole in self._account(s.key).holes(s.chunks[1]))
+        self.lacking = sum(stop - start for start, stop in holes)
 
     def _check_open(self, wanted: Round) -> None:
         if self.round is None or self.round.with_length(wanted.length) != wanted:

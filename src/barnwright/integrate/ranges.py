@@ -29,6 +29,8 @@ def overlaps(covered: tuple[Range, ...], other: Range) -> bool:
 
 def gaps(covered: tuple[Range, ...], whole: Range) -> tuple[Range, ...]:
     """What is left of a range once the ranges, all inside it, are taken away."""
+    if not covered:
+        return (whole,) if whole[0] < whole[1] else ()
     ends = [whole[0], *(end for r in covered for end in r), whole[1]]
     holes = list(pairwise(ends))[::2]
     return tuple(hole for hole in holes if hole[0] < hole[1])

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from barnwright.integrate.block import StrandKey
-from barnwright.integrate.tally import NON_FINITE, Sums, WorstPoint
+from barnwright.integrate.tally import NON_FINITE, Array, Sums, WorstPoint
 
 
 @dataclass(frozen=True, slots=True)
@@ -49,7 +49,7 @@ class Settled:
         return not self.counters.get(NON_FINITE, 0) and all(sums.finite for sums in self.sums.values())
 
     def of(self, stratum: int, replicate: int) -> Sums:
-        """The sums of one stratum and replicate, all points joined along the point axis.
+        """The sums of one stratum and replicate, all points joined along the point axis; see `added_of` for less.
 
         Raises
         ------
@@ -59,8 +59,18 @@ class Settled:
         parts = [self.sums[key] for key in self._keys(stratum, replicate)]
         if len(parts) == 1:
             return parts[0]
-        added = np.concatenate([part.added for part in parts], axis=1)
-        return Sums(added, np.concatenate([part.largest for part in parts], axis=0))
+        return Sums(self.added_of(stratum, replicate), np.concatenate([part.largest for part in parts], axis=0))
+
+    def added_of(self, stratum: int, replicate: int) -> Array:
+        """What `of` would call ``added``: (moment, point, variation, component).
+
+        Raises
+        ------
+        KeyError
+            When the round has no such stratum or replicate.
+        """
+        parts = [self.sums[key].added for key in self._keys(stratum, replicate)]
+        return parts[0] if len(parts) == 1 else np.concatenate(parts, axis=1)
 
     def chunks_of(self, stratum: int, replicate: int) -> int:
         """How many chunks each point of a stratum and replicate has.
