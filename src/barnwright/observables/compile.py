@@ -1,0 +1,82 @@
+"""From text to observable: legs of the reaction in place of names, units, and everything that is wrong with it."""
+
+from __future__ import annotations
+
+import math
+from functools import lru_cache
+from typing import Literal
+
+from barnwright.grammar import Finding, GrammarError, parse
+from barnwright.observables.errors import ObservableError
+from barnwright.observables.language import LANGUAGE
+from barnwright.observables.observable import AxisForm, Observable
+from barnwright.observables.resolve import Resolver, depth_of
+from barnwright.observables.rows import ROWS
+from barnwright.observables.tree import Each, Leaf, Operation, Tree, leaves, with_leg
+from barnwright.observables.units import UnitMismatch, dimension_of
+from barnwright.reaction import Reaction
+
+DEEPEST = 200
+
+
+@lru_cache(maxsize=4096)
+def compile_observable(text: str, reaction: Reaction) -> Observable:
+    """The observable that a text means for a reaction.
+
+    Raises
+    ------
+    ObservableError
+        With every finding, each with its column and what is nearest.
+    """
+    try:
+        node = parse(text, LANGUAGE)
+    except GrammarError as error:
+        raise ObservableError(error.text, error.findings) from None
+    if depth_of(node) > DEEPEST:
+        raise ObservableError(text, (Finding(0, f"at most {DEEPEST} operators after one another"),))
+    resolver = Resolver(reaction)
+    tree = resolver.tree(node)
+    if resolver.findings or tree is None:
+        raise ObservableError(text, tuple(resolver.findings))
+    quantifier = resolver.quantifier
+    try:
+        unit = str(dimension_of(tree))
+    except UnitMismatch as error:
+        expected = f"quantities of one unit in a sum or comparison, not {error}"
+        raise ObservableError(text, (Finding(0, expected),)) from None
+    return Observable(
+        text=" ".join(text.split()),
+        trees=_entries(tree, resolver.each),
+        unit=unit,
+        quantifier=quantifier,
+        range=_range(tree),
+        azimuthal=any(ROWS[leaf.function].azimuthal for leaf in leaves(tree) if leaf.function in ROWS),
+        axis=_axis(tree, reaction) if quantifier is None else None,
+    )
+
+
+def _entries(tree: Tree, each: Each | None) -> tuple[Tree, ...]:
+    return (tree,) if each is None else tuple(with_leg(tree, each, code) for code in each.codes)
+
+
+def _range(tree: Tree) -> tuple[float, float]:
+    if isinstance(tree, Leaf) and tree.function in ROWS:
+        return ROWS[tree.function].range
+    if isinstance(tree, Operation) and tree.function in ("abs", "sqrt"):
+        low, high = _range(tree.operands[0])
+        return 0.0, max(abs(low), abs(high)) if tree.function == "abs" else math.sqrt(max(high, 0.0))
+    return -math.inf, math.inf
+
+
+def _axis(tree: Tree, reaction: Reaction) -> AxisForm | None:
+    """The polar axis of two bodies, its cosine, or the cosine's absolute value."""
+    folded = isinstance(tree, Operation) and tree.function == "abs"
+    leaf = tree.operands[0] if isinstance(tree, Operation) and folded else tree
+    if not isinstance(leaf, Leaf) or len(reaction.outgoing) != 2 or leaf.frame is None:
+        return None
+    kinds: dict[str, Literal["cosine", "angle"]] = {"cos_theta": "cosine", "theta": "angle"}
+    kind = kinds.get(leaf.function)
+    leg = leaf.legs[0]
+    if kind is None or leaf.frame.kind == "rest" or leg not in (1, 2) or (folded and kind == "angle"):
+        return None
+    return AxisForm(kind, int(leg), leaf.frame, folded)
