@@ -2,6 +2,7 @@
 
 from .claims import Claims
 from .closed_form import ClosedForm
+from .declaration import DeclarationError
 from .laws import Expression, Law, SquaredAmplitude
 from .parameters import ParameterFacts, Parameters, ParameterValue, facts_of, parameter, parameters_model
 from .process import Process
@@ -10,6 +11,7 @@ from .validity import Validity
 __all__ = [
     "Claims",
     "ClosedForm",
+    "DeclarationError",
     "Expression",
     "Law",
     "ParameterFacts",

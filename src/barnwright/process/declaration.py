@@ -9,7 +9,7 @@ Rules of this file
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from typing import TYPE_CHECKING, Any
 
 from barnwright.errors import PluginError, Violation, show
@@ -46,26 +46,39 @@ _OTHERS: dict[str, tuple[tuple[type[Any], ...], str]] = {
 }
 
 
+class DeclarationError(PluginError):
+    """A declaration that does not hold together; `violations` has every finding.
+
+    Parameters
+    ----------
+    process
+        The process's name.
+    violations
+        The findings, each with its field.
+    """
+
+    def __init__(self, process: str, violations: Iterable[Violation]) -> None:
+        self.violations = tuple(violations)
+        super().__init__("", process, "\n".join(map(str, self.violations)))
+        self.args = (process, self.violations)
+
+
 def checked_reaction(process: Process) -> Reaction:
     """The reaction of a process whose declaration holds together.
 
     Raises
     ------
-    PluginError
+    DeclarationError
         Naming the process, and every field that is wrong.
     """
     try:
         reaction = parse_reaction(process.reaction)
     except ReactionError as error:
-        raise _refusal(process, error.violations("reaction")) from None
+        raise DeclarationError(str(process.name), error.violations("reaction")) from None
     findings = [*_types(process)] or [*statement_findings(process, reaction)]
     if findings:
-        raise _refusal(process, findings)
+        raise DeclarationError(str(process.name), findings)
     return reaction
-
-
-def _refusal(process: Process, findings: list[Violation]) -> PluginError:
-    return PluginError(plugin="", process=str(process.name), cause="\n".join(map(str, findings)))
 
 
 def _types(process: Process) -> Iterator[Violation]:

@@ -54,8 +54,8 @@ class Process:
 
     Raises
     ------
-    PluginError
-        With every finding about the declaration, each naming its field.
+    DeclarationError
+        A PluginError with every finding about the declaration, each naming its field.
     """
 
     name: str

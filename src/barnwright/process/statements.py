@@ -81,6 +81,8 @@ def _masses(process: Process, reaction: Reaction) -> Iterator[Violation]:
 def _peaks(process: Process, reaction: Reaction) -> Iterator[Violation]:
     parameters = tuple(process.parameters.model_fields)
     for index, peak in enumerate(process.peaks):
+        for leg in peak.of.split() if peak.of not in ("t", "u") else ():
+            yield from _leg(f"peaks[{index}].of", leg, reaction, ("t", "u"))
         if isinstance(peak.at, str) and peak.at not in parameters:
             yield from _leg(f"peaks[{index}].at", peak.at, reaction, parameters)
         if peak.width is not None:

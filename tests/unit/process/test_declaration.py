@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import pickle
 import re
 from typing import Any, Literal
 
@@ -12,6 +13,7 @@ from barnwright.peaks import Peak
 from barnwright.process import (
     Claims,
     ClosedForm,
+    DeclarationError,
     Expression,
     Parameters,
     Process,
@@ -140,6 +142,7 @@ WRONG: list[tuple[dict[str, Any], str]] = [
         {"peaks": (Peak(of="t", shape="power", at="muon_mas"),)},
         "peaks[0].at: got 'muon_mas', expected one of muon_mass",
     ),
+    ({"peaks": (Peak(of="v", shape="power"),)}, "peaks[0].of: got 'v', expected one of t, u, e-, e+, mu-, mu+, beam_a"),
     (
         {"peaks": (Peak(of="mu- mu+", shape="resonance", at="muon_mass", width="gamma"),)},
         "peaks[0].width: got 'gamma', expected a float parameter: muon_mass",
@@ -178,6 +181,14 @@ def test_all_findings_come_at_once() -> None:
         "masses.tau-",
         "singular[0]",
     ]
+
+
+def test_the_error_survives_a_journey_between_processes() -> None:
+    """A worker hands it back by pickle, with its findings."""
+    with pytest.raises(DeclarationError, match="singular") as caught:
+        made(singular=("v",))
+    back = pickle.loads(pickle.dumps(caught.value))  # noqa: S301 - our own bytes
+    assert (str(back), back.violations) == (str(caught.value), caught.value.violations)
 
 
 def test_a_process_is_frozen() -> None:

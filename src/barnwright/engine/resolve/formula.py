@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import hashlib
 import json
+from dataclasses import replace
 from functools import lru_cache
 from typing import Any
 
@@ -12,7 +13,7 @@ from barnwright.engine.plan import ProcessSource
 from barnwright.errors import RequestError, Violation, show
 from barnwright.formula import FormulaError
 from barnwright.peaks import Peak
-from barnwright.process import Expression, Parameters, Process, parameters_model
+from barnwright.process import DeclarationError, Expression, Parameters, Process, parameters_model
 from barnwright.reaction import ReactionError, parse_reaction
 
 NAME = "formula"
@@ -49,12 +50,15 @@ def _made(text: str) -> Process:
         law.compile(reaction, tuple(formula.parameters))
     except FormulaError as error:
         raise RequestError(error.violations("formula.squared_amplitude")) from None
-    return Process(
-        name=NAME,
-        reaction=formula.reaction,
-        summary="a formula of the request",
-        order="as given",
-        laws=(law,),
-        parameters=parameters_model(formula.parameters) if formula.parameters else Parameters,
-        peaks=tuple(Peak(p.of, p.shape, p.at, p.width, p.power) for p in formula.peaks),
-    )
+    try:
+        return Process(
+            name=NAME,
+            reaction=formula.reaction,
+            summary="a formula of the request",
+            order="as given",
+            laws=(law,),
+            parameters=parameters_model(formula.parameters) if formula.parameters else Parameters,
+            peaks=tuple(Peak(p.of, p.shape, p.at, p.width, p.power) for p in formula.peaks),
+        )
+    except DeclarationError as error:
+        raise RequestError(replace(v, field=f"formula.{v.field}") for v in error.violations) from None
