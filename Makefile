@@ -79,7 +79,7 @@ bench: $(BUILT) $(FOR_DEVELOPERS)  ## Measure: ratios against plain numpy loops 
 	@for file in benchmarks/bench_*.py; do $(PY) "$$file"; done
 
 statistics: $(BUILT) $(FOR_DEVELOPERS)  ## The slow studies: property tests with fresh seeds and many more examples
-	HYPOTHESIS_PROFILE=statistics $(PY) -m pytest -q --timeout 3600 tests/property
+	HYPOTHESIS_PROFILE=statistics $(PY) -m pytest -q --timeout 3600 -m hypothesis
 
 clean:  ## Remove what was made: .venv, build, out, caches
 	rm -rf $(VENV) .venv-proto build dist out .mypy_cache .ruff_cache .pytest_cache .hypothesis
