@@ -21,7 +21,6 @@ from google.rpc.error_details_pb2 import BadRequest, ErrorInfo, RetryInfo  # typ
 from google.rpc.status_pb2 import Status  # type: ignore[import-untyped]
 
 from barnwright.errors import BarnwrightError, PluginError, RequestError, ServerError, UnknownProcessError, Violation
-from barnwright.wire.v1.service_pb2 import Violation as ViolationMessage
 from barnwright.wire.v1.service_pb2 import Violations
 
 DOMAIN = "barnwright"
@@ -132,20 +131,19 @@ _TABLE: Mapping[type[Exception], Callable[[Any, int], Outcome]] = {
 
 
 def _violations(violations: Iterable[Violation], room: int) -> list[Message]:
-    """A BadRequest and, for clients that want the parts, our own message; both with as many as fit."""
-    bad, parts = BadRequest(), Violations()
+    """A BadRequest with as many as fit; for a client that takes more than all do, also our own message with parts."""
+    bad, parts, with_parts = BadRequest(), Violations(), room > ROOM
     for violation in violations:
-        described = BadRequest.FieldViolation(field=violation.field, description=str(violation))
-        part = ViolationMessage(
-            field=violation.field,
-            value=violation.value,
-            expected=violation.expected,
-            nearest=violation.nearest,
-            position=violation.position,
-        )
-        room -= described.ByteSize() + part.ByteSize() + 10
+        text = shortened(str(violation), max(room, 600) // 2)
+        described = BadRequest.FieldViolation(field=shortened(violation.field, 200), description=text)
+        room -= described.ByteSize() + 4
+        if with_parts:
+            room -= parts.violations.add(**_parts(violation)).ByteSize() + 4
         if room < 0 and bad.field_violations:
             break
         bad.field_violations.append(described)
-        parts.violations.append(part)
-    return [bad, parts]
+    return [bad, parts] if with_parts else [bad]
+
+
+def _parts(violation: Violation) -> dict[str, Any]:
+    return {name: getattr(violation, name) for name in ("field", "value", "expected", "nearest", "position")}
