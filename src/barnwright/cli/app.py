@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from typing import Annotated
 
 import typer
@@ -27,7 +28,7 @@ app = typer.Typer(
     pretty_exceptions_enable=False,
     context_settings={"help_option_names": ["-h", "--help"], "max_content_width": 100},
 )
-COMMANDS = {
+COMMANDS: dict[Callable[..., None], str] = {
     predict: "One request, one prediction.",
     scan: "One request at many values of its keys.",
     processes: "What is installed.",

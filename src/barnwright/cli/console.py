@@ -24,6 +24,6 @@ def show_table(view: RenderableType) -> None:
     console = Console(file=StringIO(), width=PLAIN_WIDTH, color_system=None)
     with console.capture() as captured:
         console.print(view)
-    text = "".join(f"{line.rstrip()}\n" for line in captured.get().splitlines())
+    text = "".join(f"{line.rstrip()}\n" for line in captured.get().rstrip().splitlines())
     encoding = sys.stdout.encoding or "utf-8"
     sys.stdout.write(text.encode(encoding, "replace").decode(encoding))

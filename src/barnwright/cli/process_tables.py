@@ -10,6 +10,8 @@ from rich.table import Table
 from rich.text import Text
 
 from barnwright.cli.tables import bullets, pairs, titled
+from barnwright.observables import compile_observable
+from barnwright.reaction import parse_reaction
 
 if TYPE_CHECKING:
     from barnwright.documents.description import ParameterDescription, ProcessDescription, ProcessSummary
@@ -46,20 +48,20 @@ def description_view(description: ProcessDescription) -> RenderableType:
 def _description(description: ProcessDescription) -> Iterator[RenderableType]:
     yield Text(description.name, style="bold")
     yield pairs(_facts(description))
+    yield Text("")
     if description.parameters:
         yield _parameters(description.parameters)
     if description.masses:
         yield _masses(description.masses)
     lists = {
-        "observables": description.observables,
+        "observables": tuple(_with_unit(text, description.reaction) for text in description.observables),
         "derived quantities": description.derived,
-        "cautions": (*description.cautions, CAUTION),
+        "cautions": _cautions(description.cautions),
         "references": description.references,
     }
     for title, entries in lists.items():
         if entries:
             yield bullets(title, entries)
-    yield Text("\na request to start from", style="bold")
     yield Text(description.request.rstrip())
 
 
@@ -73,6 +75,16 @@ def _facts(description: ProcessDescription) -> Iterator[tuple[str, str]]:
         yield "contributions", ", ".join(description.contributions)
     yield "singular", ", ".join(description.singular) or "nowhere"
     yield "validity", validity_text(description)
+
+
+def _cautions(own: tuple[str, ...]) -> tuple[str, ...]:
+    """The process's own cautions, and the general one unless it says so itself."""
+    return own if any("radiation-protection expert" in caution for caution in own) else (*own, CAUTION)
+
+
+def _with_unit(observable: str, reaction: str | None) -> str:
+    unit = compile_observable(observable, parse_reaction(reaction)).unit if reaction else ""
+    return f"{observable} [{unit}]" if unit else observable
 
 
 def validity_text(description: ProcessDescription) -> str:

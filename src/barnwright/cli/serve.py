@@ -32,6 +32,12 @@ def serve(address: Address = "127.0.0.1:50551", insecure: Insecure = False, work
 
 
 def _serve(address: str, insecure: bool, workers: int | None) -> ExitCode:
+    from barnwright.errors import BarnwrightError
     from barnwright.service import serve as start
 
-    return ExitCode(start(address, insecure=insecure, workers=workers))
+    try:
+        return ExitCode(start(address, insecure=insecure, workers=workers))
+    except ModuleNotFoundError as error:
+        if (error.name or "").startswith("barnwright"):
+            raise
+        raise BarnwrightError(f"a server needs {error.name}: install barnwright with its extra 'service'") from error

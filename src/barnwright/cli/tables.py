@@ -10,6 +10,7 @@ from typing import TYPE_CHECKING, Literal
 import numpy as np
 from rich import box
 from rich.console import Group, RenderableType
+from rich.padding import Padding
 from rich.table import Table
 from rich.text import Text
 
@@ -30,6 +31,7 @@ def prediction_view(prediction: Prediction) -> RenderableType:
 def _prediction(prediction: Prediction) -> Iterator[RenderableType]:
     yield Text(prediction.title, style="bold")
     yield pairs(_facts(prediction))
+    yield Text("")
     for title in ("processes", "contributions", "variations"):
         parts: Iterable[Part] = getattr(prediction, title)
         if parts:
@@ -116,12 +118,13 @@ def pairs(facts: Iterable[tuple[str, str]]) -> Table:
 
 def bullets(title: str, entries: Iterable[str]) -> Group:
     """A title with one line an entry."""
-    return Group(Text(f"\n{title}", style="bold"), *(Text(f"  {entry}") for entry in entries))
+    lines = (Padding(Text(entry), (0, 0, 0, 2)) for entry in entries)
+    return Group(Text(title, style="bold"), *lines, Text(""))
 
 
 def titled(title: str, columns: Iterable[str], *, numbers: bool = True) -> Table:
     """An empty table with a title; with ``numbers`` every column but the first is set flush right."""
-    heading = Text(f"\n{title}") if title else None
+    heading = Text(title) if title else None
     table = Table(box=box.SIMPLE_HEAD, title=heading, title_justify="left", title_style="bold", pad_edge=False)
     for number, column in enumerate(columns):
         justify: Literal["left", "right"] = "right" if numbers and number > 0 else "left"

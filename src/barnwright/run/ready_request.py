@@ -52,7 +52,7 @@ def _beams(process: Process) -> Iterator[str]:
         return
     light, heavy = sorted((mass_in(process, -1), mass_in(process, -2)))
     on_target = light == 0 < heavy
-    sqrt_s = _sqrt_s(process, math.inf if on_target else USUAL)
+    sqrt_s = _sqrt_s(process, 0.0 if on_target else USUAL)
     if on_target:
         target = -1 if mass_in(process, -1) == heavy else -2
         yield 'kind = "fixed_target"'
@@ -64,7 +64,7 @@ def _beams(process: Process) -> Iterator[str]:
 
 
 def _sqrt_s(process: Process, usual: float) -> float:
-    """GeV: the usual value where it is well above threshold and valid, else a value that is."""
+    """GeV: the usual value where that is well above threshold and valid, else a value that is."""
     legs = process.legs
     valid = process.valid.sqrt_s if process.valid is not None else None
     low, high = valid if valid is not None else (0.0, math.inf)

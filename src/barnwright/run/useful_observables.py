@@ -1,0 +1,53 @@
+"""Observables that make sense for a reaction, as texts that a request may use as they stand."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from barnwright.observables import ObservableError, Row, compile_observable, table
+from barnwright.reaction import Reaction
+
+#: What a two-body final state fixes by itself: back to back in the cm, with the mass and recoil of the whole.
+FIXED_BY_TWO_BODIES = frozenset({"acoplanarity", "delta_phi", "helicity_angle", "mass", "phi", "recoil_mass", "thrust"})
+
+
+def useful_observables(reaction: Reaction) -> tuple[str, ...]:
+    """One text or two (lab and cm) for every row of the table that says something about this reaction.
+
+    They are written for the first outgoing particles; ``each(...)`` where there are several of a kind. An inclusive
+    reaction has the energy of the collision alone.
+    """
+    if reaction.inclusive:
+        return ("sqrt_s",)
+    rows = [row for row in table() if not (len(reaction.outgoing) == 2 and row.name in FIXED_BY_TWO_BODIES)]
+    return tuple(text for row in rows for text in _texts(row, reaction) if _stands(text, reaction))
+
+
+def _texts(row: Row, reaction: Reaction) -> Iterator[str]:
+    first, second = _first_two(reaction)
+    one = f"each({first})" if reaction.outgoing.count(first) > 1 else first
+    if row.shape == "none":
+        yield row.name
+    elif row.shape == "one":
+        yield f"{row.name}({one})"
+        if row.frame == "lab":
+            yield f"{row.name}({one}, frame=cm)"
+    elif row.shape == "transfer":
+        yield f"{row.name}(beam_a, {one})"
+    elif row.shape == "within":
+        yield f"{row.name}({first}, of=({first}, {second}))"
+    else:
+        yield f"{row.name}({first}, {second})"
+
+
+def _first_two(reaction: Reaction) -> tuple[str, str]:
+    names = list(dict.fromkeys(reaction.outgoing))
+    return (names[0], names[1]) if len(names) > 1 else (names[0], names[0])
+
+
+def _stands(text: str, reaction: Reaction) -> bool:
+    try:
+        compile_observable(text, reaction)
+    except ObservableError:
+        return False
+    return True
