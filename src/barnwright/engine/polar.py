@@ -78,7 +78,7 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
 
 def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
     """A closed form's observable at locations, with +z along beam a whatever the request says."""
-    observable = compile_observable(text, rows.reaction)
+    observable = compile_observable(text, rows.reaction, numbered=True)
     if (
         observable.axis is not None
         and observable.axis.kind == "cosine"

@@ -20,8 +20,10 @@ DEEPEST = 200
 
 
 @lru_cache(maxsize=4096)
-def compile_observable(text: str, reaction: Reaction) -> Observable:
+def compile_observable(text: str, reaction: Reaction, numbered: bool = False) -> Observable:
     """The observable that a text means for a reaction.
+
+    ``numbered`` lets a leg number name one of several identical particles, as declarations of processes may.
 
     Raises
     ------
@@ -34,7 +36,7 @@ def compile_observable(text: str, reaction: Reaction) -> Observable:
         raise ObservableError(error.text, error.findings) from None
     if depth_of(node) > DEEPEST:
         raise ObservableError(text, (Finding(0, f"at most {DEEPEST} operators after one another"),))
-    resolver = Resolver(reaction)
+    resolver = Resolver(reaction, numbered)
     tree = resolver.tree(node)
     if resolver.findings or tree is None:
         raise ObservableError(text, tuple(resolver.findings))

@@ -44,8 +44,9 @@ class Resolver:
         The identical particles that the quantifier runs over.
     """
 
-    def __init__(self, reaction: Reaction) -> None:
+    def __init__(self, reaction: Reaction, numbered: bool = False) -> None:
         self.reaction = reaction
+        self.numbered = numbered
         self.findings: list[Finding] = []
         self.quantifier: Literal["each", "any"] | None = None
         self.each: Each | None = None
@@ -163,6 +164,8 @@ class Resolver:
 
     def _identical(self, leg: LegName) -> tuple[int, ...]:
         """The codes of several identical particles of this name, or by the number of one of them."""
+        if self.numbered and leg.name.isdigit():
+            return ()
         for group in self.reaction.identical_groups:
             names = {self.reaction.name_of(code) for code in group}
             if leg.name in names or (leg.name.isdigit() and int(leg.name) in group):

@@ -9,6 +9,8 @@ from typing import Any
 from numpy.typing import ArrayLike, NDArray
 
 from barnwright.event import Point
+from barnwright.observables import Observable, compile_observable
+from barnwright.reaction import Reaction
 
 Cumulative = Callable[[NDArray[Any], Point, Any], ArrayLike]
 
@@ -31,3 +33,13 @@ class ClosedForm:
     cumulative: Cumulative
     observable: str
     massless: tuple[str, ...] = ()
+
+    def axis(self, reaction: Reaction) -> Observable:
+        """The observable that x is; leg numbers name one of identical particles too.
+
+        Raises
+        ------
+        ObservableError
+            With every finding about the text.
+        """
+        return compile_observable(self.observable, reaction, numbered=True)

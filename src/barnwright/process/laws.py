@@ -12,6 +12,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from functools import lru_cache
 from math import prod
 from typing import Any, ClassVar, Literal
 
@@ -86,13 +87,19 @@ class Expression:
         """
         if self.spin_colour == "summed":
             initial_states(reaction)
-        return compile_formula(self.squared_amplitude, reaction, parameter_names)
+        return _compiled(self.squared_amplitude, reaction, parameter_names)
 
     def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
         """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``."""
         values = parameters.model_dump()
         found = self.compile(event.reaction, tuple(values)).evaluate(event, values)
         return found if self.spin_colour == "averaged" else found / initial_states(event.reaction)
+
+
+@lru_cache(maxsize=256)
+def _compiled(expression: Any, reaction: Reaction, parameter_names: tuple[str, ...]) -> Formula:
+    """Once for each expression: a batch must not pay for turning sympy into text."""
+    return compile_formula(expression, reaction, parameter_names)
 
 
 Law = SquaredAmplitude | Expression

@@ -11,7 +11,7 @@ from pydantic import ValidationError
 
 from barnwright.errors import Violation, nearest, show
 from barnwright.formula import FormulaError
-from barnwright.observables import ObservableError, compile_observable
+from barnwright.observables import ObservableError
 from barnwright.process.claims import Claims
 from barnwright.process.laws import Expression
 from barnwright.process.parameters import ParameterValue, facts_of
@@ -60,7 +60,7 @@ def _expressions(process: Process, reaction: Reaction) -> Iterator[Violation]:
 def _closed_forms(process: Process, reaction: Reaction) -> Iterator[Violation]:
     for index, form in enumerate(process.closed_forms):
         try:
-            compile_observable(form.observable, reaction)
+            form.axis(reaction)
         except ObservableError as error:
             yield from error.violations(f"closed_forms[{index}].observable")
 

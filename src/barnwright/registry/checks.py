@@ -20,7 +20,6 @@ from numpy.typing import NDArray
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.resolve.masses import Inputs, resolve_inputs
 from barnwright.errors import show
-from barnwright.observables import compile_observable
 from barnwright.process import ClosedForm, Expression, Law, Parameters, Process
 
 from .check_points import COSINES, CheckPoints, Masses
@@ -102,7 +101,7 @@ def _form_findings(process: Process, form: ClosedForm, inputs: Inputs) -> list[s
 def _of_form(
     form: ClosedForm, points: CheckPoints, parameters: Parameters
 ) -> tuple[Answer, Callable[[Array], list[str]]]:
-    observable = compile_observable(form.observable, points.process.legs)
+    observable = form.axis(points.process.legs)
     x = np.sort(np.broadcast_to(observable.values(points.event(ALL)), (3, COSINES.size)), axis=1)
 
     def answer(some: slice) -> Any:

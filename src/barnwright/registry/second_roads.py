@@ -15,7 +15,6 @@ from numpy.typing import NDArray
 from barnwright.beams import flux
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.resolve.masses import Inputs, resolve_inputs
-from barnwright.observables import compile_observable
 from barnwright.phase_space import two_body_density
 from barnwright.process import ClosedForm, Process
 
@@ -41,7 +40,7 @@ def second_road_findings(process: Process) -> list[str]:
 
 
 def _in_cosine(process: Process, form: ClosedForm) -> bool:
-    axis = compile_observable(form.observable, process.legs).axis
+    axis = form.axis(process.legs).axis
     return axis is not None and axis.kind == "cosine" and axis.leg == 1 and not axis.folded
 
 

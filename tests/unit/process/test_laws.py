@@ -36,6 +36,15 @@ def test_a_summed_expression_is_averaged_here(spin_colour: str, factor: float) -
     assert law.squared(event("e- e+ -> mu- mu+"), parameters) == pytest.approx(factor * (1 + COSINES**2))
 
 
+def test_a_sympy_expression_is_a_law() -> None:
+    """Symbols s, t, u and the parameters mean the same as in a text."""
+    sympy = pytest.importorskip("sympy")
+    s, t, u, g = sympy.symbols("s t u g")
+    law = Expression(g * (t**2 + u**2) / s**2)
+    found = law.squared(event("e- e+ -> mu- mu+"), parameters_model({"g": 2.0})())
+    assert found == pytest.approx(1 + COSINES**2)
+
+
 @pytest.mark.parametrize(
     ("reaction", "states"),
     [
