@@ -8,6 +8,7 @@ from math import prod
 from typing import Any, NamedTuple
 
 from barnwright.documents import Request
+from barnwright.documents.merge import split_key
 from barnwright.errors import RequestError, Violation, nearest, show
 
 MOST_POINTS = 1_000_000
@@ -37,8 +38,7 @@ def scan_shape(over: Mapping[str, Sequence[Any]]) -> tuple[int, ...]:
     shape = tuple(len(values) for values in over.values())
     if not found and prod(shape) > MOST_POINTS:
         found.append(Violation("over", f"{prod(shape)} points", f"at most {MOST_POINTS} points"))
-    slow = prod(len(values) for key, values in over.items() if not is_energy(key))
-    if not found and slow > MOST_GROUPS:
+    if not found and (slow := prod(len(values) for key, values in over.items() if not is_energy(key))) > MOST_GROUPS:
         expected = f"at most {MOST_GROUPS} different values of keys other than beam energies"
         found.append(Violation("over", f"{slow} of them", expected))
     if found:
@@ -66,7 +66,14 @@ def _checked(key: str, values: Sequence[Any]) -> list[Violation]:
 
 def is_energy(key: str) -> bool:
     """Whether the key is a beam energy, which points of one group may differ in."""
-    return key.removeprefix("beams.") in ENERGIES or key.startswith("beams.energies.")
+    return beam_field(key) is not None
+
+
+def beam_field(key: str) -> str | None:
+    """The field of the beams that a key means, "sqrt_s" or "energies.e-", however it is quoted; None for other keys."""
+    table, *path = map(str, split_key(key))
+    energy = path[:1] == ["energies"] and len(path) == 2
+    return ".".join(path) if table == "beams" and (energy or (len(path) == 1 and path[0] in ENERGIES)) else None
 
 
 def parts_of(request: Request, over: Mapping[str, Sequence[Any]]) -> list[Part]:
@@ -85,7 +92,7 @@ def parts_of(request: Request, over: Mapping[str, Sequence[Any]]) -> list[Part]:
         fixed = dict(zip(slow, chosen, strict=True))
         numbers, columns = _points(keys, over, shape, fixed)
         start = {key: columns[key][0] for key in keys}
-        energies = {k.removeprefix("beams."): tuple(map(float, columns[k])) for k in keys if is_energy(k)}
+        energies = {field: tuple(map(float, columns[k])) for k in keys if (field := beam_field(k)) is not None}
         parts.append(Part(request.merged(start) if keys else request, numbers, energies, columns))
     return parts
 
