@@ -12,7 +12,7 @@ from os import PathLike
 from types import ModuleType
 from typing import TYPE_CHECKING, Any
 
-from barnwright.documents import Request
+from barnwright.documents import Request, checked
 from barnwright.errors import BarnwrightError
 from barnwright.run.reading import read_request
 
@@ -105,5 +105,7 @@ def _request(request: RequestLike | None, fields: Mapping[str, Any]) -> tuple[Re
     source = read_request(request) if isinstance(request, str | PathLike) else request
     process = fields.get("process", source.get("process") if isinstance(source, Mapping) else None)
     if process is None or isinstance(process, str):
-        return Request.accept(source, **fields), None
+        from barnwright.run.worker import physics
+
+        return checked(lambda: Request.accept(source, **fields), physics), None
     return Request.accept(source, **{**fields, "process": process.name}), process

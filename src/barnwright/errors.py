@@ -59,10 +59,17 @@ class RequestError(BarnwrightError):
     ----------
     violations
         The findings, in the order in which they are printed, one line each.
+
+    Attributes
+    ----------
+    remainder
+        What is left of a document when everything wrong is taken out, for checks that come later; None where nothing
+        usable is left. It does not travel.
     """
 
     def __init__(self, violations: Iterable[Violation]) -> None:
         self.violations: tuple[Violation, ...] = tuple(violations)
+        self.remainder: object | None = None
         super().__init__(self.violations)
 
     def __str__(self) -> str:

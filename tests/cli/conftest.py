@@ -77,10 +77,10 @@ def answering(monkeypatch: pytest.MonkeyPatch) -> Callable[..., None]:
     """Let `predict` answer at once; keywords change the prediction, an exception is raised instead."""
 
     def install(error: BaseException | None = None, **changes: Any) -> None:
-        def predict(request: Request) -> Prediction:
+        def predict(fields: dict[str, Any]) -> Prediction:
             if error is not None:
                 raise error
-            return answer(request, **changes)
+            return answer(Request.model_validate(fields), **changes)
 
         monkeypatch.setattr(api, "predict", predict)
 

@@ -7,7 +7,8 @@ from pathlib import Path
 
 import pytest
 
-from barnwright.cli.reading import parse_overrides, read_request
+from barnwright.cli.reading import parse_overrides, read_fields
+from barnwright.documents import Request
 from barnwright.errors import RequestError
 
 TOML = """
@@ -45,7 +46,7 @@ def test_file_with_overrides(tmp_path: Path) -> None:
     """Overrides are merged into the file's request, tables key by key and cuts by name."""
     file = tmp_path / "request.toml"
     file.write_text(TOML)
-    request = read_request(str(file), ["beams.sqrt_s=20", "cuts.acceptance.max=0.5", "seed=7"])
+    request = Request.model_validate(read_fields(str(file), ["beams.sqrt_s=20", "cuts.acceptance.max=0.5", "seed=7"]))
     assert request.beams.sqrt_s == 20.0
     assert request.cuts[0].max == 0.5
     assert request.seed == 7
@@ -55,11 +56,11 @@ def test_file_with_overrides(tmp_path: Path) -> None:
 def test_standard_input_is_toml_or_json(text: str, monkeypatch: pytest.MonkeyPatch) -> None:
     """A dash reads standard input and tells TOML from JSON by itself."""
     monkeypatch.setattr("sys.stdin", io.StringIO(text))
-    assert read_request("-", []).process == "qed/muon-pair"
+    assert read_fields("-", [])["process"] == "qed/muon-pair"
 
 
 def test_missing_file_names_the_nearest(tmp_path: Path) -> None:
     """A file that is not there is answered with the file that was probably meant."""
     (tmp_path / "request.toml").write_text(TOML)
     with pytest.raises(RequestError, match=r"request: got .*expected a file that exists; nearest: request.toml"):
-        read_request(str(tmp_path / "reqest.toml"), [])
+        read_fields(str(tmp_path / "reqest.toml"), [])

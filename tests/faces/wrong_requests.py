@@ -175,7 +175,7 @@ PHYSICS = [
         "0",
     ),
     one("crossing angle", collider(energies={"e-": 7.0, "e+": 4.0}, crossing_angle=0.083), "beams.crossing_angle"),
-    one("decay of two beams", {"beams": {"kind": "decay"}, "unit": "pb"}, "beams.kind", "decay"),
+    one("decay of two beams", {"beams": {"kind": "decay"}}, "beams.kind", "decay"),
     one("contributions of none", {"contributions": ["photon"]}, "contributions[0]", "'photon'", "none"),
     one("monte carlo", {"accuracy": {"method": "monte_carlo"}}, "accuracy.method", "closed_form or quadrature"),
     one("energy below the mass", {**target(energy=1e-4, target="gamma")}, "beams.target", "gamma"),

@@ -8,7 +8,7 @@ from contextlib import contextmanager
 from typing import TYPE_CHECKING, Any, Protocol, TypeVar
 
 if TYPE_CHECKING:
-    from barnwright.documents import Prediction, Request
+    from barnwright.documents import Prediction
     from barnwright.documents.description import ProcessDescription, ProcessSummary
 
 T = TypeVar("T")
@@ -17,10 +17,10 @@ T = TypeVar("T")
 class Answers(Protocol):
     """The face that the Python functions and the client share."""
 
-    def predict(self, request: Request, /) -> Prediction:
+    def predict(self, request: Mapping[str, Any], /) -> Prediction:
         """One prediction."""
 
-    def scan(self, request: Request, /, *, over: Mapping[str, Sequence[Any]]) -> Any:
+    def scan(self, request: Mapping[str, Any], /, *, over: Mapping[str, Sequence[Any]]) -> Any:
         """A sweep: one prediction for every point."""
 
     def processes(self) -> list[ProcessSummary]:

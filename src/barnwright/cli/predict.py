@@ -28,15 +28,15 @@ def predict(
 
 def _predict(source: str, overrides: list[str], wish: Wish) -> ExitCode:
     from barnwright.cli.deliver import deliver_prediction, exit_code
-    from barnwright.cli.reading import read_request
+    from barnwright.cli.reading import read_fields
 
     wish.check()
-    request = read_request(source, overrides)
+    fields = read_fields(source, overrides)
     if wish.plot is not None:
         from barnwright.plot import check_drawable
 
-        check_drawable(request)
+        check_drawable(fields.get("histograms"))
     with face(wish.server) as ask, waiting("predicting"):
-        prediction = ask.predict(request)
+        prediction = ask.predict(fields)
     deliver_prediction(prediction, wish)
     return exit_code([prediction.status])

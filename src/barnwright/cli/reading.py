@@ -7,21 +7,22 @@ import tomllib
 from collections.abc import Sequence
 from typing import Any
 
-from barnwright.documents import Request, merge
+from barnwright.documents import merge
 from barnwright.documents.formats import read_text
 from barnwright.errors import RequestError, Violation, show
 from barnwright.run.reading import read_request as read_file
 
 
-def read_request(source: str, overrides: Sequence[str]) -> Request:
-    """The request of a file ("-": standard input, TOML or JSON) with overrides such as "beams.sqrt_s=20" merged in.
+def read_fields(source: str, overrides: Sequence[str]) -> dict[str, Any]:
+    """The fields of a file ("-": standard input, TOML or JSON) with overrides such as "beams.sqrt_s=20" merged in.
 
-    Raises RequestError with every finding.
+    They are not checked yet: whoever answers says everything that is wrong with them at once. Raises RequestError when
+    there is no such file, or the text or an override cannot be read.
     """
     fields = read_text(sys.stdin.read()) if source == "-" else read_file(source)
     for key, value in parse_overrides(overrides):
         fields = merge(fields, {key: value})
-    return Request.model_validate(fields)
+    return fields
 
 
 def parse_overrides(texts: Sequence[str]) -> list[tuple[str, Any]]:

@@ -45,7 +45,7 @@ def scan(
 def _scan(source: str, overrides: list[str], over: list[str], wish: Wish) -> ExitCode:
     from barnwright.cli.deliver import exit_code
     from barnwright.cli.over import parse_over
-    from barnwright.cli.reading import read_request
+    from barnwright.cli.reading import read_fields
     from barnwright.cli.sweeps import deliver_points, points_of
 
     wish.check()
@@ -54,10 +54,10 @@ def _scan(source: str, overrides: list[str], over: list[str], wish: Wish) -> Exi
         from barnwright.plot import check_axes
 
         check_axes(axes)
-    request = read_request(source, overrides)
+    fields = read_fields(source, overrides)
     with face(wish.server) as ask:
         with waiting("scanning"):
-            sweep = ask.scan(request, over=axes)
+            sweep = ask.scan(fields, over=axes)
         points = points_of(sweep, axes)
     deliver_points(points, axes, wish)
     return exit_code(point.prediction.status for point in points)

@@ -13,8 +13,8 @@ from barnwright.client import answers
 from barnwright.client.channel import METADATA, OPTIONS, absent, checked_address
 from barnwright.client.failures import error_of
 from barnwright.client.sweep import RemoteSweep, plain_axes
-from barnwright.documents import Prediction, ProcessDescription, ProcessSummary
-from barnwright.errors import ServerError
+from barnwright.documents import Prediction, ProcessDescription, ProcessSummary, Request, completed, remainder_of
+from barnwright.errors import RequestError, ServerError
 from barnwright.wire.v1 import service_pb2 as wire
 from barnwright.wire.v1.service_pb2_grpc import CrossSectionServiceStub
 
@@ -36,7 +36,7 @@ class AsyncClient:
         self, request: answers.RequestLike | None = None, /, *, timeout: float | None = None, **fields: Any
     ) -> Prediction:
         """One prediction; the arguments are those of ``barnwright.predict``."""
-        message = answers.predict_message(answers.request_of(request, fields))
+        message = answers.predict_message(await self._whole(request, fields))
         return answers.prediction_of(await self._ask("Predict", message, timeout))
 
     async def scan(
@@ -50,7 +50,7 @@ class AsyncClient:
     ) -> RemoteSweep:
         """A prediction at every value of keys of the request; the arguments are those of ``barnwright.scan``."""
         axes = plain_axes(over)
-        message = answers.scan_message(answers.request_of(request, fields), axes)
+        message = answers.scan_message(await self._whole(request, fields), axes)
         stub = await self._ready()
         call = stub.Scan(message, timeout=timeout or self._timeout, metadata=METADATA)
         predictions: list[Prediction] = []
@@ -66,11 +66,11 @@ class AsyncClient:
     async def validate(
         self, request: answers.RequestLike | None = None, /, *, timeout: float | None = None, **fields: Any
     ) -> answers.Validation:
-        """What a request means and costs, or what is wrong with it; nothing is computed.
-
-        Raises ``RequestError`` where the document itself is wrong, before it is sent.
-        """
-        message = answers.validate_message(answers.request_of(request, fields))
+        """What a request means and costs, or what is wrong with it, which raises nothing; nothing is computed."""
+        try:
+            message = answers.validate_message(await self._checked(request, fields))
+        except RequestError as error:
+            return answers.Validation(None, None, error.violations)
         return answers.validation_of(await self._ask("ValidateRequest", message, timeout))
 
     async def processes(self) -> list[ProcessSummary]:
@@ -101,6 +101,22 @@ class AsyncClient:
     async def _waited(self) -> Self:
         await self._ready()
         return self
+
+    async def _checked(self, request: answers.RequestLike | None, fields: Mapping[str, Any]) -> Request:
+        """The request document. Where it is refused, what the server finds wrong with the rest of it is told too."""
+        try:
+            return answers.request_of(request, fields)
+        except RequestError as error:
+            left = remainder_of(error)
+            raise error if left is None else completed(error, await self._findings(left)) from None
+
+    async def _findings(self, left: Request) -> tuple[Violation, ...]:
+        """What the server finds; nothing where it is away or a plugin is broken: what is known is told all the same."""
+        message = answers.validate_message(left)
+        try:
+            return answers.validation_of(await self._ask("ValidateRequest", message)).violations
+        except BarnwrightError:
+            return ()
 
     async def _ask(self, method: str, message: Any, timeout: float | None = None) -> Any:
         stub = await self._ready()

@@ -13,7 +13,7 @@ from barnwright.client import answers
 from barnwright.client.channel import METADATA, OPTIONS, absent, checked_address
 from barnwright.client.failures import error_of
 from barnwright.client.sweep import RemoteSweep, plain_axes
-from barnwright.documents import Prediction, ProcessDescription, ProcessSummary
+from barnwright.documents import Prediction, ProcessDescription, ProcessSummary, Request, checked
 from barnwright.errors import ServerError
 from barnwright.wire.v1 import service_pb2 as wire
 from barnwright.wire.v1.service_pb2_grpc import CrossSectionServiceStub
@@ -39,7 +39,7 @@ class Client:
         self, request: answers.RequestLike | None = None, /, *, timeout: float | None = None, **fields: Any
     ) -> Prediction:
         """One prediction; the arguments are those of ``barnwright.predict``."""
-        message = answers.predict_message(answers.request_of(request, fields))
+        message = answers.predict_message(self._whole(request, fields))
         return answers.prediction_of(self._ask(self._stub.Predict, message, timeout))
 
     def scan(
@@ -53,7 +53,7 @@ class Client:
     ) -> RemoteSweep:
         """A prediction at every value of keys of the request; the arguments are those of ``barnwright.scan``."""
         axes = plain_axes(over)
-        message = answers.scan_message(answers.request_of(request, fields), axes)
+        message = answers.scan_message(self._whole(request, fields), axes)
         self._wait_for_server()
         call = self._stub.Scan(message, timeout=timeout or self._timeout, metadata=METADATA)
         predictions: list[Prediction] = []
@@ -69,11 +69,11 @@ class Client:
     def validate(
         self, request: answers.RequestLike | None = None, /, *, timeout: float | None = None, **fields: Any
     ) -> answers.Validation:
-        """What a request means and costs, or what is wrong with it; nothing is computed.
-
-        Raises ``RequestError`` where the document itself is wrong, before it is sent.
-        """
-        message = answers.validate_message(answers.request_of(request, fields))
+        """What a request means and costs, or what is wrong with it, which raises nothing; nothing is computed."""
+        try:
+            message = answers.validate_message(self._checked(request, fields))
+        except RequestError as error:
+            return answers.Validation(None, None, error.violations)
         return answers.validation_of(self._ask(self._stub.ValidateRequest, message, timeout))
 
     def processes(self) -> list[ProcessSummary]:
@@ -95,6 +95,22 @@ class Client:
         self, kind: type[BaseException] | None, error: BaseException | None, trace: TracebackType | None
     ) -> None:
         self.close()
+
+    def _checked(self, request: answers.RequestLike | None, fields: Mapping[str, Any]) -> Request:
+        """The request document. Where it is refused, what the server finds wrong with the rest of it is told too."""
+        try:
+            return answers.request_of(request, fields)
+        except RequestError as error:
+            left = remainder_of(error)
+            raise error if left is None else completed(error, self._findings(left)) from None
+
+    def _findings(self, left: Request) -> tuple[Violation, ...]:
+        """What the server finds; nothing where it is away or a plugin is broken: what is known is told all the same."""
+        message = answers.validate_message(left)
+        try:
+            return answers.validation_of(self._ask(self._stub.ValidateRequest, message)).violations
+        except BarnwrightError:
+            return ()
 
     def _ask(self, method: Any, message: Any, timeout: float | None = None) -> Any:
         """The answer to a call. As a future, so that Ctrl-C gets through and cancels it on the server."""

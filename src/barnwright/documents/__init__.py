@@ -17,6 +17,7 @@ from barnwright.documents.histograms import Bins, HistogramRequest
 from barnwright.documents.merge import merge, split_key
 from barnwright.documents.notes import Diagnostics, Note, Run
 from barnwright.documents.prediction import Prediction
+from barnwright.documents.remainder import checked, completed, remainder_of
 from barnwright.documents.request import Request
 from barnwright.documents.results import Derived, DerivedBins, Part
 from barnwright.documents.variations import BeamsChange, Variation
@@ -53,6 +54,9 @@ __all__ = [
     "Run",
     "Total",
     "Variation",
+    "checked",
+    "completed",
+    "remainder_of",
     "merge",
     "split_key",
     "violations_of",

@@ -14,8 +14,9 @@ from pydantic import BaseModel, ValidationError
 
 from barnwright.documents.base import MAX_NAME
 from barnwright.documents.checks import Path
-from barnwright.documents.findings import Located, located, shortened
-from barnwright.errors import Violation
+from barnwright.documents.findings import Located, located, shortened, written
+from barnwright.documents.remainder import Remainder
+from barnwright.errors import RequestError, Violation
 
 _ROUNDS = 12
 _DEEPEST = 20
@@ -52,8 +53,8 @@ def plain(value: Any, depth: int = 0) -> Any:
 
 def examine(
     values: Any, error: ValidationError, model: type[BaseModel], validate: Callable[[Any], Any]
-) -> list[Violation]:
-    """Every violation of ``values``, which are used up; ``error`` is the first that was found."""
+) -> RequestError:
+    """The error with every violation of ``values``, which are used up; ``error`` is the first that was found."""
     kept: dict[Path, Violation] = {}
     taken: set[Path] = set()
     for _ in range(_ROUNDS):
@@ -65,11 +66,18 @@ def examine(
         if not any(done):
             break
         try:
-            validate(values)
-            break
+            whole = validate(values)
         except ValidationError as further:
             error = further
-    return shortened(list(kept.values()))
+        else:
+            return _refusal(kept, Remainder(whole, frozenset(written(path) for path in taken)))
+    return _refusal(kept, None)
+
+
+def _refusal(kept: Mapping[Path, Violation], remainder: Remainder | None) -> RequestError:
+    error = RequestError(shortened(list(kept.values())))
+    error.remainder = remainder
+    return error
 
 
 def _follows(entry: Located, taken: set[Path]) -> bool:

@@ -109,7 +109,7 @@ class Request(Document):
         try:
             return handler(values)
         except ValidationError as error:
-            raise RequestError(examine(values, error, cls, handler)) from None
+            raise examine(values, error, cls, handler) from None
 
     @classmethod
     def accept(cls, source: Request | Mapping[str, Any] | str | None = None, /, **fields: Any) -> Request:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from barnwright.documents import DecayBeams, Request
+from barnwright.documents import DecayBeams
 from barnwright.documents.arrays import axes_of
 from barnwright.errors import RequestError, Violation
 from barnwright.plot.backend import COLOURS, blank
@@ -25,7 +25,7 @@ def draw(prediction: Prediction) -> Figure:
     logarithmic by what the numbers span, units stand in brackets. Raises RequestError when there is no histogram, and
     BarnwrightError when matplotlib (extra ``plot``) is missing.
     """
-    check_drawable(prediction.request)
+    check_drawable(prediction.histograms)
     figure, panels = blank(len(prediction.histograms))
     figure.suptitle(f"{prediction.title}: {prediction.total} ({prediction.status})")
     letter = "Gamma" if isinstance(prediction.request.beams, DecayBeams) else "sigma"
@@ -41,9 +41,9 @@ def draw(prediction: Prediction) -> Figure:
     return figure
 
 
-def check_drawable(request: Request) -> None:
-    """Refuse a request without histograms. Raises RequestError."""
-    if not request.histograms:
+def check_drawable(histograms: object) -> None:
+    """Refuse a request whose histograms are none. Raises RequestError."""
+    if not histograms:
         expected = "at least one histogram, since a picture is wanted"
         raise RequestError([Violation("histograms", "nothing", expected)])
 

@@ -5,14 +5,13 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from barnwright.process import Process
-from barnwright.registry import catalogue
-
-from barnwright.documents import Request
+from barnwright.documents import Request, checked
 from barnwright.engine import Plan, ProcessSource, Stage, evaluate, formula_process, resolve
-from barnwright.errors import PluginError
+from barnwright.errors import PluginError, RequestError, Violation
 from barnwright.integrate.block import Block
 from barnwright.integrate.tally import Tally
+from barnwright.process import Process
+from barnwright.registry import catalogue
 
 
 def resolve_task(request: Mapping[str, Any], over: Mapping[str, Sequence[Any]] | None = None) -> Plan:
@@ -23,7 +22,18 @@ def resolve_task(request: Mapping[str, Any], over: Mapping[str, Sequence[Any]] |
     RequestError, UnknownProcessError, PluginError
         All of them can be pickled.
     """
-    return resolve(Request.model_validate(dict(request)), catalogue().load, over)
+    return resolve(checked(lambda: Request.model_validate(dict(request)), physics), catalogue().load, over)
+
+
+def physics(request: Request) -> tuple[Violation, ...]:
+    """What is wrong with the physics of a request; nothing where its plugin is broken."""
+    try:
+        resolve(request, catalogue().load)
+    except RequestError as error:
+        return error.violations
+    except PluginError:
+        return ()
+    return ()
 
 
 def evaluate_task(block: Block, stage: Stage) -> Tally:

@@ -66,7 +66,9 @@ def test_products_and_transfers_keep_their_digits(
     difference = [i - j for i, j in zip(x, y, strict=True)]
     transfer = dot(difference, difference)
     ceiling = max(abs(float(transfer)), abs(float((x[0] - y[0]) ** 2)))
-    assert float(np.broadcast_to(body.transfer(*pair), (1, 1))[0, 0]) == pytest.approx(float(transfer), rel=0, abs=2e-14 * ceiling + 1e-300)
+    assert float(np.broadcast_to(body.transfer(*pair), (1, 1))[0, 0]) == pytest.approx(
+        float(transfer), rel=0, abs=2e-14 * ceiling + 1e-300
+    )
 
 
 @pytest.mark.parametrize(("masses", "sqrt_s", "cosine"), CASES)

@@ -27,6 +27,8 @@ def resolve_method(process: Process, request: Request, inputs: Inputs, findings:
     law = _first_valid(process, process.laws, inputs.masses)
     forced = request.accuracy.method
     roads = [name for name, found in (("closed_form", closed_form), ("quadrature", law)) if found is not None]
+    if forced == "monte_carlo":
+        return None
     if forced is not None and forced not in roads:
         why = f"one of the methods that {process.name} has for these masses: {', '.join(roads) or 'none'}"
         findings.add("accuracy.method", forced, why, roads[0] if roads else None)

@@ -19,5 +19,4 @@ def notes_of(process: Process, setting: Setting) -> tuple[Note, ...]:
         if np.any((collision.sqrt_s < low) | (collision.sqrt_s > high)):
             text = f"√s lies outside {low:g} to {high:g} GeV, where {process.name} is valid: {process.valid.text}"
             found.append(Note("outside_validity", text))
-    found.extend(Note("caution", text) for text in process.cautions)
     return tuple(found)

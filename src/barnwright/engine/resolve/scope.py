@@ -16,7 +16,7 @@ def check_scope(request: Request, process: Process, findings: Findings) -> None:
         expected = "a reaction of two particles into two"
         findings.add("formula.reaction" if request.formula else "process", reaction.text, expected)
         findings.refuse()
-    if request.unit not in AREA_UNITS:
+    if request.unit not in AREA_UNITS and request.beams.kind != "decay":
         expected = f"a unit of area: {', '.join(AREA_UNITS)}"
         findings.add("unit", request.unit, expected, nearest(request.unit, AREA_UNITS))
     _check_contributions(request, process, findings)
