@@ -14,7 +14,7 @@ from barnwright.client.channel import METADATA, OPTIONS, absent, checked_address
 from barnwright.client.failures import error_of
 from barnwright.client.sweep import RemoteSweep, plain_axes
 from barnwright.documents import Prediction, ProcessDescription, ProcessSummary, Request, completed, remainder_of
-from barnwright.errors import RequestError, ServerError
+from barnwright.errors import BarnwrightError, RequestError, ServerError, Violation
 from barnwright.wire.v1 import service_pb2 as wire
 from barnwright.wire.v1.service_pb2_grpc import CrossSectionServiceStub
 
@@ -36,7 +36,7 @@ class AsyncClient:
         self, request: answers.RequestLike | None = None, /, *, timeout: float | None = None, **fields: Any
     ) -> Prediction:
         """One prediction; the arguments are those of ``barnwright.predict``."""
-        message = answers.predict_message(await self._whole(request, fields))
+        message = answers.predict_message(await self._checked(request, fields))
         return answers.prediction_of(await self._ask("Predict", message, timeout))
 
     async def scan(
@@ -50,7 +50,7 @@ class AsyncClient:
     ) -> RemoteSweep:
         """A prediction at every value of keys of the request; the arguments are those of ``barnwright.scan``."""
         axes = plain_axes(over)
-        message = answers.scan_message(await self._whole(request, fields), axes)
+        message = answers.scan_message(await self._checked(request, fields), axes)
         stub = await self._ready()
         call = stub.Scan(message, timeout=timeout or self._timeout, metadata=METADATA)
         predictions: list[Prediction] = []

@@ -13,8 +13,8 @@ from barnwright.client import answers
 from barnwright.client.channel import METADATA, OPTIONS, absent, checked_address
 from barnwright.client.failures import error_of
 from barnwright.client.sweep import RemoteSweep, plain_axes
-from barnwright.documents import Prediction, ProcessDescription, ProcessSummary, Request, checked
-from barnwright.errors import ServerError
+from barnwright.documents import Prediction, ProcessDescription, ProcessSummary, Request, completed, remainder_of
+from barnwright.errors import BarnwrightError, RequestError, ServerError, Violation
 from barnwright.wire.v1 import service_pb2 as wire
 from barnwright.wire.v1.service_pb2_grpc import CrossSectionServiceStub
 
@@ -39,7 +39,7 @@ class Client:
         self, request: answers.RequestLike | None = None, /, *, timeout: float | None = None, **fields: Any
     ) -> Prediction:
         """One prediction; the arguments are those of ``barnwright.predict``."""
-        message = answers.predict_message(self._whole(request, fields))
+        message = answers.predict_message(self._checked(request, fields))
         return answers.prediction_of(self._ask(self._stub.Predict, message, timeout))
 
     def scan(
@@ -53,7 +53,7 @@ class Client:
     ) -> RemoteSweep:
         """A prediction at every value of keys of the request; the arguments are those of ``barnwright.scan``."""
         axes = plain_axes(over)
-        message = answers.scan_message(self._whole(request, fields), axes)
+        message = answers.scan_message(self._checked(request, fields), axes)
         self._wait_for_server()
         call = self._stub.Scan(message, timeout=timeout or self._timeout, metadata=METADATA)
         predictions: list[Prediction] = []
