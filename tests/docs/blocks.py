@@ -9,6 +9,7 @@ sh, text  only shown
 from __future__ import annotations
 
 import doctest
+import math
 import os
 import re
 import socket
@@ -22,6 +23,29 @@ from typing import Any
 FENCE = re.compile(r"^```(\w*)\n(.*?)^```$", re.MULTILINE | re.DOTALL)
 PORT = "50551"
 OPTIONS = doctest.ELLIPSIS | doctest.NORMALIZE_WHITESPACE
+NUMBER = re.compile(r"(?<!\w)[+-]?\d+(?:\.\d*)?(?:e[+-]?\d+)?(?:\(\d+\))?")
+CLOSE = 1e-10
+
+
+class Checker(doctest.OutputChecker):
+    """Outputs are the same when their texts are and their numbers agree to 1e-10: last digits depend on the machine."""
+
+    def check_output(self, want: str, got: str, optionflags: int) -> bool:
+        """Whether what was shown is what came."""
+        return super().check_output(want, got, optionflags) or (_bare(want) == _bare(got) and _close(want, got))
+
+
+def _bare(text: str) -> str:
+    """The text without its numbers; rules of tables, which are as wide as the numbers, all of one width."""
+    return " ".join(re.sub("─+", "─", NUMBER.sub("#", text)).split())
+
+
+def _numbers(text: str) -> list[float]:
+    return [float(number.partition("(")[0]) for number in NUMBER.findall(text)]
+
+
+def _close(want: str, got: str) -> bool:
+    return all(math.isclose(*pair, rel_tol=CLOSE) for pair in zip(_numbers(want), _numbers(got), strict=True))
 
 
 @dataclass(frozen=True, slots=True)
@@ -85,7 +109,9 @@ class Reader:
     def _pycon(self, block: Block) -> None:
         test = doctest.DocTestParser().get_doctest(block.text, self.names, self.page.name, None, block.line - 1)
         report: list[str] = []
-        doctest.DocTestRunner(optionflags=OPTIONS, verbose=False).run(test, out=report.append, clear_globs=False)
+        doctest.DocTestRunner(Checker(), optionflags=OPTIONS, verbose=False).run(
+            test, out=report.append, clear_globs=False
+        )
         assert not report, "".join(report)
         self.names.update(test.globs)
 
@@ -94,7 +120,7 @@ class Reader:
             command, _, expected = re.sub(r"\\\n", "", entry).partition("\n")
             run = self._start if command.endswith("&") else self._shell
             got = run(command.rstrip("& "))
-            same = doctest.OutputChecker().check_output(expected.strip() + "\n", got.strip() + "\n", OPTIONS)
+            same = Checker().check_output(expected.strip() + "\n", got.strip() + "\n", OPTIONS)
             assert same, f"{self.page.name}:{block.line}: $ {command}\nexpected:\n{expected}\ngot:\n{got}"
 
     def _environment(self) -> dict[str, str]:
