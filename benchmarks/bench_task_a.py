@@ -21,6 +21,8 @@ from comparators import ELECTRON, MUON, GaussLegendre, quad_bins
 
 import barnwright
 from barnwright.engine import evaluate, resolve
+from barnwright.engine.calculate import calculate
+from barnwright.integrate.ledger import Ledger
 from barnwright.registry import catalogue
 
 BINS, POINTS, REPEATS, SCAN_REPEATS = 100, 1000, 101, 9
@@ -76,7 +78,7 @@ def kernel(method: str) -> Callable[[], object]:
     """Only the work on the block, as a worker does it."""
     loaded = catalogue().load("qed/muon-pair")
     plan = resolve(request(method), catalogue().load)
-    stage, blocks = plan.stage(), plan.blocks()
+    stage, blocks = plan.stage(), list(next(calculate(plan, Ledger(plan.digest))))
     return lambda: [evaluate(block, stage, loaded.process) for block in blocks]
 
 

@@ -44,7 +44,7 @@ class Rows:
             flat = chosen.ravel()
             shape = chosen.shape
             collision = self._reshaped(flat, shape)
-            azimuth = azimuth if azimuth.size == 1 else azimuth[flat, 0].reshape(shape)
+            azimuth = azimuth.ravel() if azimuth.size == 1 else azimuth[flat, 0].reshape(shape)
         return Event(self.reaction, TwoBody(collision, self.masses, ends.one_minus, ends.one_plus, azimuth))
 
     def two_body(self, ends: Ends) -> TwoBody:
