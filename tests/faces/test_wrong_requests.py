@@ -6,10 +6,10 @@ import json
 from pathlib import Path
 
 import pytest
+from faces.wrong_requests import CASES, Case
 
 import barnwright
 from barnwright.cli import main
-from faces.wrong_requests import CASES, Case
 
 pytestmark = pytest.mark.timeout(30)
 by_case = pytest.mark.parametrize("case", CASES, ids=lambda case: case.name)

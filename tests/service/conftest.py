@@ -18,6 +18,13 @@ def server() -> Iterator[Running]:
 
 
 @pytest.fixture(scope="session")
+def bundled() -> Iterator[Running]:
+    """A server with the plugins that this process has too."""
+    with serving() as running:
+        yield running
+
+
+@pytest.fixture(scope="session")
 def client(server: Running) -> Iterator[Client]:
     """A client of that server."""
     with server.client() as connected:

@@ -24,13 +24,13 @@ process = Process(name="pair", reaction="e- e+ -> mu- mu+", laws=(SquaredAmplitu
 '''
 
 
-def plugin(folder: Path, name: str, body: str) -> Path:
-    """A folder for the import path with a plugin whose process ``name/pair`` runs this statement in its law."""
+def plugin(folder: Path, name: str, *statements: str) -> Path:
+    """A folder for the import path with a plugin whose process ``name/pair`` runs these statements in its law."""
     module = name.replace("-", "_")
     home = folder / module
     metadata = home / f"{module}-1.0.dist-info"
     metadata.mkdir(parents=True)
-    (home / f"{module}.py").write_text(_MODULE.format(body=body))
+    (home / f"{module}.py").write_text(_MODULE.format(body="\n        ".join(statements)))
     (metadata / "METADATA").write_text(f"Metadata-Version: 2.1\nName: {name}\nVersion: 1.0\n")
     (metadata / "entry_points.txt").write_text(f"[barnwright.processes.v1]\npair = {module}:process\n")
     return home

@@ -50,7 +50,7 @@ def test_a_law_that_hangs_costs_its_worker_only() -> None:
         assert others == [expected] * 20
         (error,) = raised
         assert isinstance(error, PluginError)
-        assert (error.process, error.plugin) == ("hangs-later/pair", "hangs_later")
+        assert (error.process, error.plugin) == ("hangs-later/pair", "hangs-later")
         assert "took longer than 2 s, so the worker was ended: one of its functions hangs" in error.cause
         assert good(client) == expected
 

@@ -108,8 +108,8 @@ def test_an_idle_server_ends_at_once_and_well(number: int) -> None:
 def test_a_drain_ends_watches_and_finishes_calls(tmp_path: Path) -> None:
     """NOT_SERVING is told first; the call that runs is answered; then the server ends."""
     go, began = tmp_path / "go", tmp_path / "began"
-    body = f"Path({str(began)!r}).touch(); exec('while not os.path.exists({str(go)!r}): time.sleep(0.01)')"
-    with serving(plugin(tmp_path, "waits", body)) as server, server.client() as client, server.channel() as channel:
+    body = f"Path({str(began)!r}).touch()", f"while not os.path.exists({str(go)!r}): time.sleep(0.01)"
+    with serving(plugin(tmp_path, "waits", *body)) as server, server.client() as client, server.channel() as channel:
         watch = health_pb2_grpc.HealthStub(channel).Watch(health_pb2.HealthCheckRequest(), wait_for_ready=True)
         assert next(watch).status == SERVING
         answers: list[Any] = []

@@ -7,8 +7,9 @@ import sys
 import numpy as np
 import pytest
 
+import barnwright
 from barnwright.errors import BarnwrightError, RequestError
-from barnwright.plot import backend
+from barnwright.plot import backend, check_axes, draw, draw_scan
 from barnwright.plot.labels import density_label, observable_label, reaction_label
 from barnwright.plot.panels import Series, draw_bins, draw_curve, draw_map
 from barnwright.plot.scales import axis_scale, centres, value_scale
@@ -109,6 +110,59 @@ def test_curve_of_a_scan() -> None:
     draw_curve(axes, places, [Series("a", 1e4 / places**2, 0.1 / places), Series("b", 2e4 / places**2, 0.1 / places)])
     assert (axes.get_xscale(), axes.get_yscale()) == ("log", "log")
     assert len(axes.lines) == 2
+
+
+def test_map_without_any_value_can_be_drawn() -> None:
+    """A histogram in which nothing passed gives an empty picture, not an error."""
+    figure, (axes,) = backend.blank(1)
+    draw_map(figure, axes, (np.linspace(0.0, 1.0, 3), np.linspace(0.0, 1.0, 3)), np.zeros((2, 2)), "label")
+    assert backend.encode(figure, "png").startswith(b"\x89PNG")
+
+
+@pytest.mark.parametrize(
+    ("over", "message"),
+    [
+        ({"a.b": [1.0], "c.d": [1.0], "e.f": [1.0]}, r"over: got 3 keys, expected one or two keys"),
+        ({"parameters.scheme": ["alpha", "fermi"]}, r"over\.parameters\.scheme: got 'alpha', expected numbers"),
+    ],
+)
+def test_scans_that_cannot_be_drawn(over: dict[str, list[object]], message: str) -> None:
+    """More than two keys, and words along an axis, are refused."""
+    with pytest.raises(RequestError, match=message):
+        check_axes(over)
+
+
+def test_scan_over_two_keys_is_curves_or_a_map() -> None:
+    """A second key with few values becomes lines of one picture, with many values a map."""
+    few = {"beams.sqrt_s": [1.0, 2.0, 3.0], "parameters.scheme": ["alpha", "fermi"]}
+    lines = draw_scan(np.arange(1.0, 7.0), np.zeros(6), few, "pb", "title").axes[0]
+    assert [line.get_ydata().tolist() for line in lines.lines] == [[1.0, 3.0, 5.0], [2.0, 4.0, 6.0]]
+    many = {"beams.energies.e-": [1.0, 2.0], "masses.mu-": [0.1 * number for number in range(9)]}
+    cells = draw_scan(np.arange(1.0, 19.0), np.zeros(18), many, "pb", "title").axes[0]
+    assert cells.get_xlabel() == "$E$ of $e^{-}$ [GeV]"
+    assert cells.get_ylabel() == r"$m$ of $\mu^{-}$ [GeV]"
+    assert cells.collections[0].get_array().shape == (9, 2)
+
+
+def test_prediction_is_drawn_with_its_variations() -> None:
+    """Every histogram has a panel, one- and two-dimensional, with the variations as further lines."""
+    prediction = barnwright.predict(
+        process="qed/muon-pair",
+        beams={"kind": "collider", "sqrt_s": 10.0},
+        histograms=[
+            {"name": "angle", "observables": ["cos_theta(mu-)"], "bins": [{"count": 4, "low": -1, "high": 1}]},
+            {
+                "name": "map",
+                "observables": ["cos_theta(mu-)", "pt(mu-)"],
+                "bins": [{"count": 4, "low": -1, "high": 1}, {"count": 3, "low": 0, "high": 5}],
+            },
+        ],
+        variations=[{"name": "stronger", "parameters": {"alpha": 0.0078}}],
+    )
+    first, second = (axes for axes in draw(prediction).axes if axes.get_title())
+    assert first.get_ylabel() == r"$\mathrm{d}\sigma/\mathrm{d}\cos\,\theta(\mu^{-})$ [pb]"
+    assert [text.get_text() for text in first.get_legend().get_texts()] == ["as requested", "stronger"]
+    assert second.get_ylabel() == r"$p_\mathrm{T}(\mu^{-})$ [GeV]"
 
 
 def test_unknown_format_names_the_nearest() -> None:

@@ -37,7 +37,7 @@ def collide(beams: BeamSettings, masses: tuple[float, float]) -> Collision:
     """
     first = np.array(beams.first, dtype=float)[:, None]
     if beams.given == "sqrt_s":
-        return Collision(first, np.zeros_like(first), np.ones_like(first), beams.orientation, beams.target)
+        return Collision(first, np.zeros_like(first), np.ones_like(first), beams.orientation, None, True)
     second = np.array(beams.second, dtype=float)[:, None]
     m_a, m_b = masses
     p_a, p_b = (np.sqrt(t * (t + 2 * m)) for t, m in ((first, m_a), (second, m_b)))

@@ -52,7 +52,7 @@ def _description(description: ProcessDescription) -> Iterator[RenderableType]:
     if description.parameters:
         yield _parameters(description.parameters)
     if description.masses:
-        yield _masses(description.masses)
+        yield _masses(description.masses, (description.reaction or "").split())
     lists = {
         "observables": tuple(_with_unit(text, description.reaction) for text in description.observables),
         "derived quantities": description.derived,
@@ -103,8 +103,9 @@ def _parameters(parameters: Iterable[ParameterDescription]) -> Table:
     return table
 
 
-def _masses(masses: dict[str, float]) -> Table:
+def _masses(masses: dict[str, float], legs: list[str]) -> Table:
+    """In the order in which the legs stand in the reaction."""
     table = titled("masses", ("leg", "GeV"), numbers=False)
-    for name, mass in masses.items():
-        table.add_row(Text(name), Text(f"{mass:.10g}"))
+    for name in sorted(masses, key=lambda name: (legs.index(name) if name in legs else len(legs), name)):
+        table.add_row(Text(name), Text(f"{masses[name]:.10g}"))
     return table

@@ -56,8 +56,8 @@ __all__ = [
     "Variation",
     "checked",
     "completed",
-    "remainder_of",
     "merge",
+    "remainder_of",
     "split_key",
     "violations_of",
 ]

@@ -111,20 +111,25 @@ def _fill(values: dict[str, Any], path: Path, section: Path) -> bool:
     if len(section) != 2 or len(path) != 3 or path[2] == _TAG:
         return False
     harmless = {**_ENTRIES.get(str(path[0]), {}), "name": f"#{path[1]}"}
-    entry: Any = values[str(path[0])]
-    entry = entry[path[1]]
+    entry = _at(values, section)
     if path[2] not in harmless or not isinstance(entry, dict) or path[2] in entry:
         return False
     entry[path[2]] = harmless[str(path[2])]
     return True
 
 
+def _at(values: Any, path: Path) -> Any:
+    """What stands at the path; None where something above it was taken out already, or replaced."""
+    for part in path:
+        try:
+            values = values[part]
+        except (KeyError, IndexError, TypeError):
+            return None
+    return values
+
+
 def _delete(values: dict[str, Any], path: Path) -> bool:
-    holder: Any = values
-    for part in path[:-1]:
-        if isinstance(holder, dict) and part not in holder:
-            return False
-        holder = holder[part]
+    holder = _at(values, path[:-1])
     if not isinstance(holder, dict) or path[-1] not in holder:
         return False
     del holder[path[-1]]

@@ -7,6 +7,9 @@ until the answer settles.
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+from functools import partial
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -17,7 +20,7 @@ from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
 from barnwright.integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
 from barnwright.integrate.panels import panels_between
-from barnwright.integrate.polar_axis import Ends
+from barnwright.integrate.polar_axis import Ends, Integers
 from barnwright.integrate.roots import Crossings, crossings
 from barnwright.observables import Observable
 from barnwright.process import Process
@@ -30,7 +33,7 @@ DEEPEST = 10
 
 def over_azimuth(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
     """Totals, bins and asymmetries of every row, averaged over the azimuth where something depends on it."""
-    wanted = levels_by_observable(setting, layout)
+    wanted = levels_by_observable(setting.cuts, layout)
     if not any(observable.azimuthal for observable in wanted):
         return over_polar_angle(process, setting, layout, rows)
     answer = Answer.empty(rows.count, layout.components)
@@ -42,7 +45,7 @@ def over_azimuth(process: Process, setting: Setting, layout: Layout, rows: Rows)
 
 
 def _one_point(
-    process: Process, setting: Setting, layout: Layout, rows: Rows, wanted: dict[Observable, Array]
+    process: Process, setting: Setting, layout: Layout, rows: Rows, wanted: Mapping[Observable, Array]
 ) -> Answer:
     low, high = _azimuth_panels(rows, wanted)
     answer = Answer.empty(1, layout.components)
@@ -72,10 +75,10 @@ def _summed(values: Array, weights: Array) -> Array:
     return np.asarray(np.add.reduce(shaped * weights[:, None], axis=1))
 
 
-def _azimuth_panels(rows: Rows, wanted: dict[Observable, Array]) -> tuple[Array, Array]:
+def _azimuth_panels(rows: Rows, wanted: Mapping[Observable, Array]) -> tuple[Array, Array]:
     """Ends of the azimuth panels as shares of π, between −1 and 1."""
     parts = [
-        crossings(lambda _, ends, o=observable, e=entry: _at(rows, o, e, ends, 0.3), 1, levels)
+        crossings(partial(_turned, rows, observable, entry), 1, levels)
         for observable, levels in wanted.items()
         if observable.azimuthal and _azimuth_alone(rows, observable)
         for entry in range(observable.entries)
@@ -97,6 +100,12 @@ def _azimuth_alone(rows: Rows, observable: Observable) -> bool:
         np.array_equal(_at(rows, observable, e, ends, -0.6), _at(rows, observable, e, ends, 0.8))
         for e in range(observable.entries)
     )
+
+
+def _turned(rows: Rows, observable: Observable, entry: int, row: Integers, ends: Ends) -> Array:
+    """The observable as a function of the azimuth's location, at one polar angle."""
+    del row
+    return _at(rows, observable, entry, ends, 0.3)
 
 
 def _at(rows: Rows, observable: Observable, entry: int, ends: Ends, cosine: float) -> Array:

@@ -6,31 +6,33 @@ searched.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Mapping
+from functools import lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.engine.setting import Layout, Setting
+from barnwright.engine.setting import Layout
 from barnwright.integrate.extrema import EPSILON
 from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
 from barnwright.integrate.roots import Crossings, crossings
 from barnwright.kinematics import Collision
-from barnwright.observables import Observable
+from barnwright.observables import Cut, Observable
 
 Array = NDArray[np.float64]
 
 
-def levels_by_observable(setting: Setting, layout: Layout) -> dict[Observable, Array]:
+@lru_cache(maxsize=256)
+def levels_by_observable(cuts: tuple[Cut, ...], layout: Layout) -> Mapping[Observable, Array]:
     """Every value at which an answer changes: bin edges, cut thresholds, asymmetry points; sorted, each once."""
     found: dict[Observable, set[float]] = {}
-    for observable, values in _all_levels(setting, layout):
+    for observable, values in _all_levels(cuts, layout):
         found.setdefault(observable, set()).update(v for v in values if v is not None and np.isfinite(v))
     return {observable: np.array(sorted(values)) for observable, values in found.items()}
 
 
-def _all_levels(setting: Setting, layout: Layout) -> Iterator[tuple[Observable, tuple[float | None, ...]]]:
-    for cut in setting.cuts:
+def _all_levels(cuts: tuple[Cut, ...], layout: Layout) -> Iterator[tuple[Observable, tuple[float | None, ...]]]:
+    for cut in cuts:
         yield cut.observable, (cut.min, cut.max, *(cut.outside or ()))
     for histogram in layout.histograms:
         yield from zip(histogram.observables, histogram.edges, strict=True)
@@ -38,16 +40,11 @@ def _all_levels(setting: Setting, layout: Layout) -> Iterator[tuple[Observable, 
         yield asymmetry.observable, (asymmetry.at,)
 
 
-def is_polar(observable: Observable, collision: Collision) -> bool:
-    """Whether the observable is the polar angle of the cm, or its cosine, for this collision."""
+def is_polar(observable: Observable, lab_is_cm: bool) -> bool:
+    """Whether the observable is the polar angle of the cm, or its cosine; of the lab, where that is the cm."""
     if observable.axis is None or observable.quantifier is not None:
         return False
-    return observable.axis.frame.kind == "cm" or lab_is_cm(collision)
-
-
-def lab_is_cm(collision: Collision) -> bool:
-    """Whether the lab is the cm at every point."""
-    return collision.target is None and bool(np.all(collision.stretch == 1.0))
+    return lab_is_cm or observable.axis.frame.kind == "cm"
 
 
 def polar_sign(observable: Observable, orientation: int) -> int:
@@ -81,13 +78,13 @@ def polar_crossings(observable: Observable, orientation: int, levels: Array) -> 
         if observable.axis.folded:
             inside = np.concatenate([inside[inside >= 0], -inside[inside > 0]])
         forward = inside >= 0
-        x, wobble = 1.0 - np.abs(inside), np.zeros_like(inside)
+        x, wobble = 1.0 - np.abs(inside), np.zeros_like(inside)  # an edge is a float, and 1 − |edge| is exact
     side = np.where(forward == (sign > 0), FORWARD, BACKWARD)
-    return Crossings(np.zeros(x.size, dtype=np.intp), side, x, wobble + EPSILON * x, np.zeros(x.size, dtype=bool))
+    return Crossings(np.zeros(x.size, dtype=np.intp), side, x, wobble, np.zeros(x.size, dtype=bool))
 
 
 def axis_crossings(
-    wanted: dict[Observable, Array],
+    wanted: Mapping[Observable, Array],
     collision: Collision,
     values: Callable[[Observable, Integers, Ends], Array],
     rows: int,
@@ -102,7 +99,7 @@ def axis_crossings(
     parts: list[Crossings] = []
     shared: list[Crossings] = []
     for observable, levels in wanted.items():
-        if is_polar(observable, collision):
+        if is_polar(observable, collision.lab_is_cm):
             shared.append(polar_crossings(observable, collision.orientation, levels))
         else:
             parts.extend(_searched(observable, levels, values, rows))
@@ -125,7 +122,10 @@ def _searched(
 
 def _for_every_row(shared: Crossings, rows: int) -> Crossings:
     count = shared.x.size
-    side, x, uncertainty, grazing = (
-        np.tile(a, rows) for a in (shared.side, shared.x, shared.uncertainty, shared.grazing)
+    return Crossings(
+        np.repeat(np.arange(rows), count),
+        np.tile(shared.side, rows),
+        np.tile(shared.x, rows),
+        np.tile(shared.uncertainty, rows),
+        np.tile(shared.grazing, rows),
     )
-    return Crossings(np.repeat(np.arange(rows), count), side, x, uncertainty, grazing)

@@ -7,9 +7,9 @@ from collections.abc import Callable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.engine.setting import HistogramPlan, Layout, Setting
+from barnwright.engine.setting import HistogramPlan, Layout
 from barnwright.integrate.polar_axis import Integers
-from barnwright.observables import Observable
+from barnwright.observables import Cut, Observable
 
 Array = NDArray[np.float64]
 Valuation = Callable[[Observable], Array]
@@ -18,10 +18,10 @@ Valuation = Callable[[Observable], Array]
 OUTSIDE = -1
 
 
-def passes(setting: Setting, values: Valuation) -> NDArray[np.bool_]:
+def passes(cuts: tuple[Cut, ...], values: Valuation) -> NDArray[np.bool_]:
     """Whether panels pass all cuts; shape (row or 1, panel), or a scalar True without cuts."""
     result = np.ones((1, 1), dtype=bool)
-    for cut in setting.cuts:
+    for cut in cuts:
         result = result & cut.accepts(values(cut.observable))
     return result
 

@@ -23,7 +23,7 @@ from barnwright.integrate.estimate import Rule
 from barnwright.integrate.ledger import Frozen
 from barnwright.reaction import Reaction
 
-NODES_A_BLOCK = 30_000
+NODES_A_BLOCK = 100_000
 
 
 @dataclass(frozen=True, slots=True)
@@ -123,7 +123,7 @@ class Plan:
 
     def ranges(self) -> Iterator[tuple[int, int]]:
         """Ranges of points of about `NODES_A_BLOCK` nodes each."""
-        nodes = 5 * (2 * self.layout.components + 8)
+        nodes = 5 * (self.layout.components + 8)
         step = max(1, NODES_A_BLOCK // nodes)
         for start, stop in zip(self.starts, self.starts[1:], strict=False):
             for first in range(start, stop, step):

@@ -6,20 +6,19 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.engine.answer import Answer
-from barnwright.engine.edges import axis_crossings, levels_by_observable
 from barnwright.engine.integrand import Integrand
 from barnwright.engine.law import cumulative
-from barnwright.engine.membership import OUTSIDE, memberships, passes
+from barnwright.engine.partition import Partition, add_panels, partition_of
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
 from barnwright.event import Point
 from barnwright.integrate.extrema import EPSILON
-from barnwright.integrate.panels import Panels, panels_between
-from barnwright.integrate.polar_axis import Ends, Integers
+from barnwright.integrate.panels import Panels
+from barnwright.integrate.polar_axis import Ends
 from barnwright.integrate.quadrature import PanelIntegrals, integrate_panels
 from barnwright.integrate.tally import WorstPoint
 from barnwright.kinematics import CM
-from barnwright.observables import Observable, compile_observable
+from barnwright.observables import compile_observable
 from barnwright.process import Process
 
 Array = NDArray[np.float64]
@@ -30,15 +29,13 @@ SMALL_SHARE = 1e-4
 
 def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
     """Totals, bins and asymmetries of every row."""
-    wanted = levels_by_observable(setting, layout)
-    found, given_for = axis_crossings(wanted, rows.collision, rows.values, rows.count)
-    panels = panels_between(found, given_for)
+    partition = partition_of(setting, layout, rows)
     integrand = Integrand(process, setting, rows, process.parameters_of(setting.parameters))
     if setting.rule == "closed_form":
-        integrals = _closed_form(integrand, panels)
+        integrals = _closed_form(integrand, partition.panels)
     else:
-        integrals = integrate_panels(integrand.density(), panels, integrand.scales(), rows.count)
-    return _collected(integrals, panels, setting, layout, rows)
+        integrals = integrate_panels(integrand.density(), partition.panels, integrand.scales(), rows.count)
+    return _collected(integrals, partition, layout, rows)
 
 
 def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
@@ -90,26 +87,18 @@ def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
     return own.values(observable, None, ends)
 
 
-def _collected(integrals: PanelIntegrals, panels: Panels, setting: Setting, layout: Layout, rows: Rows) -> Answer:
+def _collected(integrals: PanelIntegrals, partition: Partition, layout: Layout, rows: Rows) -> Answer:
     """Add the panels up into components."""
-    middle = panels.middle()
-    known: dict[Observable, Array] = {}
-
-    def values(observable: Observable) -> Array:
-        if observable not in known:
-            known[observable] = rows.values(observable, None, middle)
-        return known[observable]
-
-    answer = Answer.empty(rows.count, layout.components)
+    panels, answer = partition.panels, Answer.empty(rows.count, layout.components)
     heights = _boundary_heights(integrals, panels)
-    for component in memberships(layout, values, passes(setting, values)):
-        _add(answer.value, component, integrals.value)
-        _add(answer.error, component, integrals.error)
+    for component in partition.components:
+        add_panels(answer.value, component, integrals.value)
+        add_panels(answer.error, component, integrals.error)
         if heights is not None:
             whole = np.broadcast_to(component, (component.shape[0], panels.side.size))
             slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, panels.graze) * heights
-            _add(answer.error, whole[:, 1:], slack)
-            _add(answer.error, whole[:, :-1], slack)
+            add_panels(answer.error, whole[:, 1:], slack)
+            add_panels(answer.error, whole[:, :-1], slack)
     return Answer(
         answer.value,
         answer.error,
@@ -119,16 +108,6 @@ def _collected(integrals: PanelIntegrals, panels: Panels, setting: Setting, layo
         integrals.unresolved,
         _worst(integrals, rows),
     )
-
-
-def _add(target: Array, component: Integers, amounts: Array) -> None:
-    """target[row, component] += amounts, in the order of the panels; OUTSIDE is left away."""
-    rows, components = target.shape
-    shape = np.broadcast_shapes(amounts.shape, component.shape, (rows, 1))
-    component, amounts = np.broadcast_to(component, shape), np.broadcast_to(amounts, shape)
-    flat = np.where(component == OUTSIDE, components, component) + (components + 1) * np.arange(rows)[:, None]
-    summed = np.bincount(flat.ravel(), weights=amounts.ravel(), minlength=rows * (components + 1))
-    target += summed.reshape(rows, components + 1)[:, :components]
 
 
 def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:

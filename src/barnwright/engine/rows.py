@@ -53,12 +53,18 @@ class Rows:
 
     def _reshaped(self, flat: Integers, shape: tuple[int, ...]) -> Collision:
         whole = self.collision
-        taken = [a[flat, 0].reshape(shape) for a in (whole.sqrt_s, whole.correction, whole.stretch)]
-        return Collision(*taken, whole.orientation, whole.target)
+        return Collision(
+            whole.sqrt_s[flat, 0].reshape(shape),
+            whole.correction[flat, 0].reshape(shape),
+            whole.stretch[flat, 0].reshape(shape),
+            whole.orientation,
+            whole.target,
+            whole.lab_is_cm,
+        )
 
     def values(self, observable: Observable, row: Integers | None, ends: Ends) -> Array:
         """An observable at locations on the polar axis, entries first where it has a quantifier."""
-        if is_polar(observable, self.collision):
+        if is_polar(observable, self.collision.lab_is_cm):
             return polar_values(observable, self.collision.orientation, ends)
         with np.errstate(all="ignore"):
             return observable.values(self.event(row, ends))

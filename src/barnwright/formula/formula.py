@@ -9,7 +9,8 @@ Rules of this file
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+import operator
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Any
 
@@ -69,21 +70,7 @@ def _step(operation: str, arguments: tuple[Any, ...], values: list[Any], given: 
 
 
 def _operated(operation: str, operands: list[Any]) -> Any:
-    match operation:
-        case "+":
-            return operands[0] + operands[1]
-        case "-":
-            return operands[0] - operands[1]
-        case "*":
-            return operands[0] * operands[1]
-        case "/":
-            return operands[0] / operands[1]
-        case "negative":
-            return -operands[0]
-        case "**":
-            return power(operands[0], operands[1])
-        case _:
-            return ELEMENTARY[operation](operands[0])
+    return (_ARITHMETIC.get(operation) or ELEMENTARY[operation])(*operands)
 
 
 def power(base: Any, exponent: Any) -> Any:
@@ -99,12 +86,22 @@ def power(base: Any, exponent: Any) -> Any:
     return result if exponent >= 0 else 1.0 / result
 
 
+_ARITHMETIC: dict[str, Callable[..., Any]] = {
+    "+": operator.add,
+    "-": operator.sub,
+    "*": operator.mul,
+    "/": operator.truediv,
+    "negative": operator.neg,
+    "**": power,
+}
+
+
 def _invariant_mass(event: Event, legs: tuple[Any, ...]) -> Array:
     square: Any = sum(event.mass(leg) ** 2 for leg in legs)
     for k, first in enumerate(legs):
         for second in legs[k + 1 :]:
             square = square + 2 * event.dot(first, second)
-    return np.sqrt(np.maximum(square, 0.0))
+    return np.asarray(np.sqrt(np.maximum(square, 0.0)))
 
 
 _OF_LEGS = {

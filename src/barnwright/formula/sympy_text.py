@@ -3,7 +3,7 @@ functions of symbols that are named like legs."""
 
 from __future__ import annotations
 
-from typing import Any
+from typing import Any, NoReturn
 
 from barnwright.formula.errors import FormulaError
 from barnwright.formula.language import ELEMENTARY, OF_LEGS
@@ -27,20 +27,31 @@ def text_of(expression: Any) -> str:
 def _text(node: Any, sympy: Any) -> str:
     if node.is_Symbol:
         return str(node.name)
-    if node is sympy.pi:
-        return "pi"
-    if node.is_Rational and not node.is_Integer:
-        return f"({node.p}/{node.q})"
-    if node.is_Number and node.is_finite:
-        return f"({float(node)!r})" if not node.is_Integer else f"({int(node)})"
-    if node is sympy.E:
-        return "exp(1)"
+    if node.is_number and not node.args:
+        return _number(node, sympy)
     if node.is_Add or node.is_Mul:
         return "(" + (" + " if node.is_Add else " * ").join(_text(a, sympy) for a in node.args) + ")"
     if node.is_Pow:
         return f"({_text(node.base, sympy)})**({_text(node.exp, sympy)})"
+    return _function(node, sympy)
+
+
+def _number(node: Any, sympy: Any) -> str:
+    words = {sympy.pi: "pi", sympy.E: "exp(1)"}
+    if node in words:
+        return words[node]
+    if node.is_Rational:
+        return f"({node.p}/{node.q})" if node.q != 1 else f"({node.p})"
+    return f"({float(node)!r})" if node.is_Float else _refuse(node)
+
+
+def _function(node: Any, sympy: Any) -> str:
     name = {"Abs": "abs"}.get(type(node).__name__, type(node).__name__)
-    if name in ELEMENTARY or name in OF_LEGS:
-        return f"{name}({', '.join(_text(a, sympy) for a in node.args)})"
+    if name not in ELEMENTARY and name not in OF_LEGS:
+        _refuse(node)
+    return f"{name}({', '.join(_text(a, sympy) for a in node.args)})"
+
+
+def _refuse(node: Any) -> NoReturn:
     expected = f"numbers, symbols, + * ** and the functions {', '.join((*OF_LEGS, *ELEMENTARY))}"
     raise FormulaError(str(node), (Finding(0, expected),))

@@ -104,7 +104,7 @@ class _Parser:
             self.scanner.demand(")", "a closing parenthesis")
             return inner
         found = f", not {show(token.text)}" if token.text else ""
-        self.scanner.fail(f"a number, a name or a parenthesis{found}", position=token.position)
+        raise self.scanner.refusal(f"a number, a name or a parenthesis{found}", position=token.position)
 
     def named(self, word: Token) -> Node:
         if self.scanner.peek().kind == "(":

@@ -42,8 +42,11 @@ class Scanner:
 
     def fail(self, expected: str, nearest: str | None = None, position: int | None = None) -> NoReturn:
         """Refuse the text at a position, by default here."""
-        place = self.at if position is None else position
-        raise GrammarError(self.text, (Finding(place, expected, nearest),))
+        raise self.refusal(expected, nearest, position)
+
+    def refusal(self, expected: str, nearest: str | None = None, position: int | None = None) -> GrammarError:
+        """The error that refuses the text at a position, by default here."""
+        return GrammarError(self.text, (Finding(self.at if position is None else position, expected, nearest),))
 
     def peek(self) -> Token:
         """The next token of an expression, not yet taken."""
@@ -57,7 +60,7 @@ class Scanner:
             match = pattern.match(self.text, self.at)
             if match is not None:
                 return Token(kind, match[0], self.at)
-        self._refuse_character()
+        raise self._of_character()
 
     def take(self) -> Token:
         """The next token of an expression."""
@@ -115,9 +118,11 @@ class Scanner:
         while self.at < len(self.text) and self.text[self.at] in " \t\n\r":
             self.at += 1
 
-    def _refuse_character(self) -> NoReturn:
+    def _of_character(self) -> GrammarError:
         character = self.text[self.at]
         if not character.isascii():
-            self.fail(f"plain letters, digits and + - * / ( ); {show(character)} is U+{ord(character):04X}")
+            return self.refusal(f"plain letters, digits and + - * / ( ); {show(character)} is U+{ord(character):04X}")
         nearest = "**" if character == "^" else None
-        self.fail(f"a number, a name or one of + - * / ** ( ); {show(character)} has no meaning here", nearest)
+        return self.refusal(
+            f"a number, a name or one of + - * / ** ( ); {show(character)} has no meaning here", nearest
+        )

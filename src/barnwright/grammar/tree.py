@@ -72,7 +72,7 @@ class FrameName:
 
 @dataclass(frozen=True, slots=True)
 class Call:
-    """A function with its arguments: expressions, or legs and selections; ``frame`` and ``of`` where they were given."""
+    """A function with its arguments: expressions, or legs and selections; ``frame`` and ``of`` where given."""
 
     function: str
     arguments: tuple[Node | LegName | Selection, ...]

@@ -45,8 +45,8 @@ class Extrema:
         """Which extrema meet a level within rounding, and the values with those extrema put on the near side of it."""
         if levels.size == 0 or self.value.size == 0:
             return np.zeros(self.value.size, dtype=bool), self.value
-        right = np.clip(np.searchsorted(levels, self.value), 1, max(levels.size - 1, 1))
-        left, right = levels[right - 1], levels[np.minimum(right, levels.size - 1)]
+        place = np.clip(np.searchsorted(levels, self.value), 1, max(levels.size - 1, 1))
+        left, right = levels[place - 1], levels[np.minimum(place, levels.size - 1)]
         nearest = np.where(np.abs(self.value - left) < np.abs(self.value - right), left, right)
         touching = np.abs(self.value - nearest) <= SAME * np.abs(nearest)
         inner = np.where(self.sign > 0, np.nextafter(nearest, -np.inf), nearest)

@@ -80,10 +80,11 @@ def panels_between(found: Crossings, rows: int) -> Panels:
 
 def _at_centre(found: Crossings, rows: int) -> tuple[Array, Array]:
     """Uncertainties of crossings that lie in the middle of the axis, crossed and grazed, shape (row, 1)."""
-    slack = np.zeros((2, rows, 1))
-    here = found.x >= 1
-    np.maximum.at(slack, (found.grazing[here].astype(int), found.row[here], 0), found.uncertainty[here])
-    return slack[0], slack[1]
+    wobble, graze = np.zeros(rows), np.zeros(rows)
+    for slack, kind in ((wobble, ~found.grazing), (graze, found.grazing)):
+        here = (found.x >= 1) & kind
+        np.maximum.at(slack, found.row[here], found.uncertainty[here])
+    return wobble[:, None], graze[:, None]
 
 
 def _sorted_by_row(found: Crossings, rows: int, side: int) -> tuple[Array, tuple[Array, Array]]:

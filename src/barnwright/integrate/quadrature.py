@@ -19,6 +19,8 @@ from barnwright.integrate.panels import Panels
 from barnwright.integrate.polar_axis import Ends, Integers, ends_of
 
 Array = NDArray[np.float64]
+Located = tuple[int, float, float]
+"""A row, and 1 − c and 1 + c."""
 Density = Callable[[Integers | None, Ends], Array]
 """``density(rows, ends)``: rows None means all of them, ends (row or 1, node); else one row number a line of ends."""
 
@@ -51,6 +53,11 @@ class PanelIntegrals:
     worst: tuple[int, float, float, float] | None = None
     unresolved: int = 0
 
+    @property
+    def clean(self) -> bool:
+        """Whether the density was finite and not below 0 at every node."""
+        return not (self.non_finite or self.negative)
+
 
 @dataclass(frozen=True, slots=True)
 class _Pieces:
@@ -68,9 +75,8 @@ class _Pieces:
 
     def halved(self) -> _Pieces:
         middle = 0.5 * (self.low + self.high)
-        twice = [np.concatenate([a, a]) for a in (self.row, self.panel, self.side)]
-        low, high = np.concatenate([self.low, middle]), np.concatenate([middle, self.high])
-        return _Pieces(*twice, low, high, np.concatenate([self.scale, self.scale]))
+        twice = self.take(np.tile(np.arange(self.row.size), 2))
+        return replace(twice, low=np.concatenate([self.low, middle]), high=np.concatenate([middle, self.high]))
 
 
 def to_map(x: Array, scale: Array) -> Array:
@@ -111,24 +117,29 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
     flat = Ends(*(e.reshape(e.shape[0], -1) for e in ends))
     values = np.broadcast_to(density(None, flat), (rows, flat.one_plus.shape[1]))
     values = values.reshape(rows, *x.shape[1:]) * (slope * np.abs(span))
-    fine, coarse = _weighted(values, weights), _weighted(values, embedded_weights())
-    size = _weighted(np.abs(values), weights)
-    error = np.abs(fine - coarse)
+    fine = _weighted(values, weights)
+    error = np.abs(_weighted(values, weights - embedded_weights()))
     result = PanelIntegrals(fine, error, values.size)
-    result = _inspected(
-        result, values, lambda i: (int(i[0]), *(float(e[min(i[0], len(e) - 1), i[1], i[2]]) for e in ends))
-    )
+
+    def located(bad: Integers) -> Located:
+        row, node, panel = bad
+        shared = min(row, ends.one_plus.shape[0] - 1)
+        return int(row), float(ends.one_minus[shared, node, panel]), float(ends.one_plus[shared, node, panel])
+
+    result = _inspected(result, values, located)
+    size = fine if result.clean else _weighted(np.abs(values), weights)
     todo = np.nonzero(error > TOLERANCE * size)
     if todo[0].size:
         shape = (rows, panels.side.size)
-        pieces = _Pieces(*todo, panels.side[todo[1]], *(np.broadcast_to(a, shape)[todo] for a in (left, right, scale)))
+        low, high, width = (np.broadcast_to(a, shape)[todo] for a in (left, right, scale))
+        pieces = _Pieces(todo[0], todo[1], panels.side[todo[1]], low, high, width)
         result = _refined(density, pieces, result)
     return replace(result, error=result.error + ROUNDING * np.abs(result.value))
 
 
 def _weighted(values: Array, weights: Array) -> Array:
     """The weighted sum over the middle axis, node by node in a fixed order, so that bits never depend on the batch."""
-    total = values[:, 0] * weights[0]
+    total: Array = values[:, 0] * weights[0]
     for k in range(1, weights.size):
         if weights[k]:
             total += values[:, k] * weights[k]
@@ -181,13 +192,16 @@ def _evaluated(
     ends = ends_of(np.broadcast_to(pieces.side[:, None], x.shape), x)
     values = np.broadcast_to(density(pieces.row, ends), x.shape) * (slope * np.abs(span))
     counted = replace(result, evaluations=result.evaluations + values.size)
-    counted = _inspected(counted, values, lambda i: (int(pieces.row[i[0]]), *(float(e[i[0], i[1]]) for e in ends)))
+
+    def located(bad: Integers) -> Located:
+        piece, node = bad
+        return int(pieces.row[piece]), float(ends.one_minus[piece, node]), float(ends.one_plus[piece, node])
+
+    counted = _inspected(counted, values, located)
     return np.add.reduce(values * weights, axis=1), np.add.reduce(np.abs(values) * weights, axis=1), counted
 
 
-def _inspected(
-    result: PanelIntegrals, values: Array, where: Callable[[Array], tuple[int, float, float]]
-) -> PanelIntegrals:
+def _inspected(result: PanelIntegrals, values: Array, where: Callable[[Integers], Located]) -> PanelIntegrals:
     """Count what is not finite or negative, and remember the first such node."""
     if values.size and np.min(values) >= 0 and np.max(values) < np.inf:
         return result

@@ -35,6 +35,8 @@ class Collision:
         +1 when beam a moves along +z in the centre of mass, −1 when beam b does.
     target : int or None
         The leg code (−1 or −2) of the incoming particle at rest in the lab.
+    lab_is_cm : bool
+        Whether the lab is the cm by the way the beams were given, at every point.
     """
 
     sqrt_s: Array
@@ -42,6 +44,7 @@ class Collision:
     stretch: Array
     orientation: int = 1
     target: int | None = None
+    lab_is_cm: bool = False
 
     @property
     def s(self) -> Array:
@@ -64,12 +67,11 @@ class Collision:
 
     def take(self, points: Any) -> Collision:
         """The collision of the chosen points (an index array, or a slice)."""
-        return Collision(
-            self.sqrt_s[points], self.correction[points], self.stretch[points], self.orientation, self.target
-        )
+        taken = (self.sqrt_s[points], self.correction[points], self.stretch[points])
+        return Collision(*taken, self.orientation, self.target, self.lab_is_cm)
 
     def facing_a(self) -> Collision:
         """The same collision seen with +z along beam a."""
         if self.orientation == 1:
             return self
-        return Collision(self.sqrt_s, self.correction, 1.0 / self.stretch, 1, self.target)
+        return Collision(self.sqrt_s, self.correction, 1.0 / self.stretch, 1, self.target, self.lab_is_cm)

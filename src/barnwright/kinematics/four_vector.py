@@ -126,4 +126,5 @@ def boost_to_rest(vector: FourVector, system: FourVector) -> FourVector:
     new_energy = (energy * own[0] - along) / mass
     factor = (own[0] + new_energy) / (energy + mass)
     moved = [q - p * factor for p, q in zip(momentum, own[1:], strict=True)]
-    return FourVector.from_components(new_energy, *moved, mass=vector.mass)
+    px, py, pz = moved
+    return FourVector.from_components(new_energy, px, py, pz, vector.mass)

@@ -114,7 +114,7 @@ class TwoBody:
         """(p_first − p_second)² in GeV²."""
         if (first < 0) == (second < 0):
             m, n = self._masses[first], self._masses[second]
-            return np.square((m - n) * (m + n) / self.sqrt_s) - 4 * np.square(self._momentum(first))
+            return np.asarray(np.square((m - n) * (m + n) / self.sqrt_s) - 4 * np.square(self._momentum(first)))
         beam, leg = min(first, second), max(first, second)
         energies, momenta = self._energy_difference(beam, leg), self._momentum_difference
         ceiling = (energies - momenta) * (energies + momenta)

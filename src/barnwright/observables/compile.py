@@ -13,7 +13,7 @@ from barnwright.observables.observable import AxisForm, Observable
 from barnwright.observables.resolve import Resolver, depth_of
 from barnwright.observables.rows import ROWS
 from barnwright.observables.tree import Each, Leaf, Operation, Tree, leaves, with_leg
-from barnwright.observables.units import UnitMismatch, dimension_of
+from barnwright.observables.units import UnitMismatchError, dimension_of
 from barnwright.reaction import Reaction
 
 DEEPEST = 200
@@ -43,7 +43,7 @@ def compile_observable(text: str, reaction: Reaction, numbered: bool = False) ->
     quantifier = resolver.quantifier
     try:
         unit = str(dimension_of(tree))
-    except UnitMismatch as error:
+    except UnitMismatchError as error:
         expected = f"quantities of one unit in a sum or comparison, not {error}"
         raise ObservableError(text, (Finding(0, expected),)) from None
     return Observable(

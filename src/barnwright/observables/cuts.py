@@ -1,7 +1,7 @@
 """Cuts: an observable and where it has to lie.
 
-``min <= value <= max`` passes, and so does what lies below or above the crack, its ends included. Of ``each(…)`` every value
-has to pass, of ``any(…)`` one.
+``min <= value <= max`` passes, and so does what lies below or above the crack, its ends included. Of ``each(…)``
+every value has to pass, of ``any(…)`` one.
 """
 
 from __future__ import annotations
@@ -42,4 +42,4 @@ class Cut:
             inside &= (values <= self.outside[0]) | (values >= self.outside[1])
         if self.observable.quantifier is None:
             return inside
-        return inside.any(axis=0) if self.observable.quantifier == "any" else inside.all(axis=0)
+        return np.asarray(inside.any(axis=0) if self.observable.quantifier == "any" else inside.all(axis=0))

@@ -42,7 +42,7 @@ def _of_leading(leaf: Leaf, place: int, leading: Leading, event: Event) -> Array
         legs = (*leaf.legs[:place], code, *leaf.legs[place + 1 :])
         found.append(_leaf(Leaf(leaf.function, legs, leaf.frame, leaf.of), event))
     stacked = np.stack(np.broadcast_arrays(*found, ranked)[:-1])
-    return np.take_along_axis(stacked, np.broadcast_to(ranked, stacked.shape[1:])[None], axis=0)[0]
+    return np.asarray(np.take_along_axis(stacked, np.broadcast_to(ranked, stacked.shape[1:])[None], axis=0)[0])
 
 
 def _vectors(leaf: Leaf, event: Event) -> list[FourVector]:
@@ -181,9 +181,9 @@ _ROWS: dict[str, Callable[[Leaf, Event], Array]] = {
     "delta_rapidity": _difference("rapidity"),
     "delta_r": _delta_r,
     "helicity_angle": _helicity_angle,
-    "sqrt_s": lambda leaf, event: event.sqrt_s,
+    "sqrt_s": lambda _, event: event.sqrt_s,
     "thrust": _thrust,
-    "deg": lambda leaf, event: np.asarray(np.pi / 180),
+    "deg": lambda _leaf, _event: np.asarray(np.pi / 180),
 }
 
 _OPERATIONS: dict[str, Callable[..., Array]] = {

@@ -2,8 +2,10 @@
 
 Rules of this file
 ------------------
-- GeV and rad. A row with ``frame`` takes the keyword frame = lab, cm or rest(…); the default is the lab unless it says cm.
-- `Shape` says what the arguments are: one particle, two, several, a beam and a particle, a particle within a system, none.
+- GeV and rad. A row with ``frame`` takes the keyword frame = lab, cm or rest(…); the default is the lab unless it
+  says cm.
+- `Shape` says what the arguments are: one particle, two, several, a beam and a particle, a particle within a system,
+  none.
 """
 
 from __future__ import annotations

@@ -30,12 +30,12 @@ class Dimension:
         return " ".join(_factor(name, power) for name, power in (("GeV", self.gev), ("rad", self.rad)) if power)
 
 
-class UnitMismatch(ValueError):
+class UnitMismatchError(ValueError):
     """Two quantities of different units in one sum; `first` and `second` are the units."""
 
     def __init__(self, first: Dimension, second: Dimension) -> None:
         self.first, self.second = first, second
-        super().__init__(f"{first or 'a pure number'} and {second or 'a pure number'}")
+        super().__init__(f"{str(first) or 'a pure number'} and {str(second) or 'a pure number'}")
 
 
 _OF_ROW = {
@@ -51,7 +51,7 @@ def dimension_of(tree: Tree) -> Dimension:
 
     Raises
     ------
-    UnitMismatch
+    UnitMismatchError
         When different units are added or compared.
     """
     if isinstance(tree, Constant):
@@ -82,7 +82,7 @@ def _common(parts: list[Dimension]) -> Dimension:
     known = [part for part in parts if not part.free]
     for part in known[1:]:
         if part != known[0]:
-            raise UnitMismatch(known[0], part)
+            raise UnitMismatchError(known[0], part)
     return known[0] if known else parts[0]
 
 

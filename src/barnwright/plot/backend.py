@@ -28,7 +28,6 @@ _STYLE: dict[str, Any] = {
     "ytick.direction": "in",
     "xtick.top": True,
     "ytick.right": True,
-    "legend.frameon": False,
     "mathtext.fontset": "dejavusans",
     "svg.hashsalt": "barnwright",
     "svg.fonttype": "path",

@@ -87,6 +87,12 @@ def reaction_label(reaction: str) -> str:
     return rf"${before} \to {after}$"
 
 
+def leg_label(name: str) -> str:
+    """A particle or leg in its own letters, its name where it has none."""
+    letters = _leg(name)
+    return name if letters is None else f"${letters}$"
+
+
 def _leg(name: str) -> str | None:
     """The letters of a leg; None where it is not a plain leg (a frame, a selection, arithmetic)."""
     if name.isdigit() or name == "X":

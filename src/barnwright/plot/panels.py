@@ -48,12 +48,9 @@ def draw_map(figure: Any, axes: Any, sides: tuple[Array, Array], values: Array, 
     """
     from matplotlib.colors import LogNorm, Normalize
 
-    shown = np.ma.masked_invalid(values)
-    if value_scale(values) == "log":
-        shown = np.ma.masked_less_equal(shown, 0.0)
-        norm: Any = LogNorm(shown.min(), shown.max())
-    else:
-        norm = Normalize(shown.min(), shown.max())
+    shown = np.ma.masked_equal(np.ma.masked_invalid(values), 0.0)
+    span = (shown.min(), shown.max()) if shown.count() else (0.0, 1.0)
+    norm = LogNorm(*span) if value_scale(values) == "log" else Normalize(*span)
     axes.set_xscale(axis_scale(sides[0]))
     axes.set_yscale(axis_scale(sides[1]))
     mesh = axes.pcolormesh(*sides, shown.T, cmap=COLOUR_MAP, norm=norm, shading="auto", rasterized=True)
@@ -91,4 +88,4 @@ def _start_at_zero(axes: Any, series: Sequence[Series]) -> None:
 
 def _legend(axes: Any, series: Sequence[Series]) -> None:
     if len(series) > 1:
-        axes.legend()
+        axes.legend(frameon=False)

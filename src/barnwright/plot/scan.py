@@ -9,6 +9,7 @@ import numpy as np
 
 from barnwright.errors import RequestError, Violation, show
 from barnwright.plot.backend import COLOURS, blank
+from barnwright.plot.labels import leg_label
 from barnwright.plot.panels import Series, draw_curve, draw_map
 from barnwright.plot.scales import Array
 
@@ -66,4 +67,8 @@ def key_label(key: str) -> str:
     """The axis label of a scanned key: symbols and GeV for the energies of beams and for masses, else the key."""
     if key in _ENERGIES:
         return f"{_ENERGIES[key]} [GeV]"
-    return f"{key} [GeV]" if key.startswith(("masses.", "beams.energies.")) else key
+    for table, letter in (("masses.", "m"), ("beams.energies.", "E")):
+        if key.startswith(table):
+            particle = leg_label(key.removeprefix(table).strip("\"'"))
+            return f"${letter}$ of {particle} [GeV]"
+    return key

@@ -11,6 +11,7 @@ import platform
 import sys
 from dataclasses import dataclass
 from functools import lru_cache
+from importlib import import_module
 
 import numpy as np
 
@@ -38,8 +39,7 @@ def provenance() -> Provenance:
         "python": ".".join(map(str, sys.version_info[:3])),
         "scipy": scipy.__version__,
     }
-    from numpy._core._multiarray_umath import __cpu_features__
-
-    features = ",".join(sorted(name for name, present in __cpu_features__.items() if present))
+    known: dict[str, bool] = import_module("numpy._core._multiarray_umath").__cpu_features__
+    features = ",".join(sorted(name for name, present in known.items() if present))
     text = "|".join([platform.machine(), sys.platform, features, *(f"{k}={v}" for k, v in sorted(versions.items()))])
     return Provenance(versions, hashlib.sha256(text.encode()).hexdigest()[:16])

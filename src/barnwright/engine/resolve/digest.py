@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import hashlib
 import json
-from dataclasses import asdict
 from typing import Any
 
 from barnwright.engine.plan import Group, ProcessSource
@@ -27,9 +26,10 @@ def plan_digest(source: ProcessSource, reaction: Reaction, layout: Layout, group
 
 
 def _setting(setting: Setting) -> list[Any]:
+    beams = setting.beams
     return [
         setting.name,
-        asdict(setting.beams),
+        [beams.given, beams.first, beams.second, beams.orientation, beams.target],
         setting.masses,
         setting.parameters,
         [_cut(cut) for cut in setting.cuts],

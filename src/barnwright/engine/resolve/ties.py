@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from barnwright.beams import collide
-from barnwright.engine.edges import lab_is_cm
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.setting import Layout, Setting
 from barnwright.observables import tied_selections
@@ -12,7 +11,7 @@ from barnwright.observables import tied_selections
 def check_ties(layout: Layout, settings: tuple[Setting, ...], findings: Findings) -> None:
     """Refuse leading(x, by="energy") where the lab is the cm: two identical bodies share their energy there exactly."""
     nominal = settings[0]
-    if not lab_is_cm(collide(nominal.beams, nominal.masses[:2])):
+    if not collide(nominal.beams, nominal.masses[:2]).lab_is_cm:
         return
     asked = [(f"cuts[{k}].observable", cut.observable) for k, cut in enumerate(nominal.cuts)]
     asked += [(f"histograms[{k}].observables", o) for k, h in enumerate(layout.histograms) for o in h.observables]
