@@ -38,7 +38,8 @@ demo: $(BUILT) $(FOR_DEMO)  ## Start a server, ask it for a prediction, print th
 test: $(BUILT) $(FOR_DEVELOPERS)  ## Run every group of tests against the built wheels (under 10 minutes on 2 cores)
 	@$(PY) tools/run_tests.py
 
-check: lint types imports dependencies stubs protos  ## Run the gates: style, types, rows of the house, dependencies, stubs, protos
+check:  ## Run the gates: style, types, rows of the house, dependencies, stubs, protos
+	@$(MAKE) --no-print-directory --keep-going lint types imports dependencies stubs protos
 
 lint: $(FOR_DEVELOPERS)
 	$(PY) -m ruff check
