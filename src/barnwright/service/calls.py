@@ -14,11 +14,11 @@ from barnwright.errors import PluginError, RequestError, ServerError, Violation,
 from barnwright.integrate.ledger import Ledger
 from barnwright.run.drive import Pace
 from barnwright.run.local import origin, run_record
+from barnwright.service.messages import EXECUTOR, prediction_message, scan_message, violations_message
 from barnwright.service.steps import Blocks, Credit, Light, Step, Steps
 from barnwright.wire import decode, encode, parse
 from barnwright.wire.v1 import service_pb2 as wire
 
-EXECUTOR = "server"
 SLICE = 16
 """Predictions in one message of a scan."""
 
@@ -50,33 +50,36 @@ def get_process(message: bytes, reply: Reply) -> Steps:
 def validate_request(message: bytes, reply: Reply) -> Steps:
     """What a request would mean and cost, or what is wrong with it."""
     try:
-        plan = yield from _plan(_document(parse(message, wire.ValidateRequestRequest)), None)
-        cost = {"points": plan.points, "components": _components(plan), "blocks": len(plan.round((), 0))}
-        answer: Mapping[str, Any] = {"request": plan.groups[0].request.canonical(), "cost": cost}
+        document = _document(parse(message, wire.ValidateRequestRequest))
+        answer = yield Light("validate", (document,), _process_of(document))
     except RequestError as error:
-        answer = {"violations": [_fields(violation) for violation in error.violations]}
-    reply(encode(answer, wire.ValidateRequestResponse).SerializeToString(), True)
+        answer = violations_message(error.violations)
+    reply(answer, True)
 
 
 def predict(message: bytes, reply: Reply) -> Steps:
-    """One prediction."""
-    answers = yield from _answers(_document(parse(message, wire.PredictRequest)), None)
-    answer = {"prediction": answers.prediction(0).model_dump(mode="json")}
-    reply(encode(answer, wire.PredictResponse).SerializeToString(), True)
+    """One prediction: a worker does all of it where that is little, else its blocks are handed out."""
+    started = perf_counter()
+    document = _document(parse(message, wire.PredictRequest))
+    found: bytes | Plan = yield Light("predict", (document,), _process_of(document))
+    if isinstance(found, Plan):
+        found = prediction_message((yield from _answers(found, started)))
+    reply(found, True)
 
 
 def scan(message: bytes, reply: Reply) -> Steps:
     """A prediction at every point, some in each message."""
+    started = perf_counter()
     asked = parse(message, wire.ScanRequest)
     over = {axis["key"]: axis["values"] for axis in _axes(asked)}
-    answers = yield from _answers(_document(asked), over)
-    points = answers.plan.points
-    for first in range(0, points, SLICE):
-        stop = min(first + SLICE, points)
-        some = [answers.prediction(point).model_dump(mode="json") for point in range(first, stop)]
+    document = _document(asked)
+    plan: Plan = yield Light("plan", (document, over), _process_of(document))
+    answers = yield from _answers(plan, started)
+    for first in range(0, plan.points, SLICE):
+        stop = min(first + SLICE, plan.points)
+        part = scan_message(answers, first, stop)
         yield Credit()
-        answer = {"first": first, "points": points, "predictions": some}
-        reply(encode(answer, wire.ScanResponse).SerializeToString(), stop == points)
+        reply(part, stop == plan.points)
 
 
 CALLS: Mapping[str, Call] = {
@@ -88,16 +91,8 @@ CALLS: Mapping[str, Call] = {
 }
 
 
-def _plan(document: Mapping[str, Any], over: Mapping[str, Any] | None) -> Generator[Step, Any, Plan]:
-    """Resolve a request where plugins' code may run. The plan comes with every default filled in."""
-    plan: Plan = yield Light("plan", (document, over), _process_of(document))
-    return plan
-
-
-def _answers(document: Mapping[str, Any], over: Mapping[str, Any] | None) -> Generator[Step, Any, Answers]:
-    """Resolve, calculate, assemble."""
-    started = perf_counter()
-    plan = yield from _plan(document, over)
+def _answers(plan: Plan, started: float) -> Generator[Step, Any, Answers]:
+    """Calculate and assemble; ``started`` is when the call's clock began."""
     ledger, stage = Ledger(plan.digest), plan.stage()
     pace = Pace(perf_counter, plan.groups[0].request.accuracy.max_seconds)
     calculation = calculate(plan, ledger)
@@ -138,11 +133,3 @@ def _require(message: Message, field: str, expected: str) -> None:
 def _process_of(document: Mapping[str, Any]) -> str:
     """Whom to blame if resolving hangs."""
     return str(document.get("process") or ", ".join(document.get("processes", ())) or "the formula")
-
-
-def _components(plan: Plan) -> int:
-    return plan.layout.components * len(plan.groups[0].settings)
-
-
-def _fields(violation: Violation) -> dict[str, Any]:
-    return {name: getattr(violation, name) for name in ("field", "value", "expected", "nearest", "position")}

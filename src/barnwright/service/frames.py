@@ -83,6 +83,14 @@ class Work:
 
 
 @dataclass(frozen=True, slots=True)
+class Resolved:
+    """On the way: the request was resolved, and now the functions of this process calculate."""
+
+    process: str
+    plugin: str
+
+
+@dataclass(frozen=True, slots=True)
 class Done:
     """What the task returned."""
 

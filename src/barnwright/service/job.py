@@ -80,7 +80,8 @@ class Job:
 
     def hung(self, task: Task, seconds: float) -> None:
         """A task was ended because it took too long."""
-        what = f"working out {task.block.name}" if task.block else "loading and checking"
+        block = task.block.name if task.block else "all points"
+        what = f"working out {block}" if task.is_calculating else "loading and checking"
         cause = f"{what} took longer than {seconds:g} s, so the worker was ended: one of its functions hangs"
         self.refuse(PluginError(task.plugin, task.process, cause))
 

@@ -11,7 +11,7 @@ from multiprocessing.context import ForkServerContext
 from time import monotonic
 
 from barnwright.engine import Stage
-from barnwright.service.frames import Work
+from barnwright.service.frames import Resolved, Work
 from barnwright.service.settings import Settings
 from barnwright.service.shelf import Shelf
 from barnwright.service.steps import Light
@@ -56,6 +56,11 @@ class Worker:
             message = Work("tally", (task.block, name, sent))
         with suppress(OSError):  # a worker that is gone shows at once as the end of its connection
             self.connection.send(message)
+
+    def resolved(self, message: Resolved) -> None:
+        """Its task has come so far that a law is at work: from now on it may take longer."""
+        if self.task is not None:
+            self.task.resolved, self.since = message, monotonic()
 
     def end(self) -> None:
         """End it now, whatever it does."""
@@ -125,7 +130,7 @@ class Pool:
             return float("inf")
         if not task.is_wanted:
             return self._limits.cancel_seconds
-        return self._limits.light_seconds if isinstance(task.step, Light) else self._limits.block_seconds
+        return self._limits.block_seconds if task.is_calculating else self._limits.light_seconds
 
     def overdue(self) -> list[Worker]:
         """Who has been at a task for too long."""

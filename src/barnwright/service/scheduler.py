@@ -15,7 +15,20 @@ from multiprocessing.connection import Connection
 from typing import Any
 
 from barnwright.service.calls import CALLS
-from barnwright.service.frames import Broken, Call, Cancel, Done, Failed, Fault, More, Ready, Refused, Reply, Stop
+from barnwright.service.frames import (
+    Broken,
+    Call,
+    Cancel,
+    Done,
+    Failed,
+    Fault,
+    More,
+    Ready,
+    Refused,
+    Reply,
+    Resolved,
+    Stop,
+)
 from barnwright.service.job import Job
 from barnwright.service.pool import Pool, Worker
 from barnwright.service.settings import Settings
@@ -100,6 +113,9 @@ class Scheduler:
             answer = worker.connection.recv()
         except (EOFError, OSError):
             self._lose(worker)
+            return
+        if isinstance(answer, Resolved):
+            worker.resolved(answer)
             return
         task, worker.task, worker.is_ready = worker.task, None, True
         if task is not None and task.is_wanted:

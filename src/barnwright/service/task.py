@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 from typing import TYPE_CHECKING, Any
 
 from barnwright.integrate.block import Block
+from barnwright.service.frames import Resolved
 from barnwright.service.steps import Blocks, Light
 
 if TYPE_CHECKING:
@@ -16,13 +17,14 @@ QUICK = 4
 """A round of at most so many blocks may use the light workers, where its process has just been resolved."""
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(slots=True, eq=False)
 class Task:
-    """A light task, or one block of a round, of a job."""
+    """A light task, or one block of a round, of a job; ``resolved`` once a light one has come so far."""
 
     job: Job
     step: Light | Blocks
     block: Block | None = None
+    resolved: Resolved | None = None
 
     @property
     def is_wanted(self) -> bool:
@@ -36,10 +38,15 @@ class Task:
 
     @property
     def plugin(self) -> str:
-        """The distribution that offers the process; for light tasks, before it is known, the plugin's name."""
+        """The distribution that offers the process; before it is known, the plugin's name."""
         if isinstance(self.step, Blocks):
             return self.step.stage.plan.source.distribution
-        return self.process.partition("/")[0]
+        return self.resolved.plugin if self.resolved else self.process.partition("/")[0]
+
+    @property
+    def is_calculating(self) -> bool:
+        """Whether a law is at work, and not a plugin being loaded and checked, or a request being resolved."""
+        return self.block is not None or self.resolved is not None
 
 
 @dataclass(slots=True)

@@ -35,7 +35,7 @@ def work(connection: Connection) -> None:
         except (EOFError, OSError):
             return
         try:
-            answer = Done(TASKS[task.task](*task.arguments))
+            answer = Done(TASKS[task.task](connection.send, *task.arguments))
         except BarnwrightError as error:
             answer = Refused(error)
         except BaseException:  # a plugin may raise anything, SystemExit too: the worker lives on
