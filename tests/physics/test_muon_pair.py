@@ -51,7 +51,7 @@ def test_total_by_two_methods(sqrt_s: float, method: str) -> None:
 
 
 def test_far_above_threshold() -> None:
-    """Massless, σ·s is 4πα²/3: its first digits are the 86.8 nb GeV² of the PDG Review's cross-section plots (memory)."""
+    """Massless, σ·s is 4πα²/3, which the PDG Review's cross-section plots quote as 86.8 nb GeV² (from memory)."""
     total = predict(100.0, masses={"mu-": 0.0, "e-": 0.0}).total
     assert f"{total.value * 100.0**2:.4f}".startswith("86.8")
     assert total.value * 100.0**2 == pytest.approx(4 * np.pi * ALPHA**2 / 3 * TO_NANOBARN, rel=1e-13)

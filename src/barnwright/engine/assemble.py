@@ -19,7 +19,7 @@ from barnwright.documents import Note as NoteDocument
 from barnwright.engine.derived import between_variations, point_asymmetries
 from barnwright.engine.histograms import HistogramForm, histogram_form
 from barnwright.engine.plan import Group, Plan
-from barnwright.engine.setting import Setting
+from barnwright.integrate.quadrature import COUNTED, DEEPEST, NON_FINITE
 from barnwright.integrate.settled import Settled
 from barnwright.units import from_natural
 
@@ -43,15 +43,29 @@ class Answers:
     ----------
     value, error : arrays, shape (point, variation, component), in the request's unit
         In the order of the scan.
+    counts : array, shape (point, 4)
+        What `COUNTED` names, of all variations of a point together.
     """
 
     plan: Plan
     value: Array
     error: Array
+    counts: Array
     settled: Settled
-    status: Status
+    verdict: Status
     origin: Origin
     run: Run
+
+    @property
+    def status(self) -> Status:
+        """The status of all points together."""
+        return "suspect" if self.counts[:, NON_FINITE:].any() else self.verdict
+
+    def status_of(self, point: int) -> Status:
+        """The status of one point: a fault at another point is not its own."""
+        if self.counts[point, NON_FINITE:].any():
+            return "suspect"
+        return "converged" if self.verdict == "suspect" else self.verdict
 
     def prediction(self, point: int) -> Prediction:
         """The prediction at one point of the scan."""
@@ -65,7 +79,7 @@ class Answers:
 
     @cached_property
     def _shared(self) -> tuple[_Shared, ...]:
-        return tuple(_Shared(self.plan, group, self.origin, self.settled) for group in self.plan.groups)
+        return tuple(_Shared(self.plan, group, self.origin) for group in self.plan.groups)
 
 
 def assemble(plan: Plan, settled: Settled, status: Status, origin: Origin, run: Run) -> Answers:
@@ -77,22 +91,24 @@ def assemble(plan: Plan, settled: Settled, status: Status, origin: Origin, run: 
         Sums in GeV⁻², shape (moment, point, variation, component), points in the order of the groups.
     """
     sums = settled.of(0, 0)
+    components = plan.layout.components
     order = np.argsort(np.concatenate([np.array(group.points, dtype=np.intp) for group in plan.groups]))
     factor = from_natural(plan.groups[0].request.unit)
-    value, error = sums.added[0][order] * factor, sums.added[1][order] * factor
-    doubtful = settled.counters.get("unresolved", 0) or settled.counters.get("negative", 0)
-    return Answers(plan, value, error, settled, "suspect" if doubtful else status, origin, run)
+    value, error = (sums.added[k, ..., :components][order] * factor for k in (0, 1))
+    counts = sums.added[0, ..., components:][order].sum(axis=1)
+    return Answers(plan, value, error, counts, settled, status, origin, run)
 
 
 class _Shared:
     """What all points of a group have in common."""
 
-    def __init__(self, plan: Plan, group: Group, origin: Origin, settled: Settled) -> None:
+    def __init__(self, plan: Plan, group: Group, origin: Origin) -> None:
         self.plan, self.group = plan, group
         self.unit = group.request.unit
         self.forms: list[HistogramForm] = [histogram_form(h, self.unit) for h in plan.layout.histograms]
         self.notes = tuple(NoteDocument.build(code=n.code, text=n.text) for n in group.notes)
         nominal = group.settings[0]
+        self.collision = collide(nominal.beams, nominal.masses[:2])
         self.fields: dict[str, Any] = {
             "method": nominal.rule,
             **plan.provided,
@@ -102,19 +118,17 @@ class _Shared:
             "versions": {**origin.versions, **plan.plugin_version},
             "source_digests": {plan.source.name: plan.source.digest},
             "environment": origin.environment,
-            "diagnostics": self._diagnostics(settled),
         }
 
-    def _diagnostics(self, settled: Settled) -> Diagnostics:
-        counters = settled.counters
-        names = ("evaluations", "non_finite", "negative", "unresolved")
-        return Diagnostics.build(rounds=settled.number + 1, **{n: counters.get(n, 0) for n in names})
+    def _diagnostics(self, answers: Answers, point: int) -> Diagnostics:
+        counted = {name: int(count) for name, count in zip(COUNTED, answers.counts[point], strict=True)}
+        return Diagnostics.build(rounds=answers.settled.number + 1, **counted)
 
     def prediction(self, answers: Answers, point: int, place: int) -> Prediction:
         """The prediction of one point."""
         value, error = answers.value[point], answers.error[point]
         parts = [self._results(value[v], error[v]) for v in range(value.shape[0])]
-        notes = self.notes + self._notes_of_point(answers, value, place)
+        notes = self.notes + self._notes_of_point(value, place) + _faults(answers, point)
         named = [
             Part.build(
                 name=setting.name,
@@ -128,7 +142,8 @@ class _Shared:
         derived = between_variations(request.derived, ByName(named), parts[0]["derived"])
         return Prediction.build(
             request=request,
-            status=answers.status,
+            status=answers.status_of(point),
+            diagnostics=self._diagnostics(answers, point),
             notes=notes,
             variations=ByName(named),
             run=answers.run,
@@ -166,24 +181,23 @@ class _Shared:
             "derived": ByName(point_asymmetries(layout, value, error)),
         }
 
-    def _notes_of_point(self, answers: Answers, value: Array, place: int) -> tuple[NoteDocument, ...]:
-        found = []
-        threshold = sum(self.group.settings[0].masses[2:])
+    def _notes_of_point(self, value: Array, place: int) -> tuple[NoteDocument, ...]:
         setting = self.group.settings[0]
-        if value[0, 0] == 0.0:
-            if _is_closed(setting, place):
-                text = f"√s is not above {threshold:.10g} GeV, the threshold of the final state, so σ = 0"
-                found.append(NoteDocument.build(code="below_threshold", text=text))
-            elif setting.cuts:
-                names = ", ".join(cut.name for cut in setting.cuts)
-                text = f"no event can pass the cuts ({names}), so σ = 0"
-                found.append(NoteDocument.build(code="cuts_exclude_everything", text=text))
-        return (*found, *_faults(answers.settled))
-
-
-def _is_closed(setting: Setting, place: int) -> bool:
-    collision = collide(setting.beams, setting.masses[:2]).take(slice(place, place + 1))
-    return not bool(collision.above(sum(setting.masses[2:]))[0, 0] > 0)
+        collision = self.collision.take(slice(place, place + 1))
+        threshold = sum(setting.masses[2:])
+        found = []
+        if self.plan.valid is not None and not self.plan.valid.low <= collision.sqrt_s[0, 0] <= self.plan.valid.high:
+            low, high, why = self.plan.valid.low, self.plan.valid.high, self.plan.valid.text
+            text = f"√s lies outside {low:g} to {high:g} GeV, where {self.plan.name} is valid: {why}"
+            found.append(NoteDocument.build(code="outside_validity", text=text))
+        if not collision.above(threshold)[0, 0] > 0:
+            text = f"√s is not above {threshold:.10g} GeV, the threshold of the final state, so σ = 0"
+            found.append(NoteDocument.build(code="below_threshold", text=text))
+        elif value[0, 0] == 0.0 and setting.cuts:
+            names = ", ".join(cut.name for cut in setting.cuts)
+            text = f"no event can pass the cuts ({names}), so σ = 0"
+            found.append(NoteDocument.build(code="cuts_exclude_everything", text=text))
+        return tuple(found)
 
 
 def _total(value: float, error: float, unit: str) -> Total:
@@ -192,23 +206,25 @@ def _total(value: float, error: float, unit: str) -> Total:
     return Total.build(value=value, error=error, unit=unit, error_kind="numerical_bound")
 
 
-def _faults(settled: Settled) -> list[NoteDocument]:
+def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
     """Notes on points that were not finite or negative, and on panels that did not settle."""
-    counters, found = settled.counters, []
-    where = f"; the first of them: {_momenta(settled)}" if settled.worst else ""
-    if counters.get("non_finite"):
-        text = f"the law was not finite at {counters['non_finite']} points{where}"
+    _, non_finite, negative, unresolved = (int(count) for count in answers.counts[point])
+    alone = len(answers.counts) == 1 and answers.settled.worst
+    where = f"; the first of them: {_momenta(answers.settled)}" if alone else ""
+    found = []
+    if non_finite:
+        text = f"the law was not finite at {non_finite} points{where}"
         found.append(NoteDocument.build(code="non_finite", text=text))
-    if counters.get("negative"):
-        text = f"the law was negative at {counters['negative']} points{where}"
+    if negative:
+        text = f"the law was negative at {negative} points{where}"
         found.append(NoteDocument.build(code="negative", text=text))
-    if counters.get("unresolved"):
+    if unresolved:
         text = (
-            f"{counters['unresolved']} pieces of the polar angle did not settle after 60 halvings: the law probably "
+            f"{unresolved} pieces of the polar angle did not settle after {DEEPEST} halvings: the law probably "
             "diverges there; a cut that keeps away from cos_theta = 1 or -1 in the cm would close the region"
         )
         found.append(NoteDocument.build(code="not_settled", text=text))
-    return found
+    return tuple(found)
 
 
 def _momenta(settled: Settled) -> str:

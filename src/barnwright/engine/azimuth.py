@@ -61,7 +61,8 @@ def _one_point(
         done = (np.max(np.abs(fine - coarse), axis=1) <= TOLERANCE * scale) | (depth == DEEPEST)
         answer.value[0] += fine[done].sum(axis=0)
         answer.error[0] += bound[done].sum(axis=0)
-        answer = answer.counted(found)
+        answer.counts[0] += found.counts.sum(axis=0)
+        answer = Answer(answer.value, answer.error, answer.counts, answer.worst or found.worst)
         if done.all():
             break
         low, high, middle = low[~done], high[~done], 0.5 * (low[~done] + high[~done])

@@ -15,8 +15,10 @@ from barnwright.engine.azimuth import over_azimuth
 from barnwright.engine.plan import Stage
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Setting
+from barnwright.errors import PluginError
 from barnwright.integrate.block import Block
-from barnwright.integrate.tally import Sums, Tally
+from barnwright.integrate.quadrature import COUNTED
+from barnwright.integrate.tally import Sums, Tally, WorstPoint
 from barnwright.process import Process
 
 Array = NDArray[np.float64]
@@ -40,19 +42,20 @@ def evaluate(block: Block, stage: Stage, process: Process) -> Tally:
     """
     plan = stage.plan
     group, first, last = plan.group_of(block.points)
-    shape = (last - first, len(group.settings), plan.layout.components)
-    added, largest = np.zeros((2, *shape)), np.zeros(shape)
-    total = Answer.empty(1, 1)
+    components = plan.layout.components
+    added = np.zeros((2, last - first, len(group.settings), components + len(COUNTED)))
+    worst: tuple[WorstPoint, ...] = ()
     for number, setting in enumerate(group.settings):
-        answer = _setting_answer(process, stage, setting, slice(first, last))
-        added[0, :, number], added[1, :, number] = answer.value, answer.error
-        total = total.counted(answer)
-    return Tally(
-        block=block,
-        nodes={(0, 0): Sums(added, largest)},
-        counters=total.counters(),
-        worst=total.worst,
-    )
+        try:
+            answer = _setting_answer(process, stage, setting, slice(first, last))
+        except PluginError as error:
+            raise PluginError(plan.source.distribution, plan.source.name, error.cause) from error
+        added[0, :, number, :components], added[1, :, number, :components] = answer.value, answer.error
+        added[0, :, number, components:] = answer.counts
+        worst = worst or answer.worst
+    counts = added[0, ..., components:].sum(axis=(0, 1))
+    counters = {name: int(count) for name, count in zip(COUNTED, counts, strict=True)}
+    return Tally(block, {(0, 0): Sums(added, np.zeros(added.shape[1:]))}, counters, worst)
 
 
 def _setting_answer(process: Process, stage: Stage, setting: Setting, points: slice) -> Answer:

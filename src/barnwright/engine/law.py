@@ -24,7 +24,7 @@ def squared_amplitude(process: Process, law: int, event: Event, parameters: Para
     try:
         with np.errstate(all="ignore"):
             found = np.asarray(process.laws[law].squared(event, parameters), dtype=float)
-    except Exception as cause:
+    except (Exception, SystemExit) as cause:
         raise _fault(process, f"the law raised {type(cause).__name__}: {cause}") from cause
     return _shaped(process, found, event.shape, "the law")
 
@@ -40,7 +40,7 @@ def cumulative(process: Process, closed_form: int, x: Array, point: Point, param
     try:
         with np.errstate(all="ignore"):
             found = np.asarray(process.closed_forms[closed_form].cumulative(x, point, parameters), dtype=float)
-    except Exception as cause:
+    except (Exception, SystemExit) as cause:
         raise _fault(process, f"the closed form raised {type(cause).__name__}: {cause}") from cause
     shape = np.broadcast_shapes(x.shape, point.s.shape)
     return np.broadcast_to(_shaped(process, found, shape, "the closed form"), shape)

@@ -50,6 +50,15 @@ class Note:
 
 
 @dataclass(frozen=True, slots=True)
+class ValidRange:
+    """The range of √s in GeV in which a process is valid, and why."""
+
+    low: float
+    high: float
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
 class Group:
     """Points that share everything but the beam energies.
 
@@ -81,6 +90,7 @@ class Plan:
     shape: tuple[int, ...]
     provided: Mapping[str, Any]
     provided_sources: Mapping[str, str]
+    valid: ValidRange | None = None
 
     @property
     def points(self) -> int:

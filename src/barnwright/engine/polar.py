@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -15,7 +17,7 @@ from barnwright.event import Point
 from barnwright.integrate.extrema import EPSILON
 from barnwright.integrate.panels import Panels
 from barnwright.integrate.polar_axis import Ends
-from barnwright.integrate.quadrature import PanelIntegrals, integrate_panels
+from barnwright.integrate.quadrature import COUNTED, EVALUATIONS, NON_FINITE, PanelIntegrals, integrate_panels
 from barnwright.integrate.tally import WorstPoint
 from barnwright.kinematics import CM
 from barnwright.observables import compile_observable
@@ -49,28 +51,30 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     value = direction * np.diff(heights, axis=1)
     error = 4 * EPSILON * (np.abs(heights[:, 1:]) + np.abs(heights[:, :-1])) * (panels.width > 0)
     total = direction * (heights[:, -1:] - heights[:, :1])
-    bad = int(np.sum(~np.isfinite(heights)))
-    result = PanelIntegrals(np.where(panels.width > 0, value, 0.0), error, heights.size, non_finite=bad)
+    counts = np.zeros((rows.count, len(COUNTED)))
+    counts[:, EVALUATIONS] = 1 + np.count_nonzero(panels.width, axis=1)
+    counts[:, NON_FINITE] = np.count_nonzero(~np.isfinite(heights), axis=1)
+    result = PanelIntegrals(np.where(panels.width > 0, value, 0.0), error, counts)
     small = (panels.width > 0) & (value < SMALL_SHARE * total)
     if setting.law is None or not small.any():
         return result
+    return _with_quadrature(integrand, panels, result, small)
+
+
+def _with_quadrature(
+    integrand: Integrand, panels: Panels, result: PanelIntegrals, small: NDArray[np.bool_]
+) -> PanelIntegrals:
+    """The same integrals with the small ones done by quadrature."""
     chosen = np.nonzero(small.any(axis=0))[0]
     some = Panels(
         panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0], panels.graze[:, :0]
     )
-    fine = integrate_panels(integrand.density(), some, integrand.scales(), rows.count)
     use = small[:, chosen]
+    some = replace(some, left=np.where(use, some.left, some.right))
+    fine = integrate_panels(integrand.density(), some, integrand.scales(), integrand.rows.count)
     result.value[:, chosen] = np.where(use, fine.value, result.value[:, chosen])
     result.error[:, chosen] = np.where(use, fine.error, result.error[:, chosen])
-    return PanelIntegrals(
-        result.value,
-        result.error,
-        heights.size + fine.evaluations,
-        bad + fine.non_finite,
-        fine.negative,
-        fine.worst,
-        fine.unresolved,
-    )
+    return PanelIntegrals(result.value, result.error, result.counts + fine.counts, fine.worst)
 
 
 def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
@@ -99,15 +103,7 @@ def _collected(integrals: PanelIntegrals, partition: Partition, layout: Layout, 
             slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, panels.graze) * heights
             add_panels(answer.error, whole[:, 1:], slack)
             add_panels(answer.error, whole[:, :-1], slack)
-    return Answer(
-        answer.value,
-        answer.error,
-        integrals.evaluations,
-        integrals.non_finite,
-        integrals.negative,
-        integrals.unresolved,
-        _worst(integrals, rows),
-    )
+    return Answer(answer.value, answer.error, integrals.counts, _worst(integrals, rows))
 
 
 def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:

@@ -24,6 +24,9 @@ Located = tuple[int, float, float]
 Density = Callable[[Integers | None, Ends], Array]
 """``density(rows, ends)``: rows None means all of them, ends (row or 1, node); else one row number a line of ends."""
 
+COUNTED = ("evaluations", "non_finite", "negative", "unresolved")
+EVALUATIONS, NON_FINITE, NEGATIVE, UNRESOLVED = range(len(COUNTED))
+
 TOLERANCE = 4e-14
 ROUNDING = 4 * EPSILON
 DEEPEST = 60
@@ -36,27 +39,22 @@ class PanelIntegrals:
     Attributes
     ----------
     value, error : arrays, shape (row, panel), in the unit of the density
-    evaluations : int
-    non_finite, negative : int
-        Nodes at which the density was not finite, or below 0.
+    counts : array, shape (row, 4)
+        What `COUNTED` names: nodes (those of panels without width left away), nodes at which the density was not
+        finite, or below 0, and pieces that could not be refined to the tolerance.
     worst : tuple or None
-        (row, 1 − c, 1 + c, value) of the first such node.
-    unresolved : int
-        Panels that could not be refined to the tolerance.
+        (row, 1 − c, 1 + c, value) of the first node that was not finite, or negative.
     """
 
     value: Array
     error: Array
-    evaluations: int
-    non_finite: int = 0
-    negative: int = 0
+    counts: Array
     worst: tuple[int, float, float, float] | None = None
-    unresolved: int = 0
 
     @property
     def clean(self) -> bool:
         """Whether the density was finite and not below 0 at every node."""
-        return not (self.non_finite or self.negative)
+        return self.worst is None
 
 
 @dataclass(frozen=True, slots=True)
@@ -119,14 +117,16 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
     values = values.reshape(rows, *x.shape[1:]) * (slope * np.abs(span))
     fine = _weighted(values, weights)
     error = np.abs(_weighted(values, weights - embedded_weights()))
-    result = PanelIntegrals(fine, error, values.size)
+    counts = np.zeros((rows, len(COUNTED)))
+    counts[:, EVALUATIONS] = FIRST_ORDER * np.count_nonzero(panels.width, axis=1)
+    result = PanelIntegrals(fine, error, counts)
 
     def located(bad: Integers) -> Located:
         row, node, panel = bad
         shared = min(row, ends.one_plus.shape[0] - 1)
         return int(row), float(ends.one_minus[shared, node, panel]), float(ends.one_plus[shared, node, panel])
 
-    result = _inspected(result, values, located)
+    result = _inspected(result, values, np.arange(rows), located)
     size = fine if result.clean else _weighted(np.abs(values), weights)
     todo = np.nonzero(error > TOLERANCE * size)
     if todo[0].size:
@@ -179,7 +179,8 @@ def _halved(density: Density, pieces: _Pieces, result: PanelIntegrals) -> PanelI
             return result
     np.add.at(result.value, (pieces.row, pieces.panel), fine)
     np.add.at(result.error, (pieces.row, pieces.panel), change)
-    return replace(result, unresolved=result.unresolved + pieces.row.size)
+    np.add.at(result.counts[:, UNRESOLVED], pieces.row, 1)
+    return result
 
 
 def _evaluated(
@@ -191,18 +192,20 @@ def _evaluated(
     x, slope = from_map(pieces.low[:, None] + span * nodes, pieces.scale[:, None])
     ends = ends_of(np.broadcast_to(pieces.side[:, None], x.shape), x)
     values = np.broadcast_to(density(pieces.row, ends), x.shape) * (slope * np.abs(span))
-    counted = replace(result, evaluations=result.evaluations + values.size)
+    np.add.at(result.counts[:, EVALUATIONS], pieces.row, order)
 
     def located(bad: Integers) -> Located:
         piece, node = bad
         return int(pieces.row[piece]), float(ends.one_minus[piece, node]), float(ends.one_plus[piece, node])
 
-    counted = _inspected(counted, values, located)
+    counted = _inspected(result, values, pieces.row, located)
     return np.add.reduce(values * weights, axis=1), np.add.reduce(np.abs(values) * weights, axis=1), counted
 
 
-def _inspected(result: PanelIntegrals, values: Array, where: Callable[[Integers], Located]) -> PanelIntegrals:
-    """Count what is not finite or negative, and remember the first such node."""
+def _inspected(
+    result: PanelIntegrals, values: Array, row: Integers, where: Callable[[Integers], Located]
+) -> PanelIntegrals:
+    """Count what is not finite or negative on the row of each line of values, and remember the first such node."""
     if values.size and np.min(values) >= 0 and np.max(values) < np.inf:
         return result
     finite = np.isfinite(values)
@@ -210,10 +213,6 @@ def _inspected(result: PanelIntegrals, values: Array, where: Callable[[Integers]
     bad = np.argwhere(~finite) if not finite.all() else np.argwhere(negative)
     if bad.size == 0:
         return result
-    worst = result.worst or (*where(bad[0]), float(values[tuple(bad[0])]))
-    return replace(
-        result,
-        non_finite=result.non_finite + int(np.sum(~finite)),
-        negative=result.negative + int(np.sum(negative)),
-        worst=worst,
-    )
+    for kind, found in ((NON_FINITE, ~finite), (NEGATIVE, negative)):
+        np.add.at(result.counts[:, kind], row, np.count_nonzero(found.reshape(len(values), -1), axis=1))
+    return replace(result, worst=result.worst or (*where(bad[0]), float(values[tuple(bad[0])])))

@@ -136,12 +136,15 @@ def _refine(function: AxisFunction, stretch: _Stretch, levels: Array) -> Crossin
 
 
 def _chandrupatla(function: AxisFunction, part: _Stretch, level: Array) -> Array:
-    """Roots of function − level inside brackets; T. R. Chandrupatla, Adv. Eng. Software 28 (1997) 145, from memory."""
+    """Roots of function − level inside brackets; T. R. Chandrupatla, Adv. Eng. Software 28 (1997) 145, from memory.
+
+    A root that is found stays as it is while others go on, so that its bits do not depend on its company.
+    """
     a, b = part.high.copy(), part.low.copy()
     fa, fb = part.at_high - level, part.at_low - level
     c, fc = a.copy(), fa.copy()
     t = np.full_like(a, 0.5)
-    best = a
+    best, done = a, np.zeros(a.shape, dtype=bool)
     for _ in range(120):
         xt = a + t * (b - a)
         ft = function(part.row, ends_of(part.mode, xt)) - level
@@ -149,11 +152,11 @@ def _chandrupatla(function: AxisFunction, part: _Stretch, level: Array) -> Array
         c, fc = np.where(same, a, b), np.where(same, fa, fb)
         b, fb = np.where(same, b, a), np.where(same, fb, fa)
         a, fa = xt, ft
-        nearer = np.abs(fa) < np.abs(fb)
-        best = np.where(nearer, a, b)
+        best = np.where(done, best, np.where(np.abs(fa) < np.abs(fb), a, b))
         with np.errstate(divide="ignore", invalid="ignore"):
             limit = 0.5 * (2 * EPSILON * np.abs(best) + 1e-300) / np.abs(b - a)
-            if np.all((limit > 0.5) | (fa == 0) | (fb == 0)):
+            done |= (limit > 0.5) | (fa == 0) | (fb == 0)
+            if done.all():
                 break
             t = np.clip(_next_step((a, fa), (b, fb), (c, fc)), np.minimum(limit, 0.5), np.maximum(1 - limit, 0.5))
     return best

@@ -12,7 +12,7 @@ import pytest
 from barnwright.integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
 from barnwright.integrate.panels import panels_between
 from barnwright.integrate.polar_axis import Ends, Integers
-from barnwright.integrate.quadrature import PanelIntegrals, integrate_panels
+from barnwright.integrate.quadrature import NEGATIVE, NON_FINITE, UNRESOLVED, PanelIntegrals, integrate_panels
 from barnwright.integrate.roots import Crossings, crossings
 
 Array = np.ndarray
@@ -61,24 +61,25 @@ def test_integrals(density: Callable[[Ends], Array], exact: mpmath.mpf, levels: 
     total, bound = float(found.value.sum()), float(found.error.sum())
     assert total == pytest.approx(float(exact), rel=1e-12)
     assert abs(total - float(exact)) <= bound + 1e-15 * float(exact)
-    assert found.unresolved == 0
+    assert not found.counts[0, UNRESOLVED]
 
 
 def test_a_divergence_does_not_settle() -> None:
     """1/(1 − c) has no integral: the panel at the pole stays unresolved, and its error says so."""
     found = integral(lambda e: 1 / e.one_minus, [])
-    assert found.unresolved > 0
+    assert found.counts[0, UNRESOLVED] > 0
     assert found.error.max() > 1e-3 * found.value.max()
 
 
 def test_what_is_not_finite_or_negative_is_counted_and_placed() -> None:
     """NaN and negative nodes are counted, and the first is named by its place."""
     broken = integral(lambda e: np.where(e.c > 0.5, np.nan, 1.0), [])
-    assert broken.non_finite > 0
+    assert broken.counts[0, NON_FINITE] > 0
     assert broken.worst is not None
     assert 1 - broken.worst[1] > 0.5
     negative = integral(lambda e: e.c, [0.0])
-    assert (negative.non_finite, negative.negative > 0) == (0, True)
+    assert negative.counts[0, NON_FINITE] == 0
+    assert negative.counts[0, NEGATIVE] > 0
 
 
 def test_rows_keep_their_bits_in_company() -> None:

@@ -7,7 +7,7 @@ from typing import Any, NamedTuple, Protocol
 
 from barnwright.beams import BeamSettings
 from barnwright.documents import Request
-from barnwright.engine.plan import Group, Note, Plan, ProcessSource
+from barnwright.engine.plan import Group, Note, Plan, ProcessSource, ValidRange
 from barnwright.engine.resolve.beams import BeamContext, resolve_beams
 from barnwright.engine.resolve.digest import plan_digest
 from barnwright.engine.resolve.findings import Findings
@@ -88,13 +88,31 @@ def resolve(request: Request, lookup: Lookup, over: Mapping[str, Sequence[Any]] 
     complete = tuple(g for g in groups if g is not None)
     shape = scan_shape(over) if over else ()
     digest = plan_digest(source, process.legs, layout, complete)
-    return Plan(digest, source, process.legs, layout, complete, shape, provided_of(process), sources_of(process))
+    return Plan(
+        digest,
+        source,
+        process.legs,
+        layout,
+        complete,
+        shape,
+        provided_of(process),
+        sources_of(process),
+        range_of(process),
+    )
 
 
 def provided_of(process: Process) -> dict[str, Any]:
     """What a prediction repeats of its process."""
     constants = {"hbar_c_squared": HBARC2}
     return {"order": process.order, "scheme": None, "constants": constants}
+
+
+def range_of(process: Process) -> ValidRange | None:
+    """Where the process is valid, if it says so."""
+    valid = process.valid
+    if valid is None or valid.sqrt_s is None:
+        return None
+    return ValidRange(*valid.sqrt_s, valid.text)
 
 
 def sources_of(process: Process) -> dict[str, str]:
@@ -139,7 +157,7 @@ def _group(part: Part, process: Process, layout: Layout, findings: Findings) -> 
         return None
     whole = tuple(s for s in settings if s is not None)
     check_ties(layout, whole, findings)
-    notes: tuple[Note, ...] = notes_of(process, whole[0])
+    notes: tuple[Note, ...] = notes_of(process)
     return Group(part.points, whole, part.request, part.columns, notes, dict(inputs.sources))
 
 
