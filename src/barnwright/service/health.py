@@ -23,7 +23,7 @@ class Health(health_pb2_grpc.HealthServicer):  # type: ignore[misc,unused-ignore
     """One status for the server and the service; watches end when the server does."""
 
     def __init__(self) -> None:
-        self._status = _KNOWN.NOT_SERVING
+        self._status: int = _KNOWN.NOT_SERVING
         self._is_over = False
         self._changed = asyncio.Event()
 

@@ -14,7 +14,7 @@ _OURS = "/barnwright."
 _MOST_ROOM = 1 << 20
 
 
-class Gate(grpc.aio.ServerInterceptor):  # type: ignore[type-arg]
+class Gate(grpc.aio.ServerInterceptor):
     """Lets calls of our service in, and maps what they raise. Health and reflection pass by."""
 
     def __init__(self, admission: Admission) -> None:
