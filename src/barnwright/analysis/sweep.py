@@ -9,7 +9,7 @@ from typing import Any, overload
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.documents import Prediction, Request
+from barnwright.documents import Prediction, Request, plain_axes
 from barnwright.engine import Answers
 from barnwright.process import Process
 from barnwright.run.local import answers
@@ -94,10 +94,5 @@ def scan(request: Request, over: Mapping[str, Sequence[Any]], process: Process |
     ------
     RequestError, UnknownProcessError, PluginError, CalculationError
     """
-    values = {key: tuple(_plain(v) for v in column) for key, column in over.items()}
-    return Sweep(values, answers(request, values, process))
-
-
-def _plain(value: Any) -> Any:
-    """A numpy number as the Python number it is."""
-    return value.item() if hasattr(value, "item") else value
+    axes = plain_axes(over)
+    return Sweep(axes, answers(request, axes, process))

@@ -12,8 +12,16 @@ import grpc
 from barnwright.client import answers
 from barnwright.client.channel import METADATA, OPTIONS, absent, checked_address
 from barnwright.client.failures import error_of
-from barnwright.client.sweep import RemoteSweep, plain_axes
-from barnwright.documents import Prediction, ProcessDescription, ProcessSummary, Request, completed, remainder_of
+from barnwright.client.sweep import RemoteSweep
+from barnwright.documents import (
+    Prediction,
+    ProcessDescription,
+    ProcessSummary,
+    Request,
+    completed,
+    plain_axes,
+    remainder_of,
+)
 from barnwright.errors import BarnwrightError, RequestError, ServerError, Violation
 from barnwright.wire.v1 import service_pb2 as wire
 from barnwright.wire.v1.service_pb2_grpc import CrossSectionServiceStub

@@ -70,10 +70,5 @@ class RemoteSweep(Sequence[Prediction]):
         return iter(self.predictions)
 
 
-def plain_axes(over: Mapping[str, Sequence[Any]]) -> dict[str, tuple[Any, ...]]:
-    """The values of every key as Python's own numbers and words."""
-    return {key: tuple(v.item() if hasattr(v, "item") else v for v in values) for key, values in over.items()}
-
-
 def _numbers(entries: list[float | None]) -> Array:
     return np.array([np.nan if entry is None else entry for entry in entries], dtype=np.float64)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from barnwright.documents.accuracy import Accuracy
+from barnwright.documents.axes import plain_axes
 from barnwright.documents.base import Document
 from barnwright.documents.beams import ColliderBeams, DecayBeams, FixedTargetBeams
 from barnwright.documents.by_name import ByName
@@ -57,6 +58,7 @@ __all__ = [
     "checked",
     "completed",
     "merge",
+    "plain_axes",
     "remainder_of",
     "split_key",
     "violations_of",

@@ -142,7 +142,7 @@ def _check(
 ) -> None:
     """One finding for the first value that is too small, one for the first that is too large."""
     for value in values:
-        if value < least or (value == least and not closed):
+        if not (value >= least if closed else value > least):
             findings.add(where, value, expected)
             break
     for value in values:
