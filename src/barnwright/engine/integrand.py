@@ -19,6 +19,9 @@ from barnwright.process import Parameters, Process
 Array = NDArray[np.float64]
 
 
+FLAT = np.full((1, 2), np.inf)
+
+
 @dataclass(frozen=True, slots=True)
 class Integrand:
     """dσ/dcos θ in GeV⁻² of the rows of a block (its share at one azimuth is the same for all)."""
@@ -45,7 +48,9 @@ class Integrand:
     def scales(self) -> Array:
         """The width δ of the peaks at the backward and forward pole for every row; ∞ where there is none."""
         rows = self.rows
-        result = np.full((rows.count if self.setting.peaks else 1, 2), np.inf)
+        if not self.setting.peaks:
+            return FLAT
+        result = np.full((rows.count, 2), np.inf)
         for side, channel in enumerate(("u", "t")):
             pole = ends_of(np.array([[side]]), np.zeros((1, 1)))
             two_body = rows.two_body(pole)

@@ -6,17 +6,19 @@ Panels run in the order of c from −1 to +1; every row has the same number of t
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
 
+from barnwright.integrate.gauss import FIRST_ORDER, gauss_legendre
 from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers, ends_of
 from barnwright.integrate.roots import Crossings
 
 Array = NDArray[np.float64]
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Panels:
     """Panels of each row.
 
@@ -37,10 +39,18 @@ class Panels:
     wobble: Array
     graze: Array
 
-    @property
+    @cached_property
     def width(self) -> Array:
         """Width in c."""
         return np.abs(self.right - self.left)
+
+    @cached_property
+    def first_nodes(self) -> tuple[Ends, Array]:
+        """The nodes of the first order with no map, (row or 1, node × panel), and the widths of the panels in c."""
+        nodes, _ = gauss_legendre(FIRST_ORDER)
+        x = self.left[:, None, :] + (self.right - self.left)[:, None, :] * nodes[:, None]
+        ends = ends_of(np.broadcast_to(self.side, x.shape), x)
+        return Ends(*(e.reshape(e.shape[0], -1) for e in ends)), self.width
 
     def middle(self) -> Ends:
         """A location inside each panel, shape (row or 1, panel): the geometric mean where the ends lie far apart."""

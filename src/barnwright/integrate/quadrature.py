@@ -108,13 +108,11 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
     """
     scale = scales[:, panels.side]
     left, right = to_map(panels.left, scale), to_map(panels.right, scale)
+    ends, measure = _first_nodes(panels, scale, left, right)
     nodes, weights = gauss_legendre(FIRST_ORDER)
-    span = (right - left)[:, None, :]
-    x, slope = from_map(left[:, None, :] + span * nodes[:, None], scale[:, None, :])
-    ends = ends_of(np.broadcast_to(panels.side, x.shape), x)
-    flat = Ends(*(e.reshape(e.shape[0], -1) for e in ends))
-    values = np.broadcast_to(density(None, flat), (rows, flat.one_plus.shape[1]))
-    values = values.reshape(rows, *x.shape[1:]) * (slope * np.abs(span))
+    found = density(None, ends)
+    shape = (rows, nodes.size * panels.side.size)
+    values = (found if found.shape == shape else np.broadcast_to(found, shape)).reshape(rows, nodes.size, -1) * measure
     fine = _weighted(values, weights)
     error = np.abs(_weighted(values, weights - embedded_weights()))
     counts = np.zeros((rows, len(COUNTED)))
@@ -123,8 +121,8 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
 
     def located(bad: Integers) -> Located:
         row, node, panel = bad
-        shared = min(row, ends.one_plus.shape[0] - 1)
-        return int(row), float(ends.one_minus[shared, node, panel]), float(ends.one_plus[shared, node, panel])
+        place = (min(row, ends.one_plus.shape[0] - 1), node * panels.side.size + panel)
+        return int(row), float(ends.one_minus[place]), float(ends.one_plus[place])
 
     result = _inspected(result, values, np.arange(rows), located)
     size = fine if result.clean else _weighted(np.abs(values), weights)
@@ -135,6 +133,18 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
         pieces = _Pieces(todo[0], todo[1], panels.side[todo[1]], low, high, width)
         result = _refined(density, pieces, result)
     return replace(result, error=result.error + ROUNDING * np.abs(result.value))
+
+
+def _first_nodes(panels: Panels, scale: Array, left: Array, right: Array) -> tuple[Ends, Array]:
+    """The nodes of the first order, (row or 1, node × panel), and dc, (row or 1, node or 1, panel)."""
+    if np.isinf(scale).all():
+        ends, width = panels.first_nodes
+        return ends, width[:, None, :]
+    nodes, _ = gauss_legendre(FIRST_ORDER)
+    span = (right - left)[:, None, :]
+    x, slope = from_map(left[:, None, :] + span * nodes[:, None], scale[:, None, :])
+    ends = ends_of(np.broadcast_to(panels.side, x.shape), x)
+    return Ends(*(e.reshape(e.shape[0], -1) for e in ends)), slope * np.abs(span)
 
 
 def _weighted(values: Array, weights: Array) -> Array:

@@ -12,7 +12,7 @@ Rules of this file
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from typing import Any
 
 import numpy as np
@@ -45,6 +45,7 @@ class Collision:
     orientation: int = 1
     target: int | None = None
     lab_is_cm: bool = False
+    _momenta: dict[tuple[float, float], Array] = field(default_factory=dict, init=False, repr=False, compare=False)
 
     @property
     def s(self) -> Array:
@@ -60,10 +61,15 @@ class Collision:
 
         Källén's λ in its four factors: p = √[(W−m₁−m₂)(W+m₁+m₂)(W−|m₁−m₂|)(W+|m₁−m₂|)] / 2W.
         """
-        total, difference = first + second, abs(first - second)
+        known = self._momenta.get((first, second))
+        if known is None:
+            known = self._momenta[first, second] = self._momentum(first + second, abs(first - second))
+        return known
+
+    def _momentum(self, total: float, difference: float) -> Array:
         excess = np.maximum(self.above(total), 0.0)
         product = excess * (self.sqrt_s + total) * self.above(difference) * (self.sqrt_s + difference)
-        return np.sqrt(np.maximum(product, 0.0)) / (2 * self.sqrt_s)
+        return np.asarray(np.sqrt(np.maximum(product, 0.0)) / (2 * self.sqrt_s))
 
     def take(self, points: Any) -> Collision:
         """The collision of the chosen points (an index array, or a slice)."""

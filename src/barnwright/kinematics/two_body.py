@@ -51,6 +51,8 @@ class TwoBody:
         self._masses = dict(zip((-1, -2, 1, 2), masses, strict=True))
         self.one_minus_cos, self.one_plus_cos = one_minus_cos, one_plus_cos
         self._azimuth = np.asarray(azimuth, dtype=float)
+        self._energies: dict[int, Array] = {}
+        self._small: dict[int, Array] = {}
 
     @cached_property
     def shape(self) -> tuple[int, ...]:
@@ -86,14 +88,16 @@ class TwoBody:
 
     def _energy(self, code: int) -> Array:
         """cm energy of a leg in GeV."""
-        return np.hypot(self._momentum(code), self._masses[code])
+        if code not in self._energies:
+            self._energies[code] = np.hypot(self._momentum(code), self._masses[code])
+        return self._energies[code]
 
     def _energy_minus_momentum(self, code: int) -> Array:
         """E − p in the cm, from m²/(E + p)."""
-        mass = self._masses[code]
-        if mass == 0.0:
-            return np.zeros_like(self.sqrt_s)
-        return np.asarray(mass**2 / (self._energy(code) + self._momentum(code)))
+        if code not in self._small:
+            total = self._energy(code) + self._momentum(code)
+            self._small[code] = np.zeros_like(total) if self._masses[code] == 0 else self._masses[code] ** 2 / total
+        return self._small[code]
 
     def _one_minus(self, first: int, second: int) -> Array:
         """1 − cos of the cm angle between a beam and an outgoing leg."""

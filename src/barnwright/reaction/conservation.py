@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import lru_cache
 from typing import TYPE_CHECKING
 
 from barnwright.particles import find
@@ -24,6 +25,7 @@ _CONSERVED: dict[str, Callable[[ParticleData], int]] = {
 }
 
 
+@lru_cache(maxsize=1024)
 def unbalanced(incoming: tuple[str, ...], outgoing: tuple[str, ...]) -> tuple[str, ...]:
     """A sentence for each number that differs between the two sides, given by names of particles."""
     sides = [[find(name) for name in side] for side in (incoming, outgoing)]

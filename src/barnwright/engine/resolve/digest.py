@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import hashlib
 import json
+from functools import lru_cache
 from typing import Any
 
 from barnwright.engine.plan import Group, ProcessSource
@@ -17,12 +18,19 @@ def plan_digest(source: ProcessSource, reaction: Reaction, layout: Layout, group
     content: dict[str, Any] = {
         "source": [source.name, source.distribution, source.version, source.digest],
         "reaction": reaction.text,
-        "histograms": [[h.name, [o.text for o in h.observables], h.edges] for h in layout.histograms],
-        "asymmetries": [[a.name, a.observable.text, a.at] for a in layout.asymmetries],
+        "layout": _layout_digest(layout),
         "groups": [[g.points, [_setting(s) for s in g.settings]] for g in groups],
     }
     text = json.dumps(content, sort_keys=True, separators=(",", ":"))
     return hashlib.sha256(text.encode()).hexdigest()
+
+
+@lru_cache(maxsize=256)
+def _layout_digest(layout: Layout) -> str:
+    """The digest of the components, which many requests share."""
+    histograms = [[h.name, [o.text for o in h.observables], h.edges] for h in layout.histograms]
+    asymmetries = [[a.name, a.observable.text, a.at] for a in layout.asymmetries]
+    return hashlib.sha256(json.dumps([histograms, asymmetries]).encode()).hexdigest()
 
 
 def _setting(setting: Setting) -> list[Any]:

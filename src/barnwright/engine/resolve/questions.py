@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from functools import lru_cache
+from typing import Literal
 
 from barnwright.documents import AsymmetryRequest, Bins, HistogramRequest, Request
 from barnwright.engine.resolve.findings import Findings
@@ -58,15 +59,19 @@ def _histogram(asked: HistogramRequest, index: int, reaction: Reaction, findings
     return HistogramPlan(asked.name, found, edges, asked.per)
 
 
-@lru_cache(maxsize=256)
 def bin_edges(bins: Bins) -> tuple[float, ...]:
     """The edges of one axis."""
     if bins.edges is not None:
-        return tuple(bins.edges)
+        return bins.edges
     assert bins.count is not None
     assert bins.low is not None
     assert bins.high is not None
-    return tuple(float(e) for e in edges_of(bins.count, bins.low, bins.high, bins.spacing))
+    return _even_edges(bins.count, bins.low, bins.high, bins.spacing)
+
+
+@lru_cache(maxsize=256)
+def _even_edges(count: int, low: float, high: float, spacing: Literal["linear", "log"]) -> tuple[float, ...]:
+    return tuple(edges_of(count, low, high, spacing).tolist())
 
 
 def _check_solid_angle(observable: Observable, edges: tuple[float, ...], where: str, findings: Findings) -> None:
