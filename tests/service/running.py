@@ -25,9 +25,10 @@ PATIENCE = 60.0
 """Seconds after which something that must happen has not; a test waits for the event, never for the time."""
 
 _CODE = """
-import sys
+import os, sys, threading
 from barnwright.service.server import run
 from barnwright.service.settings import Limits, Settings
+threading.Thread(target=lambda: (sys.stdin.read(), os._exit(1)), daemon=True).start()  # the tests are gone
 limits, workers, address = eval(sys.argv[1]), int(sys.argv[2]), sys.argv[3]
 sys.exit(run(Settings(address, workers=workers, limits=Limits(**limits))))
 """
@@ -112,7 +113,12 @@ def serving(
     command_line = [sys.executable, "-c", _CODE, repr(limits), str(workers), address]
     stderr = None if log is None else log.open("w")
     process = subprocess.Popen(
-        command_line, stdout=subprocess.PIPE, stderr=stderr, text=True, env={**os.environ, "PYTHONPATH": path}
+        command_line,
+        stdin=subprocess.PIPE,
+        stdout=subprocess.PIPE,
+        stderr=stderr,
+        text=True,
+        env={**os.environ, "PYTHONPATH": path},
     )
     try:
         assert process.stdout is not None
@@ -120,21 +126,21 @@ def serving(
         assert line.startswith("barnwright is listening on "), line
         yield Running(process, line.split()[-1])
     finally:
-        process.kill() if process.poll() is None and _told_to_end(process) else None
+        if process.poll() is None and not _ends_when_told(process):
+            process.kill()
         process.wait()
-        assert process.stdout is not None
-        process.stdout.close()
-        if stderr is not None:
-            stderr.close()
+        for pipe in (process.stdin, process.stdout, stderr):
+            if pipe is not None:
+                pipe.close()
 
 
-def _told_to_end(process: subprocess.Popen[str]) -> bool:
-    """Two signals, so that nothing is waited for; True when the server does not end all the same."""
+def _ends_when_told(process: subprocess.Popen[str]) -> bool:
+    """Two signals, so that nothing is waited for; whether the server ends."""
     for _ in range(2):
         process.send_signal(signal.SIGTERM)
         time.sleep(0.05)
     try:
         process.wait(PATIENCE)
     except subprocess.TimeoutExpired:
-        return True
-    return False
+        return False
+    return True

@@ -6,14 +6,17 @@ from typing import Any
 
 import grpc
 import pytest
+from faces.wrong_requests import GOOD
 from google.protobuf.descriptor import FieldDescriptor
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 from service.running import SERVICE, Running
 
-from barnwright.wire.v1 import service_pb2
+from barnwright.wire import encode
+from barnwright.wire.v1 import request_pb2, service_pb2, values_pb2
 
 METHODS = {method.name: method for method in service_pb2.DESCRIPTOR.services_by_name["CrossSectionService"].methods}
+VALUE = values_pb2.ParameterValue.DESCRIPTOR
 ALLOWED = {"OK", "INVALID_ARGUMENT", "NOT_FOUND", "FAILED_PRECONDITION", "DEADLINE_EXCEEDED"}
 WORDS = ["qed/muon-pair", "healthy/pair", "collider", "fixed_target", "decay", "e-", "e+", "mu-", "beam_a", "pb", "log"]
 WORDS += [
@@ -27,7 +30,7 @@ WORDS += [
     "averaged",
     "beams.sqrt_s",
 ]
-PATIENT = settings(max_examples=60, suppress_health_check=[HealthCheck.function_scoped_fixture, HealthCheck.too_slow])
+PATIENT = settings(max_examples=40, suppress_health_check=[HealthCheck.function_scoped_fixture, HealthCheck.too_slow])
 
 SCALARS: dict[int, st.SearchStrategy[Any]] = {
     FieldDescriptor.CPPTYPE_DOUBLE: st.floats() | st.sampled_from([0.0, 1.0, 10.0, -1.0, 1e300]),
@@ -92,4 +95,18 @@ def test_any_bytes(server: Running, method: str, data: st.DataObject) -> None:
 def test_any_messages(server: Running, method: str, data: st.DataObject) -> None:
     """Fields that are right by themselves, and wrong together."""
     message = data.draw(built(METHODS[method].input_type))
+    assert code_of(server, method, message.SerializeToString()) in ALLOWED
+
+
+@pytest.mark.parametrize("method", ["ValidateRequest", "Predict", "Scan"])
+@PATIENT
+@given(data=st.data())
+def test_any_change_of_a_good_message(server: Running, method: str, data: st.DataObject) -> None:
+    """Some fields on top of those that are right."""
+    kind = METHODS[method].input_type
+    message = kind._concrete_class(request=encode(GOOD, request_pb2.Request))
+    change = data.draw(st.sampled_from(list(request_pb2.Request.DESCRIPTOR.fields)))
+    message.request.MergeFrom(request_pb2.Request(**{change.name: data.draw(_values(change))}))
+    if method == "Scan":
+        message.over.add(key=data.draw(st.sampled_from(WORDS)), values=data.draw(st.lists(built(VALUE), max_size=3)))
     assert code_of(server, method, message.SerializeToString()) in ALLOWED

@@ -13,7 +13,7 @@ import pytest
 from grpc_health.v1 import health_pb2, health_pb2_grpc
 from grpc_reflection.v1alpha import reflection_pb2, reflection_pb2_grpc
 from service.plugins import plugin
-from service.running import SERVICE, Running, serving, until
+from service.running import SERVICE, Running, is_alive, serving, until
 
 from barnwright.client import connect
 from barnwright.errors import RequestError, ServerError
@@ -102,7 +102,7 @@ def test_an_idle_server_ends_at_once_and_well(number: int) -> None:
         family = [pid for pids in server.family().values() for pid in pids]
         server.tell(number)
         assert server.process.wait() == 0
-        until(lambda: not any(Path(f"/proc/{pid}").exists() for pid in family))
+        until(lambda: not any(is_alive(pid) for pid in family))
 
 
 def test_a_drain_ends_watches_and_finishes_calls(tmp_path: Path) -> None:

@@ -20,7 +20,7 @@ from barnwright.service.settings import Settings
 
 _HEADER = struct.Struct("!i")
 _ONE_THREAD = ("OMP_NUM_THREADS", "OPENBLAS_NUM_THREADS", "MKL_NUM_THREADS", "VECLIB_MAXIMUM_THREADS")
-_CODE = "import sys; from barnwright.service.scheduler import main; main(int(sys.argv[1]))"
+_CODE = "import sys; from barnwright.service.boot import main; main(int(sys.argv[1]))"
 
 LOST = "the scheduler of the server was lost; another one is starting, try again"
 DRAINING = "the server is ending"

@@ -6,12 +6,10 @@ from the running calls in turn, and looks after workers that take too long.
 
 from __future__ import annotations
 
-import multiprocessing
 import selectors
-import signal
-import sys
 from collections import deque
 from multiprocessing.connection import Connection
+from multiprocessing.context import ForkServerContext
 from typing import Any
 
 from barnwright.service.calls import CALLS
@@ -34,30 +32,14 @@ from barnwright.service.pool import Pool, Worker
 from barnwright.service.settings import Settings
 from barnwright.service.task import Task
 
-PRELOADED = ["barnwright.service.tasks", "barnwright.service.worker"]
-
 STILLBORN = 5
 """After so many workers that did not even start, none will."""
-
-
-def main(descriptor: int) -> None:
-    """Run until the server says stop, or is gone: then all workers are ended."""
-    for number in (signal.SIGINT, signal.SIGTERM):
-        signal.signal(number, signal.SIG_IGN)
-    server = Connection(descriptor)
-    try:
-        settings: Settings = server.recv()
-        Scheduler(server, settings).run()
-    except (EOFError, OSError):
-        sys.exit(0)
 
 
 class Scheduler:
     """The running calls in turn, and the pool."""
 
-    def __init__(self, server: Connection, settings: Settings) -> None:
-        context = multiprocessing.get_context("forkserver")
-        context.set_forkserver_preload(PRELOADED)
+    def __init__(self, server: Connection, settings: Settings, context: ForkServerContext) -> None:
         self._server = server
         self._limits = settings.limits
         self._selector = selectors.DefaultSelector()
