@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from barnwright.errors import Violation, show
+from barnwright.errors import BarnwrightError, Violation, show
 
 
 @dataclass(frozen=True, slots=True)
@@ -16,7 +16,7 @@ class Finding:
     nearest: str | None = None
 
 
-class GrammarError(ValueError):
+class GrammarError(BarnwrightError, ValueError):
     """A text that the language does not hold; `findings` has every finding, the first one first.
 
     Parameters

@@ -13,3 +13,6 @@ MOST_NODES = 2_000
 
 LARGEST_EXPONENT = 100
 """Of a power whose exponent is a number."""
+
+MOST_FINDINGS = 50
+"""Told of one text: whoever made more mistakes starts with these."""

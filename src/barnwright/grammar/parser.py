@@ -9,7 +9,10 @@ Rules of this file
 
 from __future__ import annotations
 
+from dataclasses import dataclass, field
+
 from barnwright.errors import nearest, show
+from barnwright.grammar.constants import constant_of
 from barnwright.grammar.language import Language, Signature
 from barnwright.grammar.limits import DEEPEST, LARGEST_EXPONENT, MOST_NODES
 from barnwright.grammar.scanner import Scanner, Token
@@ -28,6 +31,16 @@ def parse(text: str, language: Language) -> Node:
         With the column, what was expected there, and the nearest word of the language.
     """
     return _Parser(text, language).whole()
+
+
+@dataclass(slots=True)
+class _Given:
+    """The arguments of a call, as far as they are read."""
+
+    arguments: list[Node | LegName | Selection] = field(default_factory=list)
+    frame: FrameName | None = None
+    of: tuple[LegName, ...] = ()
+    keywords: set[str] = field(default_factory=set)
 
 
 class _Parser:
@@ -87,8 +100,8 @@ class _Parser:
             self.scanner.fail(f"at most {DEEPEST} powers inside one another")
         exponent = self.signed()
         self.depth -= 1
-        value = _constant(exponent)
-        if value is not None and abs(value) > LARGEST_EXPONENT:
+        value = constant_of(exponent)
+        if value is not None and not abs(value) <= LARGEST_EXPONENT:
             self.scanner.fail(f"an exponent of at most {LARGEST_EXPONENT}", position=token.position + 2)
         return Binary("**", base, exponent, self.count(token.position))
 
@@ -110,61 +123,56 @@ class _Parser:
         if self.scanner.peek().kind == "(":
             return self.call(word)
         names, functions = self.language.names, self.language.functions
+        if word.text in functions:
+            self.scanner.fail(f"{word.text}(…) with its arguments", position=word.position)
         if names is not None and word.text not in names:
-            if word.text in functions:
-                self.scanner.fail(f"{word.text}(…) with its arguments", position=word.position)
-            choices = (*names, *functions)
-            self.scanner.fail("a name of the language", nearest(word.text, choices), word.position)
+            choices = (*sorted(names), *functions)
+            expected = f"one of {', '.join(sorted(names))}, or a function with its arguments"
+            self.scanner.fail(expected, nearest(word.text, choices), word.position)
         return Name(word.text, self.count(word.position))
 
     def call(self, word: Token) -> Node:
         signature = self.language.functions.get(word.text)
         if signature is None:
+            if word.text in (self.language.names or ()):
+                self.scanner.fail(f"{word.text} by itself, without parentheses", word.text, word.position)
             choices = tuple(self.language.functions)
             expected = f"one of the functions {', '.join(choices)}"
             self.scanner.fail(expected, nearest(word.text, choices), word.position)
         self.scanner.take()
-        arguments, frame, of = self.arguments(word, signature)
-        if not signature.least <= len(arguments) <= signature.most:
+        given = self.arguments(word, signature)
+        if not signature.least <= len(given.arguments) <= signature.most:
             self.scanner.fail(f"{word.text} with {_how_many(signature)}", position=word.position)
-        return Call(word.text, tuple(arguments), frame, of, self.count(word.position))
+        return Call(word.text, tuple(given.arguments), given.frame, given.of, self.count(word.position))
 
-    def arguments(
-        self, word: Token, signature: Signature
-    ) -> tuple[list[Node | LegName | Selection], FrameName | None, tuple[LegName, ...]]:
-        arguments: list[Node | LegName | Selection] = []
-        frame: FrameName | None = None
-        of: tuple[LegName, ...] = ()
+    def arguments(self, word: Token, signature: Signature) -> _Given:
+        given = _Given()
         while not self.scanner.take_if(")"):
-            if arguments or frame is not None or of:
+            if given.arguments or given.keywords:
                 self.scanner.demand(",", "a comma or a closing parenthesis")
-            keyword = self.keyword()
+            keyword = self.scanner.keyword()
             if keyword is None:
-                arguments.append(self.argument(signature))
-            elif signature.keywords.get(keyword.text) == "frame":
-                frame = self.frame()
-            elif signature.keywords.get(keyword.text) == "legs":
-                of = self.legs()
+                given.arguments.append(self.argument(signature))
             else:
-                known = tuple(signature.keywords)
-                expected = f"{word.text} takes {' and '.join(known) or 'no keywords'}"
-                self.scanner.fail(expected, nearest(keyword.text, known), keyword.position)
-            if len(arguments) > signature.most:
+                self.keyword(word, signature, keyword, given)
+            if len(given.arguments) > signature.most:
                 self.scanner.fail(f"{word.text} with {_how_many(signature)}", position=word.position)
-        return arguments, frame, of
+        return given
 
-    def keyword(self) -> Token | None:
-        """A word with an equals sign behind it, both taken; else nothing."""
-        start = self.scanner.at
-        text = self.scanner.text
-        word = self.scanner.peek() if start < len(text) and text[start:].lstrip()[:1].isidentifier() else None
-        if word is not None and word.kind == "word":
-            self.scanner.take()
-            if self.scanner.at < len(text) and text[self.scanner.at :].lstrip().startswith("="):
-                self.scanner.take()
-                return word
-        self.scanner.at = start
-        return None
+    def keyword(self, word: Token, signature: Signature, keyword: Token, given: _Given) -> None:
+        """The value of a keyword, whose equals sign is taken."""
+        kind = signature.keywords.get(keyword.text)
+        if kind is None:
+            known = tuple(signature.keywords)
+            expected = f"{word.text} with {' and '.join(known) or 'no keywords'}"
+            self.scanner.fail(expected, nearest(keyword.text, known), keyword.position)
+        if keyword.text in given.keywords:
+            self.scanner.fail(f"{keyword.text} once", position=keyword.position)
+        given.keywords.add(keyword.text)
+        if kind == "frame":
+            given.frame = self.frame()
+        else:
+            given.of = self.legs()
 
     def argument(self, signature: Signature) -> Node | LegName | Selection:
         if signature.kind == "expression":
@@ -182,36 +190,38 @@ class _Parser:
         word = self.scanner.take()
         self.scanner.demand("(", "a parenthesis")
         leg = self.leg()
-        by, rank = ORDERS[0], 1
+        by, rank, given = ORDERS[0], 1, set[str]()
         while self.scanner.take_if(","):
-            keyword = self.keyword()
-            if keyword is None or word.text != "leading" or keyword.text not in ("by", "rank"):
-                allowed = "by and rank" if word.text == "leading" else "no keywords"
-                self.scanner.fail(f"{word.text} takes one particle and {allowed}")
+            keyword = self.scanner.keyword()
+            if keyword is None or word.text != "leading" or keyword.text not in {"by", "rank"} - given:
+                allowed = "by and rank, each once" if word.text == "leading" else "no keywords"
+                position = self.scanner.at if keyword is None else keyword.position
+                self.scanner.fail(f"{word.text} with one particle and {allowed}", position=position)
+            given.add(keyword.text)
             if keyword.text == "by":
                 by = self.order()
             else:
                 rank = self.rank()
-        self.scanner.demand(")", "a closing parenthesis")
+        self.scanner.demand(")", "a comma or a closing parenthesis")
         return Selection(word.text, leg, by, rank, self.count(word.position))
 
     def order(self) -> str:
-        position = self.scanner.at
-        by = self.scanner.quoted()
+        by, position = self.scanner.quoted()
         if by not in ORDERS:
             self.scanner.fail('"energy" or "pt"', nearest(by, ORDERS), position)
         return by
 
     def rank(self) -> int:
         token = self.scanner.demand("number", "a whole number from 1")
-        if not token.text.isdigit() or not 1 <= int(token.text) <= 99:
+        if not token.text.isdigit() or len(token.text) > 2 or int(token.text) < 1:
             self.scanner.fail("a whole number from 1", position=token.position)
         return int(token.text)
 
     def frame(self) -> FrameName:
-        word = self.scanner.take()
+        word = self.scanner.peek()
         if word.text not in FRAMES:
             self.scanner.fail("lab, cm or rest(…)", nearest(word.text, FRAMES), word.position)
+        self.scanner.take()
         if word.text != "rest":
             return FrameName(word.text, (), self.count(word.position))
         if self.scanner.peek().kind != "(":
@@ -230,18 +240,6 @@ class _Parser:
 def _operator(token: Token) -> Operator:
     operators: dict[str, Operator] = {"+": "+", "-": "-", "*": "*", "/": "/"}
     return operators[token.kind]
-
-
-def _constant(node: Node) -> float | None:
-    """The value of a number with any sign; of a power of numbers infinity, so that towers are refused."""
-    if isinstance(node, Number):
-        return node.value
-    if isinstance(node, Negation):
-        inner = _constant(node.operand)
-        return None if inner is None else -inner
-    if isinstance(node, Binary) and _constant(node.left) is not None and _constant(node.right) is not None:
-        return float("inf") if node.operator == "**" else None
-    return None
 
 
 def _how_many(signature: Signature) -> str:

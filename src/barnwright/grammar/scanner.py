@@ -10,11 +10,23 @@ from barnwright.errors import show
 from barnwright.grammar.errors import Finding, GrammarError
 from barnwright.grammar.limits import LONGEST_TEXT
 
-_NUMBER = re.compile(r"(\d+\.?\d*|\.\d+)([eE][+-]?\d+)?")
+_NUMBER = re.compile(r"([0-9]+\.?[0-9]*|\.[0-9]+)([eE][+-]?[0-9]+)?")
 _WORD = re.compile(r"[A-Za-z_][A-Za-z_0-9]*")
-_LEG = re.compile(r"[A-Za-z0-9_](?:[^\s,()=\"']|\([^()\s,=]*\))*")
+_KEYWORD = re.compile(r"([A-Za-z_][A-Za-z_0-9]*)[ \t\n\r]*=(?!=)")
+_OF_LEG = r"!#-&*+\--<>-~"  # all printable characters of ASCII but " ' ( ) , =
+_LEG = re.compile(rf"[A-Za-z0-9_](?:[{_OF_LEG}]|\([{_OF_LEG}]*\))*")
 _QUOTED = re.compile(r"\"([^\"']*)\"|'([^\"']*)'")
 _SYMBOLS = ("**", "*", "/", "+", "-", "(", ")", ",", "=")
+
+
+def is_word(text: str) -> bool:
+    """Whether a text is one word, as names of values are."""
+    return _WORD.fullmatch(text) is not None
+
+
+def is_leg(text: str) -> bool:
+    """Whether a text reads as one leg: a particle's name, a number, ``beam_a``."""
+    return _LEG.fullmatch(text) is not None
 
 
 class Token(NamedTuple):
@@ -86,9 +98,20 @@ class Scanner:
         self._skip_space()
         match = _LEG.match(self.text, self.at)
         if match is None:
-            self.fail("a particle of the reaction")
+            foreign = self.at < len(self.text) and not self.text[self.at].isascii()
+            raise self._of_character() if foreign else self.refusal("a particle of the reaction")
         start, self.at = self.at, match.end()
         return match[0], start
+
+    def keyword(self) -> Token | None:
+        """A word with an equals sign behind it, both taken; None, and nothing taken, where there is none."""
+        self._skip_space()
+        match = _KEYWORD.match(self.text, self.at)
+        if match is None:
+            return None
+        word = Token("word", match[1], self.at)
+        self.at = match.end()
+        return word
 
     def word_before_parenthesis(self) -> str | None:
         """The word here if a parenthesis follows it directly; nothing is taken."""
@@ -98,14 +121,14 @@ class Scanner:
             return None
         return match[0]
 
-    def quoted(self) -> str:
-        """A word in quotes."""
+    def quoted(self) -> tuple[str, int]:
+        """A word in quotes, and its position."""
         self._skip_space()
         match = _QUOTED.match(self.text, self.at)
         if match is None:
             self.fail("a word in quotes")
-        self.at = match.end()
-        return match[1] or match[2] or ""
+        start, self.at = self.at, match.end()
+        return match[1] or match[2] or "", start
 
     def number(self, token: Token) -> float:
         """The value of a number token."""

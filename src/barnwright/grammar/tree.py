@@ -49,6 +49,11 @@ class LegName:
     name: str
     position: int = 0
 
+    @property
+    def key(self) -> str | int:
+        """What a reaction is asked for: a number as a number, anything else as it stands."""
+        return int(self.name) if self.name.isdigit() and len(self.name) <= 2 else self.name
+
 
 @dataclass(frozen=True, slots=True)
 class Selection:
