@@ -6,20 +6,21 @@ import math
 from functools import lru_cache
 from typing import Literal
 
-from barnwright.grammar import Finding, GrammarError, parse
+from barnwright.grammar import MOST_NODES, Finding, GrammarError, Node, parse
 from barnwright.observables.errors import ObservableError
 from barnwright.observables.language import LANGUAGE
+from barnwright.observables.legs import Legs
 from barnwright.observables.observable import AxisForm, Observable
 from barnwright.observables.resolve import Resolver, depth_of
 from barnwright.observables.rows import ROWS
-from barnwright.observables.tree import Each, Leaf, Operation, Tree, leaves, with_leg
-from barnwright.observables.units import UnitMismatchError, dimension_of
+from barnwright.observables.tree import Each, Leaf, Operation, Tree, leaves, size_of, with_leg
+from barnwright.observables.units import dimension_of
 from barnwright.reaction import Reaction
 
-DEEPEST = 200
+DEEPEST = 100
 
 
-@lru_cache(maxsize=4096)
+@lru_cache(maxsize=1024)
 def compile_observable(text: str, reaction: Reaction, numbered: bool = False) -> Observable:
     """The observable that a text means for a reaction.
 
@@ -30,31 +31,34 @@ def compile_observable(text: str, reaction: Reaction, numbered: bool = False) ->
     ObservableError
         With every finding, each with its column and what is nearest.
     """
+    node = _parsed(text)
+    legs = Legs(reaction, numbered)
+    tree = Resolver(legs).tree(node)
+    unit = str(dimension_of(node, legs.findings))
+    if tree is None or legs.findings:
+        raise ObservableError(text, tuple(sorted(legs.findings, key=lambda finding: finding.position)))
+    if size_of(tree) * (1 if legs.each is None else len(legs.each.codes)) > MOST_NODES:
+        expected = f"at most {MOST_NODES} numbers, operators and calls, counted for each of identical particles"
+        raise ObservableError(text, (Finding(0, expected),))
+    return Observable(
+        text=" ".join(text.split()),
+        trees=_entries(tree, legs.each),
+        unit=unit,
+        quantifier=legs.quantifier,
+        range=_range(tree),
+        azimuthal=any(ROWS[leaf.function].azimuthal for leaf in leaves(tree) if leaf.function in ROWS),
+        axis=_axis(tree, reaction),
+    )
+
+
+def _parsed(text: str) -> Node:
     try:
         node = parse(text, LANGUAGE)
     except GrammarError as error:
         raise ObservableError(error.text, error.findings) from None
     if depth_of(node) > DEEPEST:
         raise ObservableError(text, (Finding(0, f"at most {DEEPEST} operators after one another"),))
-    resolver = Resolver(reaction, numbered)
-    tree = resolver.tree(node)
-    if resolver.findings or tree is None:
-        raise ObservableError(text, tuple(resolver.findings))
-    quantifier = resolver.quantifier
-    try:
-        unit = str(dimension_of(tree))
-    except UnitMismatchError as error:
-        expected = f"quantities of one unit in a sum or comparison, not {error}"
-        raise ObservableError(text, (Finding(0, expected),)) from None
-    return Observable(
-        text=" ".join(text.split()),
-        trees=_entries(tree, resolver.each),
-        unit=unit,
-        quantifier=quantifier,
-        range=_range(tree),
-        azimuthal=any(ROWS[leaf.function].azimuthal for leaf in leaves(tree) if leaf.function in ROWS),
-        axis=_axis(tree, reaction) if quantifier is None else None,
-    )
+    return node
 
 
 def _entries(tree: Tree, each: Each | None) -> tuple[Tree, ...]:

@@ -9,7 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.event import Event
-from barnwright.kinematics import CM, LAB, FourVector
+from barnwright.kinematics import CM, LAB, FourVector, Frame
 from barnwright.observables.tree import Constant, Leading, Leaf, Tree
 
 Array = NDArray[np.float64]
@@ -110,6 +110,9 @@ def _acollinearity(leaf: Leaf, event: Event) -> Array:
 
 
 def _delta_phi(leaf: Leaf, event: Event) -> Array:
+    """In (−π, π]; two bodies are back to back across the beam, whatever rounding says."""
+    if len(event.reaction.outgoing) == 2 and leaf.frame in (LAB, CM):
+        return np.full(event.shape, np.pi)
     first, second = _vectors(leaf, event)
     difference = np.asarray(first.phi - second.phi)
     wrapped = np.where(difference > np.pi, difference - 2 * np.pi, difference)
@@ -138,8 +141,6 @@ def _energy_fraction(leaf: Leaf, event: Event) -> Array:
 
 def _helicity_angle(leaf: Leaf, event: Event) -> Array:
     """Between x in the rest frame of the system, axes of the cm, and the flight of the system in the cm."""
-    from barnwright.kinematics import Frame
-
     system = event.vector(leaf.of[0], CM)
     for code in leaf.of[1:]:
         system = system + event.vector(code, CM)

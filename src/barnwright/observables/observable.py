@@ -67,10 +67,14 @@ class Observable:
         return len(self.trees)
 
     def values(self, event: Event) -> Array:
-        """The values, in `unit`, broadcasting to ``event.shape``; entries first where there is a quantifier."""
-        if self.quantifier is None:
-            return evaluate(self.trees[0], event)
-        return np.stack(np.broadcast_arrays(*[evaluate(tree, event) for tree in self.trees]))
+        """The values, in `unit`, broadcasting to ``event.shape``; entries first where there is a quantifier.
+
+        Infinite where the table says so, not a number where arithmetic has no value: ``sqrt`` of what is negative.
+        """
+        with np.errstate(all="ignore"):
+            if self.quantifier is None:
+                return evaluate(self.trees[0], event)
+            return np.stack(np.broadcast_arrays(*[evaluate(tree, event) for tree in self.trees]))
 
     def __hash__(self) -> int:
         return hash(self.text)

@@ -76,3 +76,8 @@ def leaves(tree: Tree) -> tuple[Leaf, ...]:
     if isinstance(tree, Operation):
         return tuple(leaf for operand in tree.operands for leaf in leaves(operand))
     return ()
+
+
+def size_of(tree: Tree) -> int:
+    """How many constants, leaves and operations a tree has."""
+    return 1 + sum(size_of(operand) for operand in tree.operands) if isinstance(tree, Operation) else 1
