@@ -2,14 +2,28 @@
 
 from __future__ import annotations
 
+import math
 from functools import lru_cache
 from typing import Any
 
 from barnwright.errors import nearest
 from barnwright.formula.errors import FormulaError
-from barnwright.formula.formula import Formula, Step
+from barnwright.formula.formula import Formula, Step, last_uses
 from barnwright.formula.language import ELEMENTARY, INVARIANTS, LANGUAGE, OF_LEGS, RESERVED
-from barnwright.grammar import Binary, Call, Finding, GrammarError, LegName, Name, Negation, Node, Number, parse
+from barnwright.grammar import (
+    MOST_FINDINGS,
+    Binary,
+    Call,
+    Finding,
+    GrammarError,
+    LegName,
+    Name,
+    Negation,
+    Node,
+    Number,
+    Selection,
+    parse,
+)
 from barnwright.reaction import LegError, Reaction
 
 
@@ -21,7 +35,7 @@ def compile_formula(expression: Any, reaction: Reaction, parameter_names: tuple[
     expression : str or sympy expression
     reaction : Reaction
     parameter_names : tuple of str
-        The only names that it may use besides s, t, u and pi.
+        The only names that it may use besides s, t, u and pi; t and u are there for two outgoing particles.
 
     Raises
     ------
@@ -49,7 +63,8 @@ def _of_text(text: str, reaction: Reaction, parameter_names: tuple[str, ...]) ->
     compiler.compile(node)
     if compiler.findings:
         raise FormulaError(text, tuple(sorted(compiler.findings, key=lambda finding: finding.position)))
-    return Formula(text, tuple(compiler.steps))
+    program = tuple(compiler.steps)
+    return Formula(text, program, last_uses(program))
 
 
 class _Compiler:
@@ -77,12 +92,15 @@ class _Compiler:
                 results.append(self._number_of(self._step(node, operands)))
 
     def _number_of(self, step: Step) -> int:
-        if step not in self._known:
-            self._known[step] = len(self.steps)
+        """The number of a step, which is an earlier one's where it is the same."""
+        number = self._known.setdefault(step, len(self.steps))
+        if number == len(self.steps):
             self.steps.append(step)
-        elif self._known[step] != len(self.steps) - 1:
-            return self._known[step]
-        return self._known[step]
+        return number
+
+    def _find(self, position: int, expected: str, nearest: str | None = None) -> None:
+        if len(self.findings) < MOST_FINDINGS:
+            self.findings.append(Finding(position, expected, nearest))
 
     def _step(self, node: Node, operands: tuple[int, ...]) -> Step:
         match node:
@@ -97,28 +115,43 @@ class _Compiler:
             case Call(function=function) if function in ELEMENTARY:
                 return function, operands
             case _:
-                return node.function, tuple(self._leg(leg) for leg in node.arguments if isinstance(leg, LegName))
+                return self._of_legs(node)
 
     def _name(self, node: Name) -> Step:
         if node.name in self.names:
             return "parameter", (node.name,)
         if node.name in INVARIANTS:
+            if node.name != "s" and len(self.reaction.outgoing) != 2:
+                expected = f"four-products: {node.name} belongs to two outgoing particles"
+                self._find(node.position, expected, "dot(beam_a, 1)")
             return node.name, ()
         if node.name == "pi":
-            return "number", (3.141592653589793,)
+            return "number", (math.pi,)
         choices = (*self.names, *INVARIANTS, "pi", *OF_LEGS, *ELEMENTARY)
         declared = f"a declared parameter ({', '.join(self.names)})" if self.names else "a declared parameter"
-        self.findings.append(Finding(node.position, f"s, t, u, pi or {declared}", nearest(node.name, choices)))
+        self._find(node.position, f"s, t, u, pi or {declared}", nearest(node.name, choices))
         return "number", (0.0,)
 
-    def _leg(self, leg: LegName) -> Any:
-        key = int(leg.name) if leg.name.isdigit() else leg.name
+    def _of_legs(self, node: Call) -> Step:
+        legs = [leg for leg in node.arguments if isinstance(leg, LegName)]
+        codes = [self._leg(leg) for leg in legs]
+        if node.function == "invariant_mass" and None not in codes and len(set(codes)) < len(codes):
+            self._find(node.position, "invariant_mass of different particles")
+        return node.function, tuple({-1: "beam_a", -2: "beam_b"}.get(code or 0, code) for code in codes)
+
+    def _leg(self, leg: LegName) -> int | None:
+        if len(self.findings) >= MOST_FINDINGS:
+            return None
         try:
-            code = self.reaction.leg(key)
+            return self.reaction.leg(leg.key)
         except LegError as error:
-            self.findings.append(Finding(leg.position, error.expected, error.nearest))
-            return 1
-        return {-1: "beam_a", -2: "beam_b"}.get(code, code)
+            numbers = [str(k) for k, name in enumerate(self.reaction.outgoing, 1) if name == leg.name]
+            if len(numbers) > 1:
+                expected = f"the number of one of the {len(numbers)} {leg.name}: {' or '.join(numbers)}"
+                self._find(leg.position, expected, numbers[0])
+            else:
+                self._find(leg.position, error.expected, error.nearest)
+            return None
 
 
 def _children(node: Node) -> tuple[Node, ...]:
@@ -127,5 +160,5 @@ def _children(node: Node) -> tuple[Node, ...]:
     if isinstance(node, Negation):
         return (node.operand,)
     if isinstance(node, Call) and node.function in ELEMENTARY:
-        return tuple(a for a in node.arguments if isinstance(a, (Number, Name, Negation, Binary, Call)))
+        return tuple(a for a in node.arguments if not isinstance(a, (LegName, Selection)))
     return ()

@@ -36,10 +36,13 @@ class Formula:
     program : tuple of steps
         ``("number", (2.0,))``, ``("parameter", ("alpha",))``, ``("s", ())``, ``("dot", (x, y))`` with legs, and
         ``("+", (3, 5))``, ``("log", (4,))`` with the numbers of earlier steps. The last step is the value.
+    spent : tuple of tuples of int
+        For every step the earlier ones whose values nobody asks for afterwards: a long formula holds few arrays.
     """
 
     text: str
     program: tuple[Step, ...]
+    spent: tuple[tuple[int, ...], ...]
 
     def evaluate(self, event: Event, parameters: Mapping[str, Any]) -> Array:
         """The value of the formula for a batch; broadcasts to ``event.shape``.
@@ -51,9 +54,23 @@ class Formula:
         """
         values: list[Any] = []
         with np.errstate(all="ignore"):
-            for operation, arguments in self.program:
+            for (operation, arguments), spent in zip(self.program, self.spent, strict=True):
                 values.append(_step(operation, arguments, values, (event, parameters)))
+                for earlier in spent:
+                    values[earlier] = None
         return np.asarray(values[-1], dtype=float)
+
+
+def last_uses(program: tuple[Step, ...]) -> tuple[tuple[int, ...], ...]:
+    """For every step of a program the earlier ones that it is the last to use."""
+    last: dict[int, int] = {}
+    for number, (operation, arguments) in enumerate(program):
+        if operation in _ARITHMETIC or operation in ELEMENTARY:
+            last.update(dict.fromkeys(arguments, number))
+    spent: list[list[int]] = [[] for _ in program]
+    for earlier, number in last.items():
+        spent[number].append(earlier)
+    return tuple(map(tuple, spent))
 
 
 def _step(operation: str, arguments: tuple[Any, ...], values: list[Any], given: tuple[Event, Mapping[str, Any]]) -> Any:
