@@ -27,7 +27,7 @@ FOR_DEVELOPERS := $(STAMPS)/developers-$(PINS)
 PROTO_PY := .venv-proto/bin/python
 PROTO_MADE := .venv-proto/made-$(call digest,tools/stubs-requirements.txt)
 
-.PHONY: help demo test check lint types imports dependencies stubs protos proto proto-image constraints snapshots bench statistics clean
+.PHONY: help demo test check lint types imports dependencies stubs protos proto proto-image lowest constraints snapshots bench statistics clean
 
 help:  ## Show this list
 	@sed -nE 's/^([a-z-]+):.*##/\1\t/p' $(MAKEFILE_LIST) | expand -t 16
@@ -66,6 +66,12 @@ proto: $(PROTO_MADE)  ## Write the stubs of protos/ anew
 
 proto-image: $(FOR_DEVELOPERS)  ## At a release: freeze protos/ as the image that later changes must not break
 	$(VENV)/bin/buf build protos --exclude-source-info -o protos/image.binpb
+
+lowest: $(BUILT)  ## At a release: run the tests with the oldest versions that pyproject.toml allows
+	rm -rf build/lowest && $(PY) -m venv build/lowest
+	$(PY) tools/floors.py > build/floors.txt
+	build/lowest/bin/python -m pip install -qq -r build/floors.txt $(WHEELS)/*.whl
+	build/lowest/bin/python -m pytest -q --deselect tests/house/test_surface.py::test_help_texts_are_pinned
 
 constraints: $(BUILT)  ## At a release: pin the newest versions that fit pyproject.toml
 	rm -rf build/newest && $(PY) -m venv build/newest
