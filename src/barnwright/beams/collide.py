@@ -1,7 +1,8 @@
 """From beam settings to the collision: √s, and the rapidity of the centre of mass in the lab.
 
-Everything is built from kinetic energies, so a soft photon on a target or a beam just above a threshold keeps its
-digits: s − (m_a + m_b)² = 2 (T_a T_b + T_a m_b + T_b m_a + p_a p_b) for beams head on.
+Everything is built from kinetic energies, so a soft photon on a target keeps its digits:
+s − (m_a + m_b)² = 2 (T_a T_b + T_a m_b + T_b m_a + p_a p_b) for beams head on. √s itself is rounded to a few ε where it
+was not given as such; what that means close above the threshold of a final state, the error of the answer says.
 """
 
 from __future__ import annotations

@@ -19,7 +19,7 @@ from barnwright.documents import Note as NoteDocument
 from barnwright.engine.derived import between_variations, point_asymmetries
 from barnwright.engine.histograms import HistogramForm, histogram_form
 from barnwright.engine.plan import Group, Plan
-from barnwright.integrate.quadrature import COUNTED, DEEPEST, NON_FINITE
+from barnwright.integrate.quadrature import COUNTED, NON_FINITE
 from barnwright.integrate.settled import Settled
 from barnwright.units import from_natural
 
@@ -114,7 +114,7 @@ class _Shared:
             **plan.provided,
             "parameters": dict(nominal.parameters),
             "masses": plan.masses_by_name(nominal),
-            "sources": {**plan.sources, **plan.mass_sources(group)},
+            "sources": plan.sources(group),
             "versions": {**origin.versions, **plan.plugin_version},
             "source_digests": {plan.source.name: plan.source.digest},
             "environment": origin.environment,
@@ -193,10 +193,11 @@ class _Shared:
         if not collision.above(threshold)[0, 0] > 0:
             text = f"√s is not above {threshold:.10g} GeV, the threshold of the final state, so σ = 0"
             found.append(NoteDocument.build(code="below_threshold", text=text))
-        elif value[0, 0] == 0.0 and setting.cuts:
+        elif value[0, 0] == 0.0:
             names = ", ".join(cut.name for cut in setting.cuts)
-            text = f"no event can pass the cuts ({names}), so σ = 0"
-            found.append(NoteDocument.build(code="cuts_exclude_everything", text=text))
+            code = "cuts_exclude_everything" if names else "law_is_zero"
+            text = f"no event can pass the cuts ({names})" if names else "the law was 0 at every point that was asked"
+            found.append(NoteDocument.build(code=code, text=f"{text}, so σ = 0"))
         return tuple(found)
 
 
@@ -220,8 +221,8 @@ def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
         found.append(NoteDocument.build(code="negative", text=text))
     if unresolved:
         text = (
-            f"{unresolved} pieces of the polar angle did not settle after {DEEPEST} halvings: the law probably "
-            "diverges there; a cut that keeps away from cos_theta = 1 or -1 in the cm would close the region"
+            f"{unresolved} panels of the polar angle did not settle: the law diverges, or has more structure "
+            "than quadrature resolves; a cut that keeps away from cos_theta = 1 and -1 in the cm closes most divergences"
         )
         found.append(NoteDocument.build(code="not_settled", text=text))
     return tuple(found)

@@ -8,7 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.documents import Histogram
-from barnwright.engine.setting import HistogramPlan
+from barnwright.engine.setting import HistogramPlan, polar_kind
 
 Array = NDArray[np.float64]
 
@@ -69,8 +69,11 @@ def histogram_form(plan: HistogramPlan, unit: str) -> HistogramForm:
 
 def _solid_angles(plan: HistogramPlan, edges: Array) -> Array:
     """2π |Δcos θ| of every bin, in sr; for bins of the angle by 2 sin(mean) sin(half width)."""
-    if plan.observables[0].unit != "rad":
+    kind = polar_kind(plan.observables[0])
+    if kind == "cosine":
         return 2 * np.pi * np.diff(edges)
+    if kind == "deg":
+        edges = edges * (np.pi / 180)
     mean, half = 0.5 * (edges[1:] + edges[:-1]), 0.5 * np.diff(edges)
     return 4 * np.pi * np.sin(mean) * np.sin(half)
 

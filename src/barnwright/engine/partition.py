@@ -17,13 +17,17 @@ from barnwright.engine.membership import OUTSIDE, memberships, passes
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
 from barnwright.integrate.panels import Panels, panels_between
-from barnwright.integrate.polar_axis import Integers
+from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Integers
 from barnwright.integrate.roots import Crossings
 from barnwright.observables import Cut, Observable
 
 Array = NDArray[np.float64]
 
 MANY_ROWS = 64
+FEW_LEVELS = 32
+SLICES = 16
+"""Equal slices of each hemisphere for a quadrature with few edges of its own: an integrand is looked at closely enough
+to see a bump as narrow as a hundredth of the axis, also where nobody has declared a peak."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,21 +42,36 @@ def partition_of(setting: Setting, layout: Layout, rows: Rows) -> Partition:
     """The partition of a batch of rows."""
     collision = rows.collision
     wanted = levels_by_observable(setting.cuts, layout)
+    sliced = setting.rule == "quadrature" and sum(levels.size for levels in wanted.values()) < FEW_LEVELS
     if all(is_polar(observable, collision.lab_is_cm) for observable in wanted):
-        return _polar_partition(setting.cuts, layout, collision.orientation)
+        return _polar_partition(setting.cuts, layout, collision.orientation, sliced)
     found, given_for = axis_crossings(wanted, collision, rows.values, rows.count)
-    panels = panels_between(found, given_for)
+    panels = panels_between(Crossings.join([found, slices(given_for)]) if sliced else found, given_for)
     middle = panels.middle()
     return _partition(setting.cuts, layout, panels, lambda observable: rows.values(observable, None, middle))
 
 
 @lru_cache(maxsize=64)
-def _polar_partition(cuts: tuple[Cut, ...], layout: Layout, orientation: int) -> Partition:
+def _polar_partition(cuts: tuple[Cut, ...], layout: Layout, orientation: int, sliced: bool) -> Partition:
     wanted = levels_by_observable(cuts, layout)
-    found = Crossings.join([polar_crossings(o, orientation, levels) for o, levels in wanted.items()])
+    parts = [polar_crossings(o, orientation, levels) for o, levels in wanted.items()]
+    found = Crossings.join([*parts, slices(1)] if sliced else parts)
     panels = panels_between(found, 1)
     middle = panels.middle()
     return _partition(cuts, layout, panels, lambda observable: polar_values(observable, orientation, middle))
+
+
+def slices(rows: int) -> Crossings:
+    """The ends of the slices of both hemispheres, the same for every row."""
+    inner = np.arange(1, SLICES) / SLICES
+    count = 2 * inner.size
+    return Crossings(
+        np.repeat(np.arange(rows), count),
+        np.tile(np.repeat([BACKWARD, FORWARD], inner.size), rows),
+        np.tile(inner, 2 * rows),
+        np.zeros(count * rows),
+        np.zeros(count * rows, dtype=bool),
+    )
 
 
 def _partition(

@@ -105,14 +105,11 @@ class Plan:
             starts.append(starts[-1] + len(group.points))
         return tuple(starts)
 
-    @property
-    def sources(self) -> dict[str, str]:
-        """Where the values of parameters come from, unless the request says otherwise."""
-        return dict(self.provided_sources)
-
-    def mass_sources(self, group: Group) -> dict[str, str]:
-        """Where each leg's mass comes from, by ``masses.`` and the particle."""
-        return {f"masses.{self.reaction.name_of(code)}": text for code, text in group.mass_sources.items()}
+    def sources(self, group: Group) -> dict[str, str]:
+        """Where parameters, constants and (by ``masses.`` and the particle) masses come from."""
+        asked = dict.fromkeys(group.request.parameters, "request")
+        masses = {f"masses.{self.reaction.name_of(code)}": text for code, text in group.mass_sources.items()}
+        return {**self.provided_sources, **asked, **masses}
 
     def masses_by_name(self, setting: Setting) -> dict[str, float]:
         """The mass in GeV of every particle of the reaction."""

@@ -37,7 +37,17 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
         integrals = _closed_form(integrand, partition.panels)
     else:
         integrals = integrate_panels(integrand.density(), partition.panels, integrand.scales(), rows.count)
+    if setting.beams.given == "kinetic":
+        integrals = replace(integrals, error=integrals.error + _threshold_rounding(rows) * np.abs(integrals.value))
     return _collected(integrals, partition, layout, rows)
+
+
+def _threshold_rounding(rows: Rows) -> Array:
+    """What a few ε of s − (m_a + m_b)² mean for σ ∝ √(√s − M) above a threshold M, as a share of σ; shape (row, 1)."""
+    collision, masses = rows.collision, rows.masses
+    before, after = masses[0] + masses[1], masses[2] + masses[3]
+    excess = collision.above(before) * (collision.sqrt_s + before)
+    return 2 * EPSILON * excess / (collision.sqrt_s * collision.above(after))
 
 
 def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
@@ -50,6 +60,8 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     direction = np.where(x[:, -1:] >= x[:, :1], 1.0, -1.0)
     value = direction * np.diff(heights, axis=1)
     error = 4 * EPSILON * (np.abs(heights[:, 1:]) + np.abs(heights[:, :-1])) * (panels.width > 0)
+    with np.errstate(divide="ignore", invalid="ignore"):  # the antiderivative gets its edges as floats, rounded to ε
+        error += np.where(panels.width > 0, EPSILON * np.abs(value) / panels.width, 0.0)
     total = direction * (heights[:, -1:] - heights[:, :1])
     counts = np.zeros((rows.count, len(COUNTED)))
     counts[:, EVALUATIONS] = 1 + np.count_nonzero(panels.width, axis=1)

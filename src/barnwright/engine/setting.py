@@ -7,7 +7,7 @@ from math import prod
 from typing import Literal
 
 from barnwright.beams import BeamSettings
-from barnwright.observables import Cut, Observable
+from barnwright.observables import Cut, Observable, angle_in_degrees
 
 Masses = tuple[float, float, float, float]
 ParameterValue = float | int | bool | str
@@ -31,6 +31,17 @@ class HistogramPlan:
     def components(self) -> int:
         """Bins of all axes, and the underflow and the overflow."""
         return prod(self.shape) + 2
+
+
+def polar_kind(observable: Observable) -> Literal["cosine", "rad", "deg"] | None:
+    """How an observable is the polar angle of one particle in some frame; None where it is not."""
+    tree = angle_in_degrees(observable.tree) or observable.tree
+    function = getattr(tree, "function", None)
+    if function == "cos_theta":
+        return "cosine"
+    if function != "theta":
+        return None
+    return "deg" if observable.unit == "deg" else "rad"
 
 
 @dataclass(frozen=True, slots=True)

@@ -30,6 +30,14 @@ EVALUATIONS, NON_FINITE, NEGATIVE, UNRESOLVED = range(len(COUNTED))
 TOLERANCE = 4e-14
 ROUNDING = 4 * EPSILON
 DEEPEST = 60
+SETTLED = 1e-9
+"""A panel that was left open has settled all the same when its error is a smaller share of it."""
+MOST_OPEN = 256
+"""Pieces of one panel that may still be open; an integrand that needs more does not settle."""
+MOST_EVALUATIONS = 4_000_000
+"""Of one row."""
+AT_ONCE = 2048
+"""Pieces that are evaluated at once, so that memory stays small."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -68,7 +76,7 @@ class _Pieces:
     high: Array
     scale: Array
 
-    def take(self, chosen: Integers | NDArray[np.bool_]) -> _Pieces:
+    def take(self, chosen: Integers | NDArray[np.bool_] | slice) -> _Pieces:
         return _Pieces(*(getattr(self, f)[chosen] for f in ("row", "panel", "side", "low", "high", "scale")))
 
     def halved(self) -> _Pieces:
@@ -106,7 +114,11 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
         δ of the backward and the forward pole (∞: no peak there).
     rows : int
     """
-    scale = scales[:, panels.side]
+    with np.errstate(invalid="ignore", over="ignore"):  # what is not finite is counted, not warned about
+        return _integrated(density, panels, scales[:, panels.side], rows)
+
+
+def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> PanelIntegrals:
     left, right = to_map(panels.left, scale), to_map(panels.right, scale)
     ends, measure = _first_nodes(panels, scale, left, right)
     nodes, weights = gauss_legendre(FIRST_ORDER)
@@ -173,30 +185,54 @@ def _refined(density: Density, pieces: _Pieces, result: PanelIntegrals) -> Panel
 
 
 def _halved(density: Density, pieces: _Pieces, result: PanelIntegrals) -> PanelIntegrals:
-    """Halve the pieces until each half agrees with its coarser rule; add the halves up in a fixed order."""
-    for _ in range(DEEPEST):
+    """Halve the pieces until each half agrees with its coarser rule; add the halves up in a fixed order.
+
+    A panel with too many open pieces, or a row that has cost too much, is left as it is, and counted where it matters.
+    """
+    left_open = np.zeros(result.value.shape, dtype=bool)
+    for depth in range(DEEPEST):
         pieces = pieces.halved()
         coarse, _, result = _evaluated(density, pieces, ORDERS[-2], result)
         fine, size, result = _evaluated(density, pieces, ORDERS[-1], result)
         change = np.abs(fine - coarse)
         whole = np.abs(result.value[pieces.row, pieces.panel])
-        done = ~(change > TOLERANCE * np.maximum(size, whole))
+        settled = ~(change > TOLERANCE * np.maximum(size, whole))
+        given_up = ~settled & (_hopeless(pieces.take(~settled), pieces, result) | (depth == DEEPEST - 1))
+        done = settled | given_up
         place = (pieces.row[done], pieces.panel[done])
         np.add.at(result.value, place, fine[done])
         np.add.at(result.error, place, change[done])
-        pieces, fine, change = pieces.take(~done), fine[~done], change[~done]
+        left_open[pieces.row[given_up], pieces.panel[given_up]] = True
+        pieces = pieces.take(~done)
         if pieces.row.size == 0:
-            return result
-    np.add.at(result.value, (pieces.row, pieces.panel), fine)
-    np.add.at(result.error, (pieces.row, pieces.panel), change)
-    np.add.at(result.counts[:, UNRESOLVED], pieces.row, 1)
+            break
+    matters = left_open & (result.error > SETTLED * np.abs(result.value))
+    result.counts[:, UNRESOLVED] += np.count_nonzero(matters, axis=1)
     return result
+
+
+def _hopeless(still_open: _Pieces, pieces: _Pieces, result: PanelIntegrals) -> NDArray[np.bool_]:
+    """Which pieces belong to a panel with too many open ones, or to a row that has cost too much."""
+    number = np.zeros(result.value.shape, dtype=np.intp)
+    np.add.at(number, (still_open.row, still_open.panel), 1)
+    crowded = number[pieces.row, pieces.panel] > MOST_OPEN
+    return np.asarray(crowded | (result.counts[pieces.row, EVALUATIONS] > MOST_EVALUATIONS))
 
 
 def _evaluated(
     density: Density, pieces: _Pieces, order: int, result: PanelIntegrals
 ) -> tuple[Array, Array, PanelIntegrals]:
-    """One rule on every piece: integral, integral of the absolute value, and the counters brought forward."""
+    """One rule on every piece, some at a time: integral, integral of the absolute value, counts brought forward."""
+    integral, size = np.empty(pieces.row.size), np.empty(pieces.row.size)
+    for first in range(0, pieces.row.size, AT_ONCE):
+        some = slice(first, first + AT_ONCE)
+        integral[some], size[some], result = _evaluated_at_once(density, pieces.take(some), order, result)
+    return integral, size, result
+
+
+def _evaluated_at_once(
+    density: Density, pieces: _Pieces, order: int, result: PanelIntegrals
+) -> tuple[Array, Array, PanelIntegrals]:
     nodes, weights = gauss_legendre(order)
     span = (pieces.high - pieces.low)[:, None]
     x, slope = from_map(pieces.low[:, None] + span * nodes, pieces.scale[:, None])

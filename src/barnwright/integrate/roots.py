@@ -176,7 +176,7 @@ def _uncertainty(function: AxisFunction, part: _Stretch, place: Array, level: Ar
     size = EPSILON * np.maximum(np.abs(level), np.minimum(np.abs(part.at_low), np.abs(part.at_high)))
     room = np.minimum(np.abs(place - part.low), np.abs(part.high - place))
     width = np.abs(part.high - part.low)
-    step = 0.1 * np.where(room > 0, room, width)
+    step = np.minimum(0.1 * np.maximum(room, 1e-3 * width), np.where(place > 0, 0.5 * place, width))
     up, down = (function(part.row, ends_of(part.mode, place + s * step)) for s in (1.0, -1.0))
     with np.errstate(divide="ignore", invalid="ignore"):
         rise = np.abs(up - down)

@@ -1,7 +1,7 @@
 """Observables: the table, what is made of a text, cuts and bins."""
 
 from barnwright.observables.bins import edges_of
-from barnwright.observables.compile import compile_observable
+from barnwright.observables.compile import angle_in_degrees, compile_observable
 from barnwright.observables.cuts import Cut
 from barnwright.observables.errors import ObservableError
 from barnwright.observables.observable import AxisForm, Observable, tied_selections
@@ -13,6 +13,7 @@ __all__ = [
     "Observable",
     "ObservableError",
     "Row",
+    "angle_in_degrees",
     "compile_observable",
     "edges_of",
     "table",

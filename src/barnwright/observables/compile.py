@@ -43,7 +43,7 @@ def compile_observable(text: str, reaction: Reaction, numbered: bool = False) ->
     return Observable(
         text=" ".join(text.split()),
         trees=_entries(tree, legs.each),
-        unit=unit,
+        unit=unit if angle_in_degrees(tree) is None else "deg",
         quantifier=legs.quantifier,
         range=_range(tree),
         azimuthal=any(ROWS[leaf.function].azimuthal for leaf in leaves(tree) if leaf.function in ROWS),
@@ -59,6 +59,14 @@ def _parsed(text: str) -> Node:
     if depth_of(node) > DEEPEST:
         raise ObservableError(text, (Finding(0, f"at most {DEEPEST} operators after one another"),))
     return node
+
+
+def angle_in_degrees(tree: Tree) -> Leaf | None:
+    """The angle of the table that a tree gives in degrees (``theta(x) / deg``), or None."""
+    if not isinstance(tree, Operation) or tree.function != "/" or tree.operands[1] != Leaf("deg", ()):
+        return None
+    angle = tree.operands[0]
+    return angle if isinstance(angle, Leaf) and angle.function in ROWS and ROWS[angle.function].unit == "rad" else None
 
 
 def _entries(tree: Tree, each: Each | None) -> tuple[Tree, ...]:

@@ -8,7 +8,7 @@ from typing import Literal
 
 from barnwright.documents import AsymmetryRequest, Bins, HistogramRequest, Request
 from barnwright.engine.resolve.findings import Findings
-from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout
+from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout, polar_kind
 from barnwright.observables import Cut, Observable, ObservableError, compile_observable, edges_of
 from barnwright.reaction import Reaction
 
@@ -75,19 +75,15 @@ def _even_edges(count: int, low: float, high: float, spacing: Literal["linear", 
 
 
 def _check_solid_angle(observable: Observable, edges: tuple[float, ...], where: str, findings: Findings) -> None:
-    if not is_polar_angle(observable):
-        expected = "'value' or 'bin'; a solid angle needs cos_theta(x) or theta(x) of one particle"
-        findings.add(f"{where}.per", "solid_angle", expected, "'value'")
+    kind = polar_kind(observable)
+    if kind is None:
+        expected = "'value' or 'bin'; a solid angle needs cos_theta(x), theta(x) or theta(x) / deg of one particle"
+        findings.add(f"{where}.per", "solid_angle", expected)
         return
-    low, high = (0.0, math.pi) if observable.unit == "rad" else (-1.0, 1.0)
+    low, high = {"cosine": (-1.0, 1.0), "rad": (0.0, math.pi), "deg": (0.0, 180.0)}[kind]
     if edges[0] < low or edges[-1] > high * (1 + 1e-15):
         expected = f"edges from {low:g} to {high:.16g}, where the solid angle is defined"
         findings.add(f"{where}.bins[0]", f"{edges[0]:g} to {edges[-1]:g}", expected)
-
-
-def is_polar_angle(observable: Observable) -> bool:
-    """Whether the observable is the polar angle of one particle in some frame, or its cosine."""
-    return getattr(observable.tree, "function", None) in ("cos_theta", "theta")
 
 
 def _observable(text: str, reaction: Reaction, where: str, findings: Findings) -> Observable | None:
