@@ -222,7 +222,7 @@ def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
     if unresolved:
         text = (
             f"{unresolved} panels of the polar angle did not settle: the law diverges, or has more structure "
-            "than quadrature resolves; a cut that keeps away from cos_theta = 1 and -1 in the cm closes most divergences"
+            "than quadrature resolves; a cut that keeps away from cos_theta = 1 and -1 in the cm may close it"
         )
         found.append(NoteDocument.build(code="not_settled", text=text))
     return tuple(found)

@@ -201,7 +201,7 @@ def _halved(density: Density, pieces: _Pieces, result: PanelIntegrals) -> PanelI
         done = settled | given_up
         place = (pieces.row[done], pieces.panel[done])
         np.add.at(result.value, place, fine[done])
-        np.add.at(result.error, place, change[done])
+        np.add.at(result.error, place, 2 * change[done])  # at a singular end both rules err on one side
         left_open[pieces.row[given_up], pieces.panel[given_up]] = True
         pieces = pieces.take(~done)
         if pieces.row.size == 0:
