@@ -16,7 +16,7 @@ STAMPS := $(VENV)/stamps
 WHEELS := build/wheels
 
 # Stamps carry a digest of what they stand for: a second run with the same sources does nothing.
-digest = $(shell find $(1) -type f -not -name '*.pyc' | LC_ALL=C sort | xargs sha256sum | sha256sum | cut -c1-16)
+digest = $(shell find $(1) -type f -not -name '*.pyc' | LC_ALL=C sort | xargs cksum | cksum | tr -d " ")
 SOURCES := $(call digest,src $(PLUGINS) pyproject.toml README.md LICENSE)
 PINS := $(call digest,pyproject.toml constraints.txt)
 MADE := $(STAMPS)/made-$(PINS)
@@ -92,7 +92,7 @@ clean:  ## Remove what was made: .venv, build, out, caches
 	rm -rf $(VENV) .venv-proto build dist out .mypy_cache .ruff_cache .pytest_cache .hypothesis
 
 $(MADE):
-	@echo "making $(VENV)"
+	@echo "making $(VENV)" >&2
 	@python=$$(tools/find-python $(PYTHON)); [ -x $(PY) ] || "$$python" -m venv $(VENV)
 	@$(INSTALL) hatchling
 	@mkdir -p $(STAMPS); touch $@
