@@ -86,8 +86,14 @@ def _leg(node: Any) -> str:
 
 
 def _refuse(node: Any, expected: str = "") -> NoReturn:
+    known = f"numbers, symbols, + * ** and the functions {', '.join((*OF_LEGS, *ELEMENTARY))}"
+    raise FormulaError(_shown(node), (Finding(0, expected or known),))
+
+
+def _shown(node: Any) -> str:
+    """The node as sympy writes it, if it is short; else its kind: writing it could take for ever."""
     import sympy
 
-    few = len(list(islice(sympy.preorder_traversal(node), _SHOWN))) < _SHOWN
-    known = f"numbers, symbols, + * ** and the functions {', '.join((*OF_LEGS, *ELEMENTARY))}"
-    raise FormulaError(str(node) if few else type(node).__name__, (Finding(0, expected or known),))
+    parts = list(islice(sympy.preorder_traversal(node), _SHOWN))
+    huge = any(part.is_Rational and max(abs(part.p), part.q) >= _EXACT**16 for part in parts)
+    return str(node) if len(parts) < _SHOWN and not huge else type(node).__name__

@@ -68,8 +68,8 @@ def test_the_longest_sum_has_a_value() -> None:
 
 
 WORDS = (
-    "sqrt_s thrust deg pi abs( sqrt( min( max( leading( each( any( mu- mu+ gamma beam_a 1 2 3 0.5 1e9 frame=cm frame=lab "
-    "frame=rest( of=( by= 'pt' \"energy\" rank= ( ) ) ) , , + - * / ** ^ = é"
+    "sqrt_s thrust deg pi abs( sqrt( min( max( leading( each( any( mu- mu+ gamma beam_a 1 2 3 0.5 1e9 frame=cm "
+    "frame=lab frame=rest( of=( by= 'pt' \"energy\" rank= ( ) ) ) , , + - * / ** ^ = é"
 )
 TERMS = "sqrt_s thrust pi deg 2 0.5 -3 pt(mu) pt(gamma) pt(each(gamma)) energy(leading(gamma))"
 ARGUMENTS = {"one": "1", "pair": "1, 2", "several": "1", "transfer": "beam_a, 1"}
