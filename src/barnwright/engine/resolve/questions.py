@@ -53,14 +53,34 @@ def _histogram(asked: HistogramRequest, index: int, reaction: Reaction, findings
         findings.add(f"{where}.observables", asked.observables, "no any(...): it belongs into a cut", "each(...)")
     if len(entries) > 1:
         findings.add(f"{where}.observables", asked.observables, "each(...) over the same particles on both axes")
-    edges = tuple(bin_edges(axis) for axis in asked.bins)
+    edges = _all_edges(asked, where, findings)
+    if edges is None:
+        return None
     if asked.per == "solid_angle":
         _check_solid_angle(found[0], edges[0], where, findings)
     return HistogramPlan(asked.name, found, edges, asked.per)
 
 
+def _all_edges(asked: HistogramRequest, where: str, findings: Findings) -> tuple[tuple[float, ...], ...] | None:
+    """The edges of every axis, or None and findings."""
+    edges = []
+    for index, bins in enumerate(asked.bins):
+        try:
+            edges.append(bin_edges(bins))
+        except ValueError:
+            expected = f"fewer bins: floats between {bins.low!r} and {bins.high!r} cannot tell so many apart"
+            findings.add(f"{where}.bins[{index}].count", bins.count, expected)
+    return tuple(edges) if len(edges) == len(asked.bins) else None
+
+
 def bin_edges(bins: Bins) -> tuple[float, ...]:
-    """The edges of one axis."""
+    """The edges of one axis.
+
+    Raises
+    ------
+    ValueError
+        When the range is too narrow, or too wide, for so many bins.
+    """
     if bins.edges is not None:
         return bins.edges
     assert bins.count is not None
