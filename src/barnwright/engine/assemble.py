@@ -58,14 +58,22 @@ class Answers:
 
     @property
     def status(self) -> Status:
-        """The status of all points together."""
-        return "suspect" if self.counts[:, NON_FINITE:].any() else self.verdict
+        """The status of all points together: the worst of theirs."""
+        found = {self.status_of(point) for point in range(len(self.value))}
+        return next((status for status in ("suspect", "evaluation_limit") if status in found), self.verdict)
 
     def status_of(self, point: int) -> Status:
         """The status of one point: a fault at another point is not its own."""
         if self.counts[point, NON_FINITE:].any():
             return "suspect"
-        return "converged" if self.verdict == "suspect" else self.verdict
+        status = "converged" if self.verdict == "suspect" else self.verdict
+        return "evaluation_limit" if status == "converged" and not self.is_accurate(point) else status
+
+    def is_accurate(self, point: int) -> bool:
+        """Whether the error of a point's total is as small as the request asks."""
+        accuracy = self.plan.groups[self._places[point][0]].request.accuracy
+        value, error = abs(float(self.value[point, 0, 0])), float(self.error[point, 0, 0])
+        return error <= max((accuracy.relative or 0.0) * value, accuracy.absolute or 0.0)
 
     def prediction(self, point: int) -> Prediction:
         """The prediction at one point of the scan."""
@@ -219,6 +227,12 @@ def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
     if negative:
         text = f"the law was negative at {negative} points{where}"
         found.append(NoteDocument.build(code="negative", text=text))
+    if answers.status_of(point) == "evaluation_limit":
+        text = (
+            "the error is larger than what was asked for: a cut or an asymmetry lies within rounding of an extremum "
+            "of its observable, where √ε is all that can be had; move it away"
+        )
+        found.append(NoteDocument.build(code="accuracy_not_reached", text=text))
     if unresolved:
         text = (
             f"{unresolved} panels of the polar angle did not settle: the law diverges, or has more structure "

@@ -7,11 +7,29 @@ or one much lighter than its energy, keeps all its digits. GeV; metric (+, −, 
 from __future__ import annotations
 
 from functools import cached_property
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
 Array = NDArray[np.float64]
+
+
+class Exact(NamedTuple):
+    """What is known of a four-vector by a road without rounding or cancellation; None: only by its components.
+
+    A kinetic energy from the recoil of a target at rest; energy and momentum of two bodies in the cm, which do not
+    depend on the angle; px and py of the second of them, opposite to those of the first.
+    """
+
+    kinetic: Array | None = None
+    energy: Array | None = None
+    momentum: Array | None = None
+    px: Array | None = None
+    py: Array | None = None
+
+
+NOTHING_EXACT = Exact()
 
 
 class FourVector:
@@ -24,15 +42,14 @@ class FourVector:
     pt, phi : arrays, GeV and rad
         Transverse momentum and azimuth, phi in (−π, π].
     mass : float or array, GeV
-    kinetic : array, GeV, optional
-        The kinetic energy where a road without cancellation is known (the recoil of a target at rest).
+    exact : Exact
     """
 
     def __init__(
-        self, plus: Array, minus: Array, pt: Array, phi: Array, mass: float | Array, kinetic: Array | None = None
+        self, plus: Array, minus: Array, pt: Array, phi: Array, mass: float | Array, exact: Exact = NOTHING_EXACT
     ) -> None:
         self.plus, self.minus, self.pt, self.phi, self.mass = plus, minus, pt, phi, mass
-        self._kinetic = kinetic
+        self._exact = exact
 
     @classmethod
     def from_components(cls, energy: Array, px: Array, py: Array, pz: Array, mass: float | Array) -> FourVector:
@@ -46,6 +63,8 @@ class FourVector:
     @cached_property
     def energy(self) -> Array:
         """Energy in GeV."""
+        if self._exact.energy is not None:
+            return self._exact.energy
         return 0.5 * (self.plus + self.minus)
 
     @cached_property
@@ -56,25 +75,28 @@ class FourVector:
     @cached_property
     def px(self) -> Array:
         """Momentum along x in GeV."""
-        return self.pt * np.cos(self.phi)
+        return self.pt * np.cos(self.phi) if self._exact.px is None else self._exact.px
 
     @cached_property
     def py(self) -> Array:
         """Momentum along y in GeV."""
-        return self.pt * np.sin(self.phi)
+        return self.pt * np.sin(self.phi) if self._exact.py is None else self._exact.py
 
     @cached_property
     def momentum(self) -> Array:
         """|p| in GeV."""
-        if self._kinetic is not None:
-            return np.sqrt(self._kinetic * (self._kinetic + 2 * self.mass))
+        if self._exact.momentum is not None:
+            return self._exact.momentum
+        kinetic = self._exact.kinetic
+        if kinetic is not None:
+            return np.sqrt(kinetic * (kinetic + 2 * self.mass))
         return np.sqrt(self.pt * self.pt + self.pz * self.pz)
 
     @cached_property
     def kinetic_energy(self) -> Array:
         """E − m in GeV, from |p|²/(E + m)."""
-        if self._kinetic is not None:
-            return self._kinetic
+        if self._exact.kinetic is not None:
+            return self._exact.kinetic
         total = self.energy + self.mass
         return np.square(self.momentum) / np.where(total > 0, total, 1.0)
 

@@ -19,7 +19,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.kinematics.collision import Collision
-from barnwright.kinematics.four_vector import FourVector, boost_to_rest
+from barnwright.kinematics.four_vector import Exact, FourVector, boost_to_rest
 from barnwright.kinematics.frame import CM, Frame
 
 Array = NDArray[np.float64]
@@ -89,7 +89,8 @@ class TwoBody:
     def _energy(self, code: int) -> Array:
         """cm energy of a leg in GeV."""
         if code not in self._energies:
-            self._energies[code] = np.hypot(self._momentum(code), self._masses[code])
+            equal = code > 0 and self._masses[1] == self._masses[2]
+            self._energies[code] = 0.5 * self.sqrt_s if equal else np.hypot(self._momentum(code), self._masses[code])
         return self._energies[code]
 
     def _energy_minus_momentum(self, code: int) -> Array:
@@ -175,7 +176,10 @@ class TwoBody:
             along, against = against, along
         pt = momentum * np.sqrt(self.one_minus_cos * self.one_plus_cos)
         plus, minus = small + momentum * along, small + momentum * against
-        return FourVector(plus, minus, pt, self._phi(code), self._masses[code])
+        exact = Exact(energy=self._energy(code), momentum=momentum)
+        if code == 2:
+            exact = exact._replace(px=-pt * np.cos(self._azimuth), py=-pt * np.sin(self._azimuth))
+        return FourVector(plus, minus, pt, self._phi(code), self._masses[code], exact)
 
     def _phi(self, code: int) -> Array:
         if code == 1:
@@ -184,9 +188,10 @@ class TwoBody:
 
     def _lab_vector(self, code: int) -> FourVector:
         in_cm, stretch = self.vector(code, CM), self.collision.stretch
-        return FourVector(
-            in_cm.plus * stretch, in_cm.minus / stretch, in_cm.pt, in_cm.phi, in_cm.mass, self._recoil_energy(code)
-        )
+        if self.collision.lab_is_cm:
+            return in_cm
+        exact = Exact(kinetic=self._recoil_energy(code))
+        return FourVector(in_cm.plus * stretch, in_cm.minus / stretch, in_cm.pt, in_cm.phi, in_cm.mass, exact)
 
     def _recoil_energy(self, code: int) -> Array | None:
         """Kinetic energy of an outgoing leg where a target is at rest: ((m_T − m)² − (p_T − p)²)/2m_T."""
