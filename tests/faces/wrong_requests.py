@@ -223,6 +223,24 @@ PHYSICS = [
 ]
 
 OBSERVABLES = [
+    one(
+        "rest frame of the massless",
+        {**histogram(observables=["energy(mu+, frame=rest(mu-))"]), "masses": {"mu-": 0.0}},
+        "histograms[0].observables[0]",
+        "mu-",
+        "no mass",
+    ),
+    one(
+        "leading of two equals",
+        {
+            **formula(reaction="e- e+ -> gamma gamma", squared_amplitude="1", parameters={}),
+            "beams": {"kind": "collider", "energies": {"e-": 5.0, "e+": 5.0}},
+            "cuts": [{"name": "hard", "observable": "energy(leading(gamma))", "min": 1.0}],
+            "histograms": [],
+        },
+        "cuts[0].observable",
+        "each(...)",
+    ),
     observable("cos_thta(mu-)", "cos_theta"),
     observable("cos_theta(tau-)", "mu-"),
     observable("cos_theta(e-)", "beam_a"),

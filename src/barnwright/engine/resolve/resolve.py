@@ -12,13 +12,13 @@ from barnwright.engine.resolve.beams import BeamContext, resolve_beams
 from barnwright.engine.resolve.digest import plan_digest
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.resolve.formula import formula_process, formula_source
+from barnwright.engine.resolve.kinematics import check_kinematics
 from barnwright.engine.resolve.masses import Inputs, resolve_inputs
 from barnwright.engine.resolve.method import resolve_method, resolve_peaks
 from barnwright.engine.resolve.notes import notes_of
 from barnwright.engine.resolve.questions import resolve_cuts, resolve_layout
 from barnwright.engine.resolve.scan import Part, parts_of, scan_shape
 from barnwright.engine.resolve.scope import check_scope
-from barnwright.engine.resolve.ties import check_ties
 from barnwright.engine.setting import Layout, Setting
 from barnwright.errors import RequestError, Violation, show
 from barnwright.process import Process, facts_of
@@ -156,7 +156,7 @@ def _group(part: Part, process: Process, layout: Layout, findings: Findings) -> 
     if any(s is None for s in settings) or inputs is None:
         return None
     whole = tuple(s for s in settings if s is not None)
-    check_ties(layout, whole, findings)
+    check_kinematics(process.legs, layout, whole, findings)
     notes: tuple[Note, ...] = notes_of(process)
     return Group(part.points, whole, part.request, part.columns, notes, dict(inputs.sources))
 
