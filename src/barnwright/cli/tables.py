@@ -35,13 +35,13 @@ def _prediction(prediction: Prediction) -> Iterator[RenderableType]:
     for title in ("processes", "contributions", "variations"):
         parts: Iterable[Part] = getattr(prediction, title)
         if parts:
-            yield _partstitled(title, parts)
+            yield _parts_titled(title, parts)
     yield from _results(prediction)
 
 
 def _facts(prediction: Prediction) -> Iterator[tuple[str, str]]:
     yield "total", str(prediction.total)
-    yield "error", "a statistical error" if prediction.total.error_kind == "statistical" else "a numerical bound"
+    yield "error", _error(prediction)
     yield "status", prediction.status
     yield "method", prediction.method.replace("_", " ")
     yield "order", prediction.order
@@ -51,7 +51,14 @@ def _facts(prediction: Prediction) -> Iterator[tuple[str, str]]:
         yield "note", f"{note.text} ({note.code})"
 
 
-def _partstitled(title: str, parts: Iterable[Part]) -> Table:
+def _error(prediction: Prediction) -> str:
+    """How large the error is, and of which kind."""
+    total = prediction.total
+    kind = "a statistical error" if total.error_kind == "statistical" else "a numerical bound"
+    return kind if total.error is None else f"{total.error:.0e} {total.unit}, {kind}"
+
+
+def _parts_titled(title: str, parts: Iterable[Part]) -> Table:
     table = titled(title, ("name", "total"))
     for part in parts:
         table.add_row(Text(part.name), Text(str(part.total)))

@@ -1,4 +1,4 @@
-"""Observables that have no value for the kinematics of a request: ties among identical particles, massless rest frames."""
+"""Observables without a value for the kinematics of a request: ties among identical particles, massless rest frames."""
 
 from __future__ import annotations
 
