@@ -19,12 +19,12 @@ ROOT = Path(__file__).resolve().parent.parent
 BUDGETS = {
     "house": 30,
     "unit": 75,
-    "engine": 75,
+    "engine": 90,
     "physics": 60,
     "cli": 30,
     "faces": 30,
     "service": 180,
-    "docs": 60,
+    "docs": 45,
     "plugin": 45,
 }
 GRACE = 20
