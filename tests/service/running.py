@@ -70,12 +70,12 @@ class Running:
 
     def family(self) -> dict[str, list[int]]:
         """Process numbers of the server's descendants: the scheduler, the fork server, the workers, the tracker."""
-        (scheduler,) = children(self.process.pid)
-        below = children(scheduler)
+        schedulers = children(self.process.pid)
+        below = [pid for scheduler in schedulers for pid in children(scheduler)]
         forkserver = [pid for pid in below if "forkserver" in command(pid)]
         workers = [worker for pid in forkserver for worker in children(pid)]
         tracker = [pid for pid in below if pid not in forkserver]
-        return {"scheduler": [scheduler], "forkserver": forkserver, "workers": workers, "tracker": tracker}
+        return {"scheduler": schedulers, "forkserver": forkserver, "workers": workers, "tracker": tracker}
 
 
 def children(pid: int) -> list[int]:

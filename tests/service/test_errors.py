@@ -130,8 +130,11 @@ def test_a_call_that_does_not_exist_is_unimplemented(server: Running) -> None:
 
 def test_a_scan_needs_keys_and_each_once(server: Running, client: Client) -> None:
     """No key, a key twice, and values of no kind."""
-    with pytest.raises(barnwright.RequestError, match=r"^over: got nothing, expected at least one key"):
+    with pytest.raises(barnwright.RequestError, match=r"^over: got {}, expected lists of values by key"):
         client.scan(GOOD, over={})
+    message = encode({"request": GOOD}, service_pb2.ScanRequest)
+    with server.channel() as channel, pytest.raises(grpc.RpcError, match=r"over: got {}, expected lists of values"):
+        list(channel.unary_stream(f"/{SERVICE}/Scan")(message.SerializeToString(), wait_for_ready=True))
     axis = {"key": "beams.sqrt_s", "values": [1.0]}
     message = encode({"request": GOOD, "over": [axis, axis]}, service_pb2.ScanRequest)
     with server.channel() as channel, pytest.raises(grpc.RpcError, match=r"over\[1\]\.key"):

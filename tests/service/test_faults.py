@@ -98,7 +98,7 @@ def test_idle_workers_that_are_killed_are_replaced() -> None:
         before = server.family()["workers"]
         for worker in before:
             os.kill(worker, signal.SIGKILL)
-        until(lambda: len(set(server.family()["workers"]) - set(before)) == len(before))
+        until(lambda: are_replaced(server, before))
         assert good(client) == expected
 
 
@@ -124,8 +124,14 @@ def test_a_fork_server_that_is_killed_is_replaced() -> None:
         os.kill(family["forkserver"][0], signal.SIGKILL)
         for worker in family["workers"]:
             os.kill(worker, signal.SIGKILL)
-        until(lambda: len(server.family()["workers"]) == len(family["workers"]))
+        until(lambda: are_replaced(server, family["workers"]))
         assert good(client) == expected
+
+
+def are_replaced(server: Running, before: list[int]) -> bool:
+    """Whether none of these workers is there any more, and a full crew is."""
+    now = server.family()["workers"]
+    return len(now) >= 4 and not set(now) & set(before)
 
 
 @pytest.mark.parametrize("busy", [False, True], ids=["idle", "busy"])
@@ -165,3 +171,17 @@ def test_no_worker_imports_grpc(tmp_path: Path) -> None:
     with serving(plugin(tmp_path, "looks", body)) as server, server.client() as client:
         assert client.predict(process="looks/pair", beams=BEAMS).status == "converged"
         assert children(server.process.pid)
+
+
+@pytest.mark.parametrize("process", ["hangs/pair", "hangs-later/pair"])
+def test_many_callers_of_what_hangs_hold_one_worker(process: str) -> None:
+    """What has not answered once gets one worker at a time, however many ask for it."""
+    limits = {"light_seconds": 60.0, "suspect_seconds": 60.0}
+    with serving("healthy", "hangs", "hangs_later", workers=1, **limits) as server, server.client() as client:
+        expected = good(client)
+        callers = [in_background(lambda: client.predict(process=process, beams=BEAMS, timeout=3.0)) for _ in range(12)]
+        assert [good(client) for _ in range(20)] == [expected] * 20
+        for thread, _ in callers:
+            thread.join()
+        assert [getattr(raised[0], "code", None) for _, raised in callers] == ["DEADLINE_EXCEEDED"] * 12
+        assert good(client) == expected

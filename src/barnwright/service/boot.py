@@ -18,10 +18,10 @@ def main(descriptor: int) -> None:
     context = multiprocessing.get_context("forkserver")
     context.set_forkserver_preload(PRELOADED)
     forkserver.ensure_running()
-    from barnwright.service.scheduler import Scheduler
+    from barnwright.service.scheduler import Scheduler, ServerIsGoneError
 
     server = Connection(descriptor)
     try:
         Scheduler(server, server.recv(), context).run()
-    except (EOFError, OSError):
+    except ServerIsGoneError:
         sys.exit(0)

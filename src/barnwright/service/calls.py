@@ -8,6 +8,7 @@ from typing import Any
 
 from google.protobuf.message import Message
 
+from barnwright.documents import plain_axes
 from barnwright.engine import Answers, Plan, assemble
 from barnwright.engine.calculate import calculate
 from barnwright.errors import PluginError, RequestError, ServerError, Violation, show
@@ -71,7 +72,7 @@ def scan(message: bytes, reply: Reply) -> Steps:
     """A prediction at every point, some in each message."""
     started = perf_counter()
     asked = parse(message, wire.ScanRequest)
-    over = {axis["key"]: axis["values"] for axis in _axes(asked)}
+    over = _over(asked)
     document = _document(asked)
     plan: Plan = yield Light("plan", (document, over), _process_of(document))
     answers = yield from _answers(plan, started)
@@ -111,10 +112,10 @@ def _document(asked: Message) -> dict[str, Any]:
     return document
 
 
-def _axes(asked: wire.ScanRequest) -> list[dict[str, Any]]:
-    """The keys and values of a scan, each key once."""
+def _over(asked: wire.ScanRequest) -> dict[str, tuple[Any, ...]]:
+    """The values of a scan by key, each key once."""
     axes: list[dict[str, Any]] = decode(asked)["over"]
-    found = [] if axes else [Violation("over", "nothing", "at least one key with its values")]
+    found = []
     for number, axis in enumerate(axes):
         if not axis["key"]:
             found.append(Violation(f"over[{number}].key", "nothing", "a key of the request, such as beams.sqrt_s"))
@@ -122,7 +123,7 @@ def _axes(asked: wire.ScanRequest) -> list[dict[str, Any]]:
             found.append(Violation(f"over[{number}].key", show(axis["key"]), "a key that is not scanned already"))
     if found:
         raise RequestError(found)
-    return axes
+    return plain_axes({axis["key"]: axis["values"] for axis in axes})
 
 
 def _require(message: Message, field: str, expected: str) -> None:
@@ -131,5 +132,5 @@ def _require(message: Message, field: str, expected: str) -> None:
 
 
 def _process_of(document: Mapping[str, Any]) -> str:
-    """Whom to blame if resolving hangs."""
-    return str(document.get("process") or ", ".join(document.get("processes", ())) or "the formula")
+    """Whose code is going to run; "" for a formula, which is none."""
+    return str(document.get("process") or ", ".join(document.get("processes", ())))

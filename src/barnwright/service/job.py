@@ -8,8 +8,8 @@ from typing import Any
 
 from barnwright.errors import BarnwrightError, PluginError, ServerError
 from barnwright.service.frames import Failed, Fault, Reply
-from barnwright.service.steps import Blocks, Light, Step, Steps
-from barnwright.service.task import LightQueue, RoundQueue, Task
+from barnwright.service.steps import Blocks, Credit, Light, Step, Steps
+from barnwright.service.task import Code, LightQueue, RoundQueue, Task, code_of
 
 WINDOW = 2
 """Messages of a stream that may be under way before the caller has taken the first of them."""
@@ -60,6 +60,11 @@ class Job:
         """Whether it waits for a light task."""
         return isinstance(self.step, Light)
 
+    @property
+    def code(self) -> Code | None:
+        """What its next task runs; None when it waits for no task."""
+        return None if self.step is None or isinstance(self.step, Credit) else code_of(self.step)
+
     def pull(self, *, light: bool) -> Task | None:
         """The next task for a light or another worker, or None."""
         return None if self._queue is None else self._queue.pull(light=light)
@@ -91,8 +96,6 @@ class Job:
         if self._deaths >= limit or self._queue is None:
             message = f"{self._deaths} workers were lost while they worked on this request; it may be what ends them"
             self.refuse(ServerError(message, "UNAVAILABLE"))
-        elif isinstance(self._queue, RoundQueue):
-            self._queue.give_back(task)
         else:
             self._queue.waiting.append(task)
 

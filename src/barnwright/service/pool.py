@@ -2,73 +2,13 @@
 
 from __future__ import annotations
 
-import os
 import selectors
-import signal
 from collections.abc import Iterator
-from contextlib import suppress
 from multiprocessing.context import ForkServerContext
-from time import monotonic
 
-from barnwright.engine import Stage
-from barnwright.service.frames import Resolved, Work
+from barnwright.service.crew import Worker
 from barnwright.service.settings import Settings
-from barnwright.service.shelf import Shelf
-from barnwright.service.steps import Light
-from barnwright.service.task import Task
-from barnwright.service.worker import work
-
-
-class Worker:
-    """One worker process and what it is doing."""
-
-    def __init__(self, context: ForkServerContext, *, light: bool) -> None:
-        self.light = light
-        self.is_ready = False
-        self.task: Task | None = None
-        self.since = monotonic()
-        self._stages: Shelf[Stage] = Shelf()
-        self.connection, theirs = context.Pipe()
-        self._process = context.Process(target=work, args=(theirs,), daemon=True)
-        self._process.start()
-        theirs.close()
-
-    @property
-    def is_idle(self) -> bool:
-        """Whether it can be given work."""
-        return self.is_ready and self.task is None
-
-    @property
-    def busy_seconds(self) -> float:
-        """How long it has been at its task."""
-        return monotonic() - self.since if self.task is not None else 0.0
-
-    def give(self, task: Task) -> None:
-        """Hand over a task; a stage goes along only if the worker does not have it yet."""
-        self.task, self.since = task, monotonic()
-        step = task.step
-        if isinstance(step, Light):
-            message = Work(step.task, step.arguments)
-        else:
-            name = step.stage.digest
-            sent = None if name in self._stages else step.stage
-            self._stages.take(name, step.stage)
-            message = Work("tally", (task.block, name, sent))
-        with suppress(OSError):  # a worker that is gone shows at once as the end of its connection
-            self.connection.send(message)
-
-    def resolved(self, message: Resolved) -> None:
-        """Its task has come so far that a law is at work: from now on it may take longer."""
-        if self.task is not None:
-            self.task.resolved, self.since = message, monotonic()
-
-    def end(self) -> None:
-        """End it now, whatever it does."""
-        self.connection.close()
-        with suppress(ProcessLookupError):
-            if self._process.pid is not None:
-                os.kill(self._process.pid, signal.SIGKILL)
-        self._process.join()
+from barnwright.service.task import Code, Task
 
 
 class Pool:
@@ -93,6 +33,10 @@ class Pool:
     def idle(self) -> list[Worker]:
         """Who can be given work, light ones first."""
         return sorted((w for w in self._workers if w.is_idle), key=lambda worker: not worker.light)
+
+    def running(self) -> set[Code]:
+        """What the workers are at."""
+        return {worker.task.code for worker in self._workers if worker.task is not None}
 
     def has_spare_light(self, worker: Worker) -> bool:
         """Whether another light worker is there for light tasks, so that this one may take a block."""
@@ -134,14 +78,17 @@ class Pool:
 
     def overdue(self) -> list[Worker]:
         """Who has been at a task for too long."""
-        return [w for w in self._workers if w.busy_seconds > self.limit(w)]
+        return [w for w in self._workers if self._worked(w) > self.limit(w)]
 
     def patience(self) -> float | None:
         """Seconds until the next worker becomes suspect or overdue; None when all are idle."""
         times = []
         for worker in self._workers:
             if worker.task is not None:
-                spent, suspect = worker.busy_seconds, self._limits.suspect_seconds
+                spent, suspect = self._worked(worker), self._limits.suspect_seconds
                 limit = self.limit(worker)
                 times.append((min(limit, suspect) if spent < suspect else limit) - spent)
         return max(0.0, min(times)) + 0.001 if times else None
+
+    def _worked(self, worker: Worker) -> float:
+        return worker.worked_seconds(self._limits.suspect_seconds)

@@ -13,6 +13,7 @@ from multiprocessing.context import ForkServerContext
 from typing import Any
 
 from barnwright.service.calls import CALLS
+from barnwright.service.crew import Worker
 from barnwright.service.frames import (
     Broken,
     Call,
@@ -28,12 +29,16 @@ from barnwright.service.frames import (
     Stop,
 )
 from barnwright.service.job import Job
-from barnwright.service.pool import Pool, Worker
+from barnwright.service.pool import Pool
 from barnwright.service.settings import Settings
-from barnwright.service.task import Task
+from barnwright.service.task import Code, Task
 
 STILLBORN = 5
 """After so many workers that did not even start, none will."""
+
+
+class ServerIsGoneError(Exception):
+    """Nobody is at the other end any more."""
 
 
 class Scheduler:
@@ -47,16 +52,17 @@ class Scheduler:
         self._jobs: dict[int, Job] = {}
         self._turn: deque[Job] = deque()
         self._pool = Pool(context, settings, self._selector)
+        self._proven: set[Code] = set()
         self._said_ready = False
         self._stillborn = 0
 
     def run(self) -> None:
-        """Loop until the server says stop. Raises ``EOFError`` or ``OSError`` when it is gone."""
+        """Loop until the server says stop. Raises ``ServerIsGoneError`` when it is gone."""
         try:
             while True:
                 for key, _ in self._selector.select(self._pool.patience()):
                     if key.data is None:
-                        frame = self._server.recv()
+                        frame = self._receive()
                         if isinstance(frame, Stop):
                             return
                         self._hear_server(frame)
@@ -87,8 +93,17 @@ class Scheduler:
         self._turn.append(job)
         job.advance()
 
+    def _receive(self) -> Any:
+        try:
+            return self._server.recv()
+        except (EOFError, OSError) as error:
+            raise ServerIsGoneError from error
+
     def _send(self, frame: Ready | Reply | Failed | Fault) -> None:
-        self._server.send(frame)
+        try:
+            self._server.send(frame)
+        except OSError as error:
+            raise ServerIsGoneError from error
 
     def _hear_worker(self, worker: Worker) -> None:
         try:
@@ -110,6 +125,7 @@ class Scheduler:
 
     def _take(self, task: Task, answer: Any) -> None:
         if isinstance(answer, Done):
+            self._proven.add(task.code)
             task.job.accept(task, answer.result)
         elif isinstance(answer, Refused):
             task.job.refuse(answer.error)
@@ -150,7 +166,11 @@ class Scheduler:
             job = self._turn[0]
             self._turn.rotate(-1)
             spare = not worker.light or job.is_light or self._pool.has_spare_light(worker)
-            task = job.pull(light=worker.light) if spare else None
+            task = job.pull(light=worker.light) if spare and self._may_run(job.code) else None
             if task is not None:
                 return task
         return None
+
+    def _may_run(self, code: Code | None) -> bool:
+        """Whether code may be given to a worker: what has not answered once holds one only, so that it may hang."""
+        return code is None or not code[1] or code in self._proven or code not in self._pool.running()

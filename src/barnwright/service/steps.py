@@ -14,7 +14,7 @@ from barnwright.run.drive import Pace
 
 @dataclass(frozen=True, slots=True)
 class Light:
-    """A short task for a light worker; resumed with its result. ``process`` is whom to blame if it hangs."""
+    """A short task for a light worker; resumed with its result. ``process`` is whose code it runs, "" for none."""
 
     task: str
     arguments: tuple[Any, ...]

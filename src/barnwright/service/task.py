@@ -17,6 +17,15 @@ QUICK = 4
 """A round of at most so many blocks may use the light workers, where its process has just been resolved."""
 
 
+Code = tuple[str, str]
+"""A kind of task, and the process whose code it runs."""
+
+
+def code_of(step: Light | Blocks) -> Code:
+    """The code that the tasks of a step run."""
+    return (step.task, step.process) if isinstance(step, Light) else ("tally", step.stage.plan.source.name)
+
+
 @dataclass(slots=True, eq=False)
 class Task:
     """A light task, or one block of a round, of a job; ``resolved`` once a light one has come so far."""
@@ -32,9 +41,14 @@ class Task:
         return self.job.step is self.step
 
     @property
+    def code(self) -> Code:
+        """What it runs."""
+        return code_of(self.step)
+
+    @property
     def process(self) -> str:
-        """The process whose code it runs."""
-        return self.step.process if isinstance(self.step, Light) else self.step.stage.plan.source.name
+        """The process whose code it runs; "" for what the core does by itself."""
+        return self.code[1]
 
     @property
     def plugin(self) -> str:
@@ -55,9 +69,9 @@ class LightQueue:
 
     waiting: list[Task]
 
-    def pull(self, *, light: bool) -> Task | None:
-        """The task, for light workers only."""
-        return self.waiting.pop() if light and self.waiting else None
+    def pull(self, *, light: bool) -> Task | None:  # noqa: ARG002  (as the other queue's)
+        """The task, for any worker."""
+        return self.waiting.pop() if self.waiting else None
 
     def take(self, _task: Task, _result: Any) -> bool:
         """Its result ends the step."""
@@ -66,17 +80,12 @@ class LightQueue:
 
 @dataclass(slots=True)
 class RoundQueue:
-    """The blocks of a round.
-
-    Before one of them has been worked out, only one is given away, so that a law that hangs holds one worker.
-    """
+    """The blocks of a round."""
 
     job: Job
     step: Blocks
     waiting: list[Task] = field(default_factory=list)
     blocks: Iterator[Block] = field(default_factory=lambda: iter(()))
-    given: int = 0
-    proven: bool = False
 
     def begin(self) -> bool:
         """Look up what is missing; False when there is nothing to wait for, or no time left for it."""
@@ -90,16 +99,12 @@ class RoundQueue:
 
     def pull(self, *, light: bool) -> Task | None:
         """The next block; long rounds have none for light workers."""
-        if (light and len(self.step.round) > QUICK) or (self.given and not self.proven):
+        if light and len(self.step.round) > QUICK:
             return None
-        task = self.waiting.pop() if self.waiting else self._fresh()
-        self.given += task is not None
-        return task
+        return self.waiting.pop() if self.waiting else self._fresh()
 
     def take(self, task: Task, result: Any) -> bool:
         """Add a tally; True when the round is complete, or its time is up."""
-        self.given -= 1
-        self.proven = True
         self.step.ledger.add(result)
         if task.block is not None:
             self.step.pace.done(task.block)
@@ -108,11 +113,6 @@ class RoundQueue:
             self.step.ledger.stop("time_limit")
             return True
         return not missing
-
-    def give_back(self, task: Task) -> None:
-        """Its worker was lost: somebody else gets it."""
-        self.given -= 1
-        self.waiting.append(task)
 
     def _fresh(self) -> Task | None:
         block = next(self.blocks, None)
