@@ -17,6 +17,18 @@ from barnwright.documents import Request
 from barnwright.wire import decode, encode
 from barnwright.wire.v1 import service_pb2
 
+
+def on_the_wire(case: Case) -> Any:
+    """The message of a case; None where none can hold it, or where it holds something that is right."""
+    if case.name == "truth value as number":
+        return None
+    try:
+        return encode({"request": case.request}, service_pb2.PredictRequest)
+    except (ValueError, TypeError, AttributeError):
+        return None
+
+
+MESSAGES = {case.name: message for case in CASES if (message := on_the_wire(case)) is not None}
 by_case = pytest.mark.parametrize("case", CASES, ids=lambda case: case.name)
 
 
@@ -55,18 +67,11 @@ def test_every_wrong_request_gets_the_same_error(bundled: Running, case: Case) -
     assert caught.value.violations == expected.violations
 
 
-@by_case
-def test_every_wrong_request_gets_a_bad_request(bundled: Running, case: Case) -> None:
+@pytest.mark.parametrize("name", MESSAGES)
+def test_every_wrong_request_gets_a_bad_request(bundled: Running, name: str) -> None:
     """From any language, where a message can hold the request: all findings as sentences, and one ErrorInfo."""
-    try:
-        message = encode({"request": case.request}, service_pb2.PredictRequest)
-    except (ValueError, TypeError, AttributeError):
-        pytest.skip("no message can hold it")
-    try:
-        barnwright.predict(decode(message)["request"])
-        pytest.skip("the message holds something that is right")
-    except barnwright.RequestError as error:
-        expected = error
+    message = MESSAGES[name]
+    expected = local_error(decode(message)["request"])
     failure = ask(bundled, "Predict", message.SerializeToString())
     unknown = isinstance(expected, barnwright.UnknownProcessError)
     assert failure.code() is (grpc.StatusCode.NOT_FOUND if unknown else grpc.StatusCode.INVALID_ARGUMENT)

@@ -57,7 +57,7 @@ def test_a_law_that_hangs_costs_its_worker_only() -> None:
 
 def test_a_process_that_hangs_at_load_leaves_room_for_others() -> None:
     """There is a spare worker for resolving; lists, descriptions and validations end too."""
-    with serving("healthy", "hangs", light_seconds=2.0) as server, server.client() as client:
+    with serving("healthy", "hangs", light_seconds=1.5) as server, server.client() as client:
         expected = good(client)
         thread, raised = in_background(lambda: client.predict(process="hangs/pair", beams=BEAMS))
         assert [good(client) for _ in range(20)] == [expected] * 20
@@ -67,7 +67,7 @@ def test_a_process_that_hangs_at_load_leaves_room_for_others() -> None:
             client.describe("hangs/pair")
         listed = {summary.name: summary.broken for summary in client.processes()}
         assert listed["healthy/pair"] is None
-        assert "took longer than 2 s" in str(listed["hangs/pair"])
+        assert "took longer than 1.5 s" in str(listed["hangs/pair"])
 
 
 def test_a_law_that_ends_its_worker_twice_fails_its_request() -> None:
@@ -179,7 +179,7 @@ def test_many_callers_of_what_hangs_hold_one_worker(process: str) -> None:
     limits = {"light_seconds": 60.0, "suspect_seconds": 60.0}
     with serving("healthy", "hangs", "hangs_later", workers=1, **limits) as server, server.client() as client:
         expected = good(client)
-        callers = [in_background(lambda: client.predict(process=process, beams=BEAMS, timeout=3.0)) for _ in range(12)]
+        callers = [in_background(lambda: client.predict(process=process, beams=BEAMS, timeout=2.0)) for _ in range(12)]
         assert [good(client) for _ in range(20)] == [expected] * 20
         for thread, _ in callers:
             thread.join()

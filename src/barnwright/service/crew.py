@@ -46,7 +46,7 @@ class Worker:
     def worked_seconds(self, suspect_seconds: float) -> float:
         """The same, without the time for which it stood in line for a processor once it had become suspect.
 
-        Workers have the lowest priority: where the machine is busy with something else, time alone would end sound ones.
+        Workers have the lowest priority: where a machine is busy with something else, time alone would end sound ones.
         """
         busy = self.busy_seconds
         if busy < suspect_seconds:
