@@ -66,6 +66,9 @@ def main() -> None:
     """Run the groups asked for, or all; exit 1 when one fails or a test belongs to none."""
     if lost := forgotten():
         sys.exit(f"these tests belong to no group of tools/run_tests.py: {', '.join(lost)}")
+    signal.signal(
+        signal.SIGINT, signal.default_int_handler
+    )  # in the background of a shell it is ignored, and tests need it
     results = {}
     for group in sys.argv[1:] or BUDGETS:
         print(f"\n== tests/{group} (budget {BUDGETS[group]} s)", flush=True)

@@ -40,6 +40,7 @@ def _prediction(prediction: Prediction) -> Iterator[RenderableType]:
 
 
 def _facts(prediction: Prediction) -> Iterator[tuple[str, str]]:
+    yield "beams", _beams(prediction)
     yield "total", str(prediction.total)
     yield "error", _error(prediction)
     yield "status", prediction.status
@@ -49,6 +50,19 @@ def _facts(prediction: Prediction) -> Iterator[tuple[str, str]]:
         yield "scheme", prediction.scheme
     for note in prediction.notes:
         yield "note", f"{note.text} ({note.code})"
+
+
+def _beams(prediction: Prediction) -> str:
+    """What was collided, at which energies: ``e- 7 GeV, e+ 4 GeV``, ``kinetic energy 0.001 GeV on e- at rest``."""
+    beams = prediction.request.beams
+    if beams.kind == "decay":
+        return "a decay"
+    if beams.kind == "collider":
+        energies = beams.energies or {}
+        return ", ".join(f"{n} {e:g} GeV" for n, e in energies.items()) or f"sqrt_s = {beams.sqrt_s:g} GeV"
+    given = {"energy": beams.energy, "kinetic energy": beams.kinetic_energy, "momentum": beams.momentum}
+    what, value = next((what, value) for what, value in given.items() if value is not None)
+    return f"{what} {value:g} GeV on {beams.target or 'the second particle'} at rest"
 
 
 def _error(prediction: Prediction) -> str:

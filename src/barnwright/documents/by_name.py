@@ -57,6 +57,18 @@ class ByName(Sequence[T]):
             return self._entries[self._place(key)]
         return ByName(self._entries[key]) if isinstance(key, slice) else self._entries[key]
 
+    def keys(self) -> tuple[str, ...]:
+        """The names, as a mapping has them."""
+        return self.names
+
+    def values(self) -> tuple[T, ...]:
+        """The entries, as a mapping has them."""
+        return self._entries
+
+    def items(self) -> tuple[tuple[str, T], ...]:
+        """Names and entries in pairs, as a mapping has them."""
+        return tuple(zip(self._places, self._entries, strict=True))
+
     def _place(self, name: str) -> int:
         if name not in self._places:
             near = nearest(name, self._places)

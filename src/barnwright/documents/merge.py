@@ -1,8 +1,9 @@
 """Merging an override into a request, key by key.
 
 Variations, scans and ``--override`` all mean the same by it: tables are merged key by key; cuts, histograms, derived
-quantities and variations by their names (a new name is added at the end); everything else is replaced. A key may be
-a path, ``beams.sqrt_s``, ``cuts.acceptance.max`` or ``cuts[0].max``; a part with dots in it stands in quotes.
+quantities and variations by their names (a new name is added at the end, an empty list leaves none); everything else
+is replaced. A key may be a path, ``beams.sqrt_s``, ``cuts.acceptance.max`` or ``cuts[0].max``; a part with dots in
+it stands in quotes.
 """
 
 from __future__ import annotations
@@ -91,7 +92,7 @@ def _combine(head: str, old: Any, new: Any) -> Any:
         for key, value in new.items():
             merged[key] = _combine(key, merged.get(key), value)
         return merged
-    if head in NAMED and _is_list(old) and _is_list(new):
+    if head in NAMED and _is_list(old) and _is_list(new) and new:
         return _combine_named(head, list(old), list(new))
     return new
 

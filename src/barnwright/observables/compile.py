@@ -13,6 +13,7 @@ from barnwright.observables.legs import Legs
 from barnwright.observables.observable import AxisForm, Observable
 from barnwright.observables.resolve import Resolver, depth_of
 from barnwright.observables.rows import ROWS
+from barnwright.observables.scales import SCALES
 from barnwright.observables.tree import Each, Leaf, Operation, Tree, leaves, size_of, with_leg
 from barnwright.observables.units import dimension_of
 from barnwright.reaction import Reaction
@@ -40,10 +41,11 @@ def compile_observable(text: str, reaction: Reaction, numbered: bool = False) ->
     if size_of(tree) * (1 if legs.each is None else len(legs.each.codes)) > MOST_NODES:
         expected = f"at most {MOST_NODES} numbers, operators and calls, counted for each of identical particles"
         raise ObservableError(text, (Finding(0, expected),))
+    scaled = _scaled(tree)
     return Observable(
         text=" ".join(text.split()),
         trees=_entries(tree, legs.each),
-        unit=unit if angle_in_degrees(tree) is None else "deg",
+        unit=unit if scaled is None else scaled[1],
         quantifier=legs.quantifier,
         range=_range(tree),
         azimuthal=any(ROWS[leaf.function].azimuthal for leaf in leaves(tree) if leaf.function in ROWS),
@@ -63,10 +65,19 @@ def _parsed(text: str) -> Node:
 
 def angle_in_degrees(tree: Tree) -> Leaf | None:
     """The angle of the table that a tree gives in degrees (``theta(x) / deg``), or None."""
-    if not isinstance(tree, Operation) or tree.function != "/" or tree.operands[1] != Leaf("deg", ()):
+    scaled = _scaled(tree)
+    return scaled[0] if scaled is not None and scaled[1] == "deg" else None
+
+
+def _scaled(tree: Tree) -> tuple[Leaf, str] | None:
+    """A row of the table divided by a unit of its kind, and the unit; None for any other tree."""
+    if not isinstance(tree, Operation) or tree.function != "/":
         return None
-    angle = tree.operands[0]
-    return angle if isinstance(angle, Leaf) and angle.function in ROWS and ROWS[angle.function].unit == "rad" else None
+    row, unit = tree.operands
+    if not isinstance(row, Leaf) or not isinstance(unit, Leaf) or row.function not in ROWS:
+        return None
+    kind = SCALES.get(unit.function)
+    return (row, unit.function) if kind is not None and kind[0] == ROWS[row.function].unit else None
 
 
 def _entries(tree: Tree, each: Each | None) -> tuple[Tree, ...]:

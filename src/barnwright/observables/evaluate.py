@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import partial
 from itertools import combinations
 
 import numpy as np
@@ -10,6 +11,7 @@ from numpy.typing import NDArray
 
 from barnwright.event import Event
 from barnwright.kinematics import CM, LAB, FourVector, Frame
+from barnwright.observables.scales import SCALES
 from barnwright.observables.tree import Constant, Leading, Leaf, Tree
 
 Array = NDArray[np.float64]
@@ -163,6 +165,11 @@ def _thrust(leaf: Leaf, event: Event) -> Array:
     return np.asarray(2 * best / sum(v.momentum for v in vectors))
 
 
+def _scale(size: float, leaf: Leaf, event: Event) -> Array:
+    del leaf, event
+    return np.asarray(size)
+
+
 _ROWS: dict[str, Callable[[Leaf, Event], Array]] = {
     **{
         name: _single(name)
@@ -184,7 +191,7 @@ _ROWS: dict[str, Callable[[Leaf, Event], Array]] = {
     "helicity_angle": _helicity_angle,
     "sqrt_s": lambda _, event: event.sqrt_s,
     "thrust": _thrust,
-    "deg": lambda _leaf, _event: np.asarray(np.pi / 180),
+    **{name: partial(_scale, size) for name, (_, size) in SCALES.items()},
 }
 
 _OPERATIONS: dict[str, Callable[..., Array]] = {

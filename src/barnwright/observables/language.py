@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from barnwright.grammar import Language, Signature
 from barnwright.observables.rows import ROWS, Row
+from barnwright.observables.scales import SCALES
 
 SELECTIONS = ("leading", "each", "any")
 ARITHMETIC = ("abs", "sqrt", "min", "max")
@@ -32,6 +33,6 @@ LANGUAGE = Language(
         "min": Signature("expression", 1, MANY),
         "max": Signature("expression", 1, MANY),
     },
-    names=frozenset({*(name for name, row in ROWS.items() if row.shape == "none"), "deg", "pi"}),
+    names=frozenset({*(name for name, row in ROWS.items() if row.shape == "none"), *SCALES, "pi"}),
     selections=frozenset(SELECTIONS),
 )

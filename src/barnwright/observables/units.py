@@ -2,7 +2,7 @@
 
 Rules of this file
 ------------------
-- A number written in the text fits any unit in a sum; ``deg`` is an angle.
+- A number written in the text fits any unit in a sum; ``deg`` is an angle, ``keV`` an energy.
 - An angle is a pure number as well: in a sum with one it is one, as in ``delta_eta**2 + delta_phi**2``.
 - A quantity with a unit is raised to numbers only, and nothing is raised to a quantity with GeV.
 """
@@ -15,6 +15,7 @@ from typing import cast
 
 from barnwright.grammar import Binary, Call, Finding, Name, Negation, Node, Number, constant_of
 from barnwright.observables.rows import ROWS
+from barnwright.observables.scales import SCALES
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,7 +45,7 @@ _OF_ROW = {
     "rad": Dimension(rad=Fraction(1)),
     "": Dimension(),
 }
-_OF_NAME = {"deg": _OF_ROW["rad"], "pi": Dimension(free=True)}
+_OF_NAME = {**{name: _OF_ROW[unit] for name, (unit, _) in SCALES.items()}, "pi": Dimension(free=True)}
 
 
 def dimension_of(node: Node, findings: list[Finding]) -> Dimension:

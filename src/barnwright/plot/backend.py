@@ -28,6 +28,8 @@ _STYLE: dict[str, Any] = {
     "ytick.direction": "in",
     "xtick.top": True,
     "ytick.right": True,
+    "axes.formatter.limits": (-3, 4),
+    "axes.formatter.use_mathtext": True,
     "mathtext.fontset": "dejavusans",
     "svg.hashsalt": "barnwright",
     "svg.fonttype": "path",

@@ -84,3 +84,9 @@ def test_paths_that_lead_nowhere(override: dict[str, Any], message: str) -> None
     """An entry that does not exist is a finding that lists those that do."""
     with pytest.raises(RequestError, match=message):
         merge(BASE, override)
+
+
+def test_an_empty_list_leaves_none() -> None:
+    """An empty list of cuts takes all of them away, instead of doing nothing."""
+    request = {"cuts": [{"name": "a", "observable": "pt(mu-)", "min": 1.0}], "seed": 2}
+    assert merge(request, {"cuts": []}) == {"cuts": [], "seed": 2}

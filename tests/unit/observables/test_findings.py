@@ -36,7 +36,7 @@ LEGS = "a leg of e- e+ -> mu- mu+: mu-, mu+, 1 to 2, beam_a, beam_b"
         ("pt(" + "1" * 5000 + ")", 3, LEGS, None),
         ("cos_thta(mu-)", 0, "one of the functions", "cos_theta"),
         ("costheta(mu-)", 0, "one of the functions", "cos_theta"),
-        ("squrt_s", 0, "one of deg, pi, sqrt_s, thrust", "sqrt_s"),
+        ("squrt_s", 0, "one of MeV, TeV, deg, eV, keV, pi, sqrt_s, thrust", "sqrt_s"),
         ("thrust(mu-)", 0, "thrust by itself", "thrust"),
         ("pt", 0, "pt(…) with its arguments", None),
         ("mass(mu-, mu-)", 0, "mass of different particles", None),

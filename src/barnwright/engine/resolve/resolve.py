@@ -157,7 +157,7 @@ def _group(part: Part, process: Process, layout: Layout, findings: Findings) -> 
         return None
     whole = tuple(s for s in settings if s is not None)
     check_kinematics(process.legs, layout, whole, findings)
-    notes: tuple[Note, ...] = notes_of(process)
+    notes: tuple[Note, ...] = notes_of(process, whole[0].cuts)
     return Group(part.points, whole, part.request, part.columns, notes, dict(inputs.sources))
 
 
