@@ -14,8 +14,8 @@ FIXED_BY_TWO_BODIES = frozenset({"acoplanarity", "delta_phi", "helicity_angle", 
 def useful_observables(reaction: Reaction) -> tuple[str, ...]:
     """One text or two (lab and cm) for every row of the table that says something about this reaction.
 
-    They are written for the first outgoing particles; ``each(...)`` where there are several of a kind. An inclusive
-    reaction has the energy of the collision alone.
+    Rows of one particle are written in the lab for every kind of outgoing particle, in the cm and with others for the
+    first; ``each(...)`` where there are several of a kind. An inclusive reaction has the energy of the collision alone.
     """
     if reaction.inclusive:
         return ("sqrt_s",)
@@ -31,6 +31,8 @@ def _texts(row: Row, reaction: Reaction) -> Iterator[str]:
     elif row.shape == "one":
         yield f"{row.name}({one})"
         if row.frame == "lab":
+            others = (name for name in dict.fromkeys(reaction.outgoing) if name != first)
+            yield from (f"{row.name}({name})" for name in others if reaction.outgoing.count(name) == 1)
             yield f"{row.name}({one}, frame=cm)"
     elif row.shape == "transfer":
         yield f"{row.name}(beam_a, {one})"

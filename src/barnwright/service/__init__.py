@@ -12,6 +12,7 @@ Rules of this room:
 
 from __future__ import annotations
 
+import os
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
@@ -30,6 +31,7 @@ def serve(address: str, *, insecure: bool = False, workers: int | None = None) -
         RequestError: when the address is none, or one that other machines can reach and ``insecure`` is not set.
         ServerError: when the address is taken, or the workers do not start.
     """
+    os.environ.setdefault("GRPC_VERBOSITY", "NONE")  # an address in use is said in our own words, once
     from barnwright.service.server import run
     from barnwright.service.settings import Settings
 

@@ -53,3 +53,11 @@ def test_as_a_field() -> None:
     assert adapter.validate_python(both) == adapter.validate_python([ONE, TWO]) == both
     with pytest.raises(ValidationError, match="Input should be a valid dictionary or instance of ProcessSummary"):
         adapter.validate_python([Note(code="a", text="b")])
+
+
+def test_reads_like_a_mapping() -> None:
+    """keys, values and items are those of a mapping from names, so that dict() of it works."""
+    entries = ByName([ONE, TWO])
+    assert entries.keys() == ("qed/compton", "qed/muon-pair")
+    assert entries.items() == tuple(zip(entries.keys(), entries.values(), strict=True))
+    assert dict(entries) == dict(entries.items())
