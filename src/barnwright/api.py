@@ -104,8 +104,9 @@ def _request(request: RequestLike | None, fields: Mapping[str, Any]) -> tuple[Re
     """The request document, and the process object where one was handed in instead of a name."""
     source = read_request(request) if isinstance(request, str | PathLike) else request
     process = fields.get("process", source.get("process") if isinstance(source, Mapping) else None)
-    if process is None or isinstance(process, str):
-        from barnwright.run.worker import physics
+    from barnwright.process import Process
+    from barnwright.run.worker import physics
 
+    if not isinstance(process, Process):
         return checked(lambda: Request.accept(source, **fields), physics), None
     return Request.accept(source, **{**fields, "process": process.name}), process

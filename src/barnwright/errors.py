@@ -45,7 +45,8 @@ class Violation:
     def __str__(self) -> str:
         column = "" if self.position is None else f" (at column {self.position + 1})"
         near = "" if self.nearest is None else f"; nearest: {self.nearest}"
-        return f"{self.field}: got {self.value}{column}, expected {self.expected}{near}"
+        field = self.field if len(self.field) <= _LONGEST_WORD else f"{self.field[: _LONGEST_WORD - 1]}…"
+        return f"{field}: got {self.value}{column}, expected {self.expected}{near}"
 
 
 class BarnwrightError(Exception):

@@ -49,7 +49,7 @@ def toml_values(text: str) -> list[Any]:
     """The TOML values of a text such as ``10, 20``; an empty list when it is none."""
     try:
         table = tomllib.loads(f"values = [{text}]")
-    except tomllib.TOMLDecodeError:
+    except (tomllib.TOMLDecodeError, RecursionError):
         return []
     return list(table["values"]) if len(table) == 1 else []
 

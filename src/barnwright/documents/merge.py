@@ -17,6 +17,7 @@ from barnwright.errors import RequestError, Violation, nearest, show
 #: The lists whose entries are known by name.
 NAMED = ("cuts", "histograms", "variations", "derived")
 
+MOST_PARTS = 20
 _PART = re.compile(r"""\s*(?:"([^"]*)"|'([^']*)'|\[(\d+)\]|([^.\["'\s]+))\s*(\.(?=.)|(?=\[)|$)""")
 
 
@@ -32,7 +33,7 @@ def split_key(key: str) -> tuple[str | int, ...]:
     position = 0
     while position < len(key) or not parts:
         match = _PART.match(key, position)
-        if match is None:
+        if match is None or len(parts) >= MOST_PARTS:
             expected = "a path such as beams.sqrt_s or cuts[0].max; a part with dots in it stands in quotes"
             raise RequestError([Violation(key, show(key), expected, position=position)])
         word = next(part for part in match.group(1, 2, 3, 4) if part is not None)

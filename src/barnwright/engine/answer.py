@@ -13,10 +13,13 @@ from barnwright.integrate.tally import WorstPoint
 
 Array = NDArray[np.float64]
 
+COUNTS = (*COUNTED, "undefined")
+"""What is counted at every point; the last is 1 where an observable has no value somewhere."""
+
 
 @dataclass(frozen=True, slots=True)
 class Answer:
-    """Values and error bounds in GeV⁻², shape (row, component), and what was counted in each row, (row, `COUNTED`)."""
+    """Values and error bounds in GeV⁻², shape (row, component), and what was counted in each row, (row, `COUNTS`)."""
 
     value: Array
     error: Array
@@ -26,7 +29,7 @@ class Answer:
     @staticmethod
     def empty(rows: int, components: int) -> Answer:
         """Zeros that are exact."""
-        return Answer(np.zeros((rows, components)), np.zeros((rows, components)), np.zeros((rows, len(COUNTED))))
+        return Answer(np.zeros((rows, components)), np.zeros((rows, components)), np.zeros((rows, len(COUNTS))))
 
     def filled(self, rows: Integers, found: Answer) -> Answer:
         """This answer with the chosen rows taken from another."""

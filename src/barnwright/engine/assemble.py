@@ -64,7 +64,7 @@ class Answers:
 
     def status_of(self, point: int) -> Status:
         """The status of one point: a fault at another point is not its own."""
-        if self.counts[point, NON_FINITE:].any():
+        if self.counts[point, NON_FINITE:].any() or not np.isfinite(self.value[point]).all():
             return "suspect"
         status = "converged" if self.verdict == "suspect" else self.verdict
         return "evaluation_limit" if status == "converged" and not self.is_accurate(point) else status
@@ -102,7 +102,8 @@ def assemble(plan: Plan, settled: Settled, status: Status, origin: Origin, run: 
     components = plan.layout.components
     order = np.argsort(np.concatenate([np.array(group.points, dtype=np.intp) for group in plan.groups]))
     factor = from_natural(plan.groups[0].request.unit)
-    value, error = (sums.added[k, ..., :components][order] * factor for k in (0, 1))
+    with np.errstate(over="ignore", invalid="ignore"):
+        value, error = (sums.added[k, ..., :components][order] * factor for k in (0, 1))
     counts = sums.added[0, ..., components:][order].sum(axis=1)
     return Answers(plan, value, error, counts, settled, status, origin, run)
 
@@ -129,7 +130,7 @@ class _Shared:
         }
 
     def _diagnostics(self, answers: Answers, point: int) -> Diagnostics:
-        counted = {name: int(count) for name, count in zip(COUNTED, answers.counts[point], strict=True)}
+        counted = {name: int(count) for name, count in zip(COUNTED, answers.counts[point], strict=False)}
         return Diagnostics.build(rounds=answers.settled.number + 1, **counted)
 
     def prediction(self, answers: Answers, point: int, place: int) -> Prediction:
@@ -217,7 +218,7 @@ def _total(value: float, error: float, unit: str) -> Total:
 
 def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
     """Notes on points that were not finite or negative, and on panels that did not settle."""
-    _, non_finite, negative, unresolved = (int(count) for count in answers.counts[point])
+    _, non_finite, negative, unresolved, undefined = (int(count) for count in answers.counts[point])
     alone = len(answers.counts) == 1 and answers.settled.worst
     where = f"; the first of them: {_momenta(answers.settled)}" if alone else ""
     found = []
@@ -227,6 +228,12 @@ def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
     if negative:
         text = f"the law was negative at {negative} points{where}"
         found.append(NoteDocument.build(code="negative", text=text))
+    if not np.isfinite(answers.value[point]).all() and not non_finite:
+        text = "the result is too large for floating-point numbers in this unit"
+        found.append(NoteDocument.build(code="overflow", text=text))
+    if undefined:
+        text = "an observable is not a number for some events, and where that begins is no edge of the quadrature"
+        found.append(NoteDocument.build(code="undefined_observable", text=text))
     if answers.status_of(point) == "evaluation_limit":
         text = (
             "the error is larger than what was asked for: a cut or an asymmetry lies within rounding of an extremum "

@@ -10,14 +10,13 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.beams import collide
-from barnwright.engine.answer import Answer
+from barnwright.engine.answer import COUNTS, Answer
 from barnwright.engine.azimuth import over_azimuth
 from barnwright.engine.plan import Stage
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Setting
 from barnwright.errors import PluginError
 from barnwright.integrate.block import Block
-from barnwright.integrate.quadrature import COUNTED
 from barnwright.integrate.tally import Sums, Tally, WorstPoint
 from barnwright.process import Process
 
@@ -43,7 +42,7 @@ def evaluate(block: Block, stage: Stage, process: Process) -> Tally:
     plan = stage.plan
     group, first, last = plan.group_of(block.points)
     components = plan.layout.components
-    added = np.zeros((2, last - first, len(group.settings), components + len(COUNTED)))
+    added = np.zeros((2, last - first, len(group.settings), components + len(COUNTS)))
     worst: tuple[WorstPoint, ...] = ()
     for number, setting in enumerate(group.settings):
         try:
@@ -54,7 +53,7 @@ def evaluate(block: Block, stage: Stage, process: Process) -> Tally:
         added[0, :, number, components:] = answer.counts
         worst = worst or answer.worst
     counts = added[0, ..., components:].sum(axis=(0, 1))
-    counters = {name: int(count) for name, count in zip(COUNTED, counts, strict=True)}
+    counters = {name: int(count) for name, count in zip(COUNTS, counts, strict=True)}
     return Tally(block, {(0, 0): Sums(added, np.zeros(added.shape[1:]))}, counters, worst)
 
 

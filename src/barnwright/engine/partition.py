@@ -16,69 +16,103 @@ from barnwright.engine.edges import axis_crossings, is_polar, levels_by_observab
 from barnwright.engine.membership import OUTSIDE, memberships, passes
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
+from barnwright.integrate.extrema import EPSILON
 from barnwright.integrate.panels import Panels, panels_between
-from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Integers
+from barnwright.integrate.polar_axis import Integers, ends_of
 from barnwright.integrate.roots import Crossings
+from barnwright.integrate.search_grid import search_grid
+from barnwright.integrate.slices import WIDEST, slices
 from barnwright.observables import Cut, Observable
 
 Array = NDArray[np.float64]
 
 MANY_ROWS = 64
-FEW_LEVELS = 32
-SLICES = 16
-"""Equal slices of each hemisphere for a quadrature with few edges of its own: an integrand is looked at closely enough
-to see a bump as narrow as a hundredth of the axis, also where nobody has declared a peak."""
+SAME = 8 * EPSILON
+"""Values that agree with a level to this relative difference are taken as equal to it."""
 
 
 @dataclass(frozen=True, slots=True)
 class Partition:
-    """Panels, and for the total and every histogram entry and asymmetry the component of each panel."""
+    """Panels, and for the total and every histogram entry and asymmetry the component of each panel.
+
+    ``undefined`` says for each row (or for all, shape (1,)) whether an observable has no value somewhere on the axis.
+    """
 
     panels: Panels
     components: tuple[Integers, ...]
+    undefined: NDArray[np.bool_]
+
+    def inside_cuts(self) -> Panels:
+        """The panels with those that are cut away shrunk to nothing, at their end off the pole."""
+        cut_away = self.components[0] == OUTSIDE
+        if not cut_away.any():
+            return self.panels
+        end = np.maximum(self.panels.left, self.panels.right)
+        left, right = (np.where(cut_away, end, x) for x in (self.panels.left, self.panels.right))
+        return Panels(self.panels.side, left, right, self.panels.wobble, self.panels.graze)
 
 
 def partition_of(setting: Setting, layout: Layout, rows: Rows) -> Partition:
     """The partition of a batch of rows."""
     collision = rows.collision
     wanted = levels_by_observable(setting.cuts, layout)
-    sliced = setting.rule == "quadrature" and sum(levels.size for levels in wanted.values()) < FEW_LEVELS
-    if all(is_polar(observable, collision.lab_is_cm) for observable in wanted):
+    sliced = setting.rule == "quadrature"
+    searched = [o for o in wanted if not is_polar(o, collision.lab_is_cm)]
+    if not searched:
         return _polar_partition(setting.cuts, layout, collision.orientation, sliced)
     found, given_for = axis_crossings(wanted, collision, rows.values, rows.count)
-    panels = panels_between(Crossings.join([found, slices(given_for)]) if sliced else found, given_for)
+    panels = panels_between(Crossings.join([found, slices(given_for, True)]) if sliced else found, given_for)
     middle = panels.middle()
-    return _partition(setting.cuts, layout, panels, lambda observable: rows.values(observable, None, middle))
+    undefined = np.any([_undefined(rows, observable) for observable in searched], axis=0)
+
+    def values(observable: Observable) -> Array:
+        found = rows.values(observable, None, middle)
+        return found if observable not in searched else _snapped(found, wanted[observable])
+
+    return _partition((setting.cuts, layout), panels, values, undefined)
 
 
 @lru_cache(maxsize=64)
 def _polar_partition(cuts: tuple[Cut, ...], layout: Layout, orientation: int, sliced: bool) -> Partition:
     wanted = levels_by_observable(cuts, layout)
-    parts = [polar_crossings(o, orientation, levels) for o, levels in wanted.items()]
-    found = Crossings.join([*parts, slices(1)] if sliced else parts)
+    found = Crossings.join([polar_crossings(o, orientation, levels) for o, levels in wanted.items()])
+    if sliced:
+        coarse = bool(np.max(panels_between(found, 1).width) > WIDEST)
+        found = Crossings.join([found, slices(1, coarse)])
     panels = panels_between(found, 1)
     middle = panels.middle()
-    return _partition(cuts, layout, panels, lambda observable: polar_values(observable, orientation, middle))
-
-
-def slices(rows: int) -> Crossings:
-    """The ends of the slices of both hemispheres, the same for every row."""
-    inner = np.arange(1, SLICES) / SLICES
-    count = 2 * inner.size
-    return Crossings(
-        np.repeat(np.arange(rows), count),
-        np.tile(np.repeat([BACKWARD, FORWARD], inner.size), rows),
-        np.tile(inner, 2 * rows),
-        np.zeros(count * rows),
-        np.zeros(count * rows, dtype=bool),
-    )
+    defined = np.zeros(1, dtype=bool)
+    return _partition((cuts, layout), panels, lambda o: polar_values(o, orientation, middle), defined)
 
 
 def _partition(
-    cuts: tuple[Cut, ...], layout: Layout, panels: Panels, values: Callable[[Observable], Array]
+    asked: tuple[tuple[Cut, ...], Layout],
+    panels: Panels,
+    values: Callable[[Observable], Array],
+    undefined: NDArray[np.bool_],
 ) -> Partition:
+    cuts, layout = asked
     known = lru_cache(maxsize=None)(values)
-    return Partition(panels, tuple(memberships(layout, known, passes(cuts, known))))
+    return Partition(panels, tuple(memberships(layout, known, passes(cuts, known))), undefined)
+
+
+def _snapped(values: Array, levels: Array) -> Array:
+    """The values, those within rounding of a level put on it: noise about a constant does not scatter it."""
+    if levels.size == 0:
+        return values
+    place = np.clip(np.searchsorted(levels, values), 1, max(levels.size - 1, 1))
+    left, right = levels[place - 1], levels[np.minimum(place, levels.size - 1)]
+    with np.errstate(invalid="ignore"):
+        nearest = np.where(np.abs(values - left) < np.abs(values - right), left, right)
+        return np.where(np.abs(values - nearest) <= SAME * np.abs(nearest), nearest, values)
+
+
+def _undefined(rows: Rows, observable: Observable) -> NDArray[np.bool_]:
+    """Whether the observable of each row is not a number somewhere on the axis."""
+    grid = search_grid()
+    found = rows.values(observable, None, ends_of(grid.mode[None], grid.value[None]))
+    wrong = np.isnan(found).any(axis=0) if observable.quantifier is not None else np.isnan(found)
+    return np.broadcast_to(np.broadcast_to(wrong, (rows.count, grid.value.size)).any(axis=1), (rows.count,))
 
 
 def add_panels(target: Array, component: Integers, amounts: Array) -> None:

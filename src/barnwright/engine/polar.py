@@ -36,10 +36,10 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
     if setting.rule == "closed_form":
         integrals = _closed_form(integrand, partition.panels)
     else:
-        integrals = integrate_panels(integrand.density(), partition.panels, integrand.scales(), rows.count)
+        integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), rows.count)
     if setting.beams.given == "kinetic":
         integrals = replace(integrals, error=integrals.error + _threshold_rounding(rows) * np.abs(integrals.value))
-    return _collected(integrals, partition, layout, rows)
+    return _collected(integrals, partition, setting, layout, rows)
 
 
 def _threshold_rounding(rows: Rows) -> Array:
@@ -103,19 +103,22 @@ def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
     return own.values(observable, None, ends)
 
 
-def _collected(integrals: PanelIntegrals, partition: Partition, layout: Layout, rows: Rows) -> Answer:
-    """Add the panels up into components."""
+def _collected(integrals: PanelIntegrals, partition: Partition, setting: Setting, layout: Layout, rows: Rows) -> Answer:
+    """Add the panels up into components; an edge of a histogram that is grazed says nothing about the uncut total."""
     panels, answer = partition.panels, Answer.empty(rows.count, layout.components)
     heights = _boundary_heights(integrals, panels)
-    for component in partition.components:
+    for number, component in enumerate(partition.components):
         add_panels(answer.value, component, integrals.value)
         add_panels(answer.error, component, integrals.error)
         if heights is not None:
             whole = np.broadcast_to(component, (component.shape[0], panels.side.size))
-            slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, panels.graze) * heights
+            grazed = panels.graze if number > 0 or setting.cuts else 0.0
+            slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, grazed) * heights
             add_panels(answer.error, whole[:, 1:], slack)
             add_panels(answer.error, whole[:, :-1], slack)
-    return Answer(answer.value, answer.error, integrals.counts, _worst(integrals, rows))
+    undefined = np.broadcast_to(partition.undefined, (rows.count,))
+    counts = np.column_stack([integrals.counts, undefined])
+    return Answer(answer.value, answer.error, counts, _worst(integrals, rows))
 
 
 def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:

@@ -11,7 +11,7 @@ from barnwright.documents import Request
 from barnwright.documents.merge import split_key
 from barnwright.errors import RequestError, Violation, nearest, show
 
-MOST_POINTS = 1_000_000
+MOST_POINTS = 100_000
 MOST_GROUPS = 10_000
 ENERGIES = ("sqrt_s", "energy", "kinetic_energy", "momentum")
 TABLES = ("beams", "parameters", "masses", "cuts", "derived")

@@ -2,16 +2,25 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
 from barnwright.documents import Request
 from barnwright.engine.resolve.findings import Findings
 from barnwright.errors import nearest
 from barnwright.process import Process
 from barnwright.units import AREA_UNITS
 
+LONGEST_OBSERVABLES = 100_000
+
 
 def check_scope(request: Request, process: Process, findings: Findings) -> None:
     """Final states, units, contributions and accuracy that do not fit the process."""
     reaction = process.legs
+    length = sum(len(text) for text in _observables(request))
+    if length > LONGEST_OBSERVABLES:
+        expected = f"at most {LONGEST_OBSERVABLES} characters in the observables of one request"
+        findings.add("cuts" if request.cuts else "histograms", f"{length} characters", expected)
+        findings.refuse()
     if len(reaction.incoming) != 2 or len(reaction.outgoing) != 2 or reaction.inclusive:
         expected = "a reaction of two particles into two"
         findings.add("formula.reaction" if request.formula else "process", reaction.text, expected)
@@ -29,6 +38,13 @@ def check_scope(request: Request, process: Process, findings: Findings) -> None:
             if name not in names:
                 expected = f"the name of a variation: {', '.join(sorted(names)) or 'there is none'}"
                 findings.add(f"derived[{index}].between[{k}]", name, expected, nearest(name, names))
+
+
+def _observables(request: Request) -> Iterator[str]:
+    yield from (cut.observable for cut in request.cuts)
+    yield from (text for histogram in request.histograms for text in histogram.observables)
+    for variation in request.variations:
+        yield from (cut.observable for cut in variation.cuts if cut.observable is not None)
 
 
 def _check_contributions(request: Request, process: Process, findings: Findings) -> None:
