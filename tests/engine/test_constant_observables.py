@@ -52,3 +52,16 @@ def test_accuracy_that_rounding_forbids_is_not_called_converged() -> None:
     assert p.status == "evaluation_limit"
     assert [note.code for note in p.notes] == ["accuracy_not_reached"]
     assert 1e-6 * p.total.value < p.total.error < p.total.value
+
+
+def test_a_constant_of_the_lab_is_not_scattered_by_rounding() -> None:
+    """The energies of both muons add up to that of the beams: a cut and an edge there keep everything on one side."""
+    beams = {"kind": "collider", "energies": {"e-": 7.0, "e+": 4.0}}
+    text = "energy(mu-) + energy(mu+)"
+    histogram = {"name": "h", "observables": [text], "bins": [{"edges": [10.0, 11.0, 12.0]}], "per": "bin"}
+    request = {"process": "qed/muon-pair", "beams": beams}
+    whole = barnwright.predict(request).total.value
+    p = barnwright.predict(request, cuts=[{"observable": text, "min": 11.0}], histograms=[histogram])
+    assert p.total.value == pytest.approx(whole, rel=1e-13)
+    assert p.total.error < 1e-11 * whole
+    assert p.histograms["h"].values[0] == 0.0

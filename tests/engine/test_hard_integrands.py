@@ -121,3 +121,67 @@ def test_rounding_close_to_a_threshold_is_in_the_error(share: float, method: str
     sigma = 4 * mpmath.pi * mpmath.mpf(0.0072973525643) ** 2 / (3 * s) * beta * (1 + 2 * m**2 / s) * (1 + 2 * n**2 / s)
     assert abs(p.total.value - sigma) <= p.total.error
     assert p.total.error < 1e-14 / share * float(sigma)
+
+
+@pytest.mark.parametrize("sqrt_s", [30.0, 100.0, 1000.0, 7000.0])
+def test_a_forward_slope_is_seen_at_any_energy(sqrt_s: float) -> None:
+    """exp(12 t) lives at −t ~ 0.1 GeV², a share of 1e-9 of the axis at 7 TeV, and nobody has declared it."""
+    p = barnwright.predict(
+        formula={
+            "reaction": "e- e+ -> mu- mu+",
+            "squared_amplitude": "exp(12*t) + 1e-12",
+            "spin_colour": "averaged",
+        },
+        beams={"kind": "collider", "sqrt_s": sqrt_s},
+        masses={"e-": 0.0, "mu-": 0.0},
+        unit="GeV^-2",
+    )
+    expected = (1 / 12 + 1e-12 * sqrt_s**2) / (16 * math.pi * sqrt_s**4)
+    assert p.total.value == pytest.approx(expected, rel=1e-12)
+
+
+@pytest.mark.parametrize("width", [3.0, 1.0, 0.5, 0.3])
+def test_a_bump_anywhere_is_seen(width: float) -> None:
+    """A bump of a few hundredths of the axis is found wherever it lies, and is within the bound."""
+    for centre in range(3, 98, 5):
+        p = predict(f"1 + exp(-((t + {centre}.37)/{width})**2)*10")
+        ends = math.erf((99.63 - centre) / width) + math.erf((centre + 0.37) / width)
+        expected = (100 + 5 * width * math.sqrt(math.pi) * ends) / FLUX
+        assert abs(p.total.value - expected) <= p.total.error + 4e-15 * expected
+
+
+def test_the_histogram_does_not_change_the_total() -> None:
+    """The total and its error stay the same to rounding, whatever is binned."""
+    alone = predict("exp(12*t)")
+    edges = [0.0, 0.1, 1.0]
+    binned = predict(
+        "exp(12*t)", histograms=[{"name": "q", "observables": ["q2(beam_a, mu-)"], "bins": [{"edges": edges}]}]
+    )
+    assert binned.total.value == pytest.approx(alone.total.value, rel=1e-13)
+
+
+def test_what_is_cut_away_is_not_integrated() -> None:
+    """A divergence that a cut keeps out leaves the answer converged."""
+    edge = 0.9999999999
+    p = predict("1/t**2", cuts=[{"observable": "cos_theta(mu-)", "max": edge}])
+    least = 50 * mpmath.mpf(1 - edge)
+    assert p.status == "converged"
+    assert p.total.value == pytest.approx(float((1 / least - mpmath.mpf(1) / 100) / FLUX), rel=1e-12)
+
+
+def test_an_observable_without_a_value_is_told() -> None:
+    """Where sqrt of a negative number is cut on, the answer is suspect and says why."""
+    p = predict("1", cuts=[{"observable": "sqrt(pt(mu-) - 2)", "max": 9.0}])
+    assert p.status == "suspect"
+    assert "undefined_observable" in {note.code for note in p.notes}
+
+
+def test_a_result_beyond_floats_is_told() -> None:
+    """An overflow is no number, suspect, and has a note."""
+    p = barnwright.predict(
+        formula={"reaction": "e- e+ -> mu- mu+", "squared_amplitude": "1e300", "spin_colour": "averaged"},
+        beams={"kind": "collider", "sqrt_s": 10.0},
+        unit="ab",
+    )
+    assert (p.total.value, p.status) == (None, "suspect")
+    assert "overflow" in {note.code for note in p.notes}

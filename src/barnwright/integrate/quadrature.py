@@ -31,7 +31,7 @@ TOLERANCE = 4e-14
 ROUNDING = 4 * EPSILON
 DEEPEST = 60
 SETTLED = 1e-9
-"""A panel that was left open has settled all the same when its error is a smaller share of it."""
+"""A panel that was left open has settled all the same when its error is a smaller share of the row's largest panel."""
 MOST_OPEN = 256
 """Pieces of one panel that may still be open; an integrand that needs more does not settle."""
 MOST_EVALUATIONS = 4_000_000
@@ -206,7 +206,7 @@ def _halved(density: Density, pieces: _Pieces, result: PanelIntegrals) -> PanelI
         pieces = pieces.take(~done)
         if pieces.row.size == 0:
             break
-    matters = left_open & (result.error > SETTLED * np.abs(result.value))
+    matters = left_open & (result.error > SETTLED * np.abs(result.value).max(axis=1, keepdims=True))
     result.counts[:, UNRESOLVED] += np.count_nonzero(matters, axis=1)
     return result
 

@@ -16,7 +16,8 @@ from barnwright.integrate.roots import Crossings
 EVEN = 64
 WIDEST = 1 / 16
 """A panel wider than this in cos θ asks for even slices."""
-_TOWARDS_POLE = 10.0 ** np.arange(-14, 0, 2)
+_TOWARDS_POLE = 1.37 * 10.0 ** np.arange(-14, 0, 2)
+"""No round numbers: edges of requests are, and one within rounding of a slice could not be told from it in cos θ."""
 
 
 def slices(rows: int, even: bool) -> Crossings:

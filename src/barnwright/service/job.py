@@ -87,7 +87,8 @@ class Job:
         """A task was ended because it took too long."""
         block = task.block.name if task.block else "all points"
         what = f"working out {block}" if task.is_calculating else "loading and checking"
-        cause = f"{what} took longer than {seconds:g} s, so the worker was ended: one of its functions hangs, or the request is too large"
+        why = "one of its functions hangs, or the request is too large"
+        cause = f"{what} took longer than {seconds:g} s, so the worker was ended: {why}"
         self.refuse(PluginError(task.plugin, task.process, cause))
 
     def lost(self, task: Task, limit: int) -> None:
