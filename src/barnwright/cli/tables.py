@@ -59,7 +59,7 @@ def _beams(prediction: Prediction) -> str:
         return "a decay"
     if beams.kind == "collider":
         energies = beams.energies or {}
-        return ", ".join(f"{n} {e:g} GeV" for n, e in energies.items()) or f"sqrt_s = {beams.sqrt_s:g} GeV"
+        return ", ".join(f"{n} {e:g} GeV" for n, e in sorted(energies.items())) or f"sqrt_s = {beams.sqrt_s:g} GeV"
     given = {"energy": beams.energy, "kinetic energy": beams.kinetic_energy, "momentum": beams.momentum}
     what, value = next((what, value) for what, value in given.items() if value is not None)
     return f"{what} {value:g} GeV on {beams.target or 'the second particle'} at rest"
