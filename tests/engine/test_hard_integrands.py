@@ -34,6 +34,8 @@ SETTLING = {
     "exp(-((t + 30)/0.3)**2)": mpmath.sqrt(mpmath.pi) * 0.3,
     "sin(100*t)**2": 50 - mpmath.sin(20000) / 400,
     "abs(t + 17)": (17**2 + 83**2) / mpmath.mpf(2),
+    "1 + (t + 33.3)/sqrt((t + 33.3)**2)": 2 * mpmath.mpf(33.3),
+    "1 - abs(t + 61.7)/(t + 61.7)": 2 * (100 - mpmath.mpf(61.7)),
     "sqrt(-t)": mpmath.mpf(2000) / 3,
     "1/sqrt(-t)": mpmath.mpf(20),
     "log(-t/s)**2": mpmath.mpf(200),
@@ -44,7 +46,7 @@ SETTLING = {
 
 @pytest.mark.parametrize("text", SETTLING)
 def test_what_settles_is_right(text: str) -> None:
-    """Peaks, waves, kinks and integrable singularities, none of them declared: to 1e-11, within the bound."""
+    """Peaks, waves, kinks, jumps and integrable singularities, none of them declared: to 1e-11, within the bound."""
     mpmath.mp.dps = 30
     p = predict(text)
     expected = float(SETTLING[text]) / FLUX

@@ -7,8 +7,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from barnwright.integrate.panel_integrals import COUNTED
 from barnwright.integrate.polar_axis import Integers
-from barnwright.integrate.quadrature import COUNTED
 from barnwright.integrate.tally import WorstPoint
 
 Array = NDArray[np.float64]

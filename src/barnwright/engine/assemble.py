@@ -19,7 +19,7 @@ from barnwright.documents import Note as NoteDocument
 from barnwright.engine.derived import between_variations, point_asymmetries
 from barnwright.engine.histograms import HistogramForm, histogram_form
 from barnwright.engine.plan import Group, Plan
-from barnwright.integrate.quadrature import COUNTED, NON_FINITE
+from barnwright.integrate.panel_integrals import COUNTED, NON_FINITE
 from barnwright.integrate.settled import Settled
 from barnwright.units import from_natural
 

@@ -15,9 +15,10 @@ from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
 from barnwright.event import Point
 from barnwright.integrate.extrema import EPSILON
+from barnwright.integrate.panel_integrals import COUNTED, EVALUATIONS, NON_FINITE, PanelIntegrals
 from barnwright.integrate.panels import Panels
 from barnwright.integrate.polar_axis import Ends
-from barnwright.integrate.quadrature import COUNTED, EVALUATIONS, NON_FINITE, PanelIntegrals, integrate_panels
+from barnwright.integrate.quadrature import integrate_panels
 from barnwright.integrate.tally import WorstPoint
 from barnwright.kinematics import CM
 from barnwright.observables import compile_observable
@@ -36,7 +37,9 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
     if setting.rule == "closed_form":
         integrals = _closed_form(integrand, partition.panels)
     else:
-        integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), rows.count)
+        integrals = integrate_panels(
+            integrand.density(), partition.inside_cuts(), integrand.scales(), rows.count, partition.coarse
+        )
     if setting.beams.given == "kinetic":
         integrals = replace(integrals, error=integrals.error + _threshold_rounding(rows) * np.abs(integrals.value))
     return _collected(integrals, partition, setting, layout, rows)

@@ -38,3 +38,14 @@ def embedded_weights() -> Array:
     weights = np.array([share, 0.5 - share, 0.0, 0.5 - share, share])
     weights.flags.writeable = False
     return weights
+
+
+@lru_cache
+def end_weights(order: int) -> tuple[Array, Array]:
+    """Weights that extrapolate values on the nodes of a rule to 0 and to 1, by the one polynomial through them."""
+    nodes, _ = gauss_legendre(order)
+    to_low = np.array([np.prod(np.delete(nodes, k) / (np.delete(nodes, k) - nodes[k])) for k in range(order)])
+    to_high = to_low[::-1].copy()
+    for array in (to_low, to_high):
+        array.flags.writeable = False
+    return to_low, to_high

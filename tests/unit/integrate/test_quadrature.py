@@ -10,9 +10,10 @@ import numpy as np
 import pytest
 
 from barnwright.integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
+from barnwright.integrate.panel_integrals import NEGATIVE, NON_FINITE, UNRESOLVED, PanelIntegrals
 from barnwright.integrate.panels import panels_between
 from barnwright.integrate.polar_axis import Ends, Integers
-from barnwright.integrate.quadrature import NEGATIVE, NON_FINITE, UNRESOLVED, PanelIntegrals, integrate_panels
+from barnwright.integrate.quadrature import integrate_panels
 from barnwright.integrate.roots import Crossings, crossings
 
 Array = np.ndarray
