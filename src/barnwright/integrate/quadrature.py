@@ -56,7 +56,7 @@ def integrate_panels(
     closely : bool
         Whether to look at the ends of every panel, where an integrand that jumps would hide from the nodes.
     """
-    with np.errstate(invalid="ignore", over="ignore"):  # what is not finite is counted, not warned about
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):  # what is not finite is counted instead
         return _integrated(density, panels, scales[:, panels.side], rows, closely)
 
 
