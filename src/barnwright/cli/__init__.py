@@ -2,7 +2,10 @@
 
 from __future__ import annotations
 
+import os
+import sys
 from collections.abc import Sequence
+from pathlib import Path
 
 __all__ = ["main"]
 
@@ -13,6 +16,9 @@ def main(argv: Sequence[str] | None = None) -> int:
     0 done; 1 accuracy not reached or suspect; 2 the request or the command is wrong; 3 machinery; 4 a check failed;
     130 interrupted; 141 the reader of our output went away. Errors are lines on standard error, never a traceback.
     """
+    for name in ("stdout", "stderr"):
+        if getattr(sys, name) is None:  # closed by the shell
+            setattr(sys, name, Path(os.devnull).open("w", encoding="utf-8"))
     from barnwright.cli.app import app
 
     try:

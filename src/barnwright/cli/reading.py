@@ -19,6 +19,8 @@ def read_fields(source: str, overrides: Sequence[str]) -> dict[str, Any]:
     They are not checked yet: whoever answers says everything that is wrong with them at once. Raises RequestError when
     there is no such file, or the text or an override cannot be read.
     """
+    if source == "-" and sys.stdin is None:
+        raise RequestError([Violation("request", "a closed standard input", "TOML or JSON text on standard input")])
     fields = read_text(sys.stdin.read()) if source == "-" else read_file(source)
     for key, value in parse_overrides(overrides):
         fields = merge(fields, {key: value})

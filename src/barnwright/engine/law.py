@@ -19,11 +19,14 @@ def squared_amplitude(process: Process, law: int, event: Event, parameters: Para
     Raises
     ------
     PluginError
-        When the law raises, or its answer does not broadcast to ``event.shape``.
+        When the law raises, or its answer does not broadcast to ``event.shape``. Overflow and division by zero are no
+        fault of its own: they give NaN.
     """
     try:
         with np.errstate(all="ignore"):
             found = np.asarray(process.laws[law].squared(event, parameters), dtype=float)
+    except ArithmeticError:  # plain floats of extreme parameters: no number, as numpy would have it
+        return np.full(event.shape, np.nan)
     except (Exception, SystemExit) as cause:
         raise _fault(process, f"the law raised {type(cause).__name__}: {cause}") from cause
     return _shaped(process, found, event.shape, "the law")
@@ -37,12 +40,14 @@ def cumulative(process: Process, closed_form: int, x: Array, point: Point, param
     PluginError
         When the closed form raises, or its answer has another shape.
     """
+    shape = np.broadcast_shapes(x.shape, point.s.shape)
     try:
         with np.errstate(all="ignore"):
             found = np.asarray(process.closed_forms[closed_form].cumulative(x, point, parameters), dtype=float)
+    except ArithmeticError:
+        return np.full(shape, np.nan)
     except (Exception, SystemExit) as cause:
         raise _fault(process, f"the closed form raised {type(cause).__name__}: {cause}") from cause
-    shape = np.broadcast_shapes(x.shape, point.s.shape)
     return np.broadcast_to(_shaped(process, found, shape, "the closed form"), shape)
 
 
