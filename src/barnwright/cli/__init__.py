@@ -18,7 +18,7 @@ def main(argv: Sequence[str] | None = None) -> int:
     """
     for name in ("stdout", "stderr"):
         if getattr(sys, name) is None:  # closed by the shell
-            setattr(sys, name, Path(os.devnull).open("w", encoding="utf-8"))
+            setattr(sys, name, Path(os.devnull).open("w", encoding="utf-8"))  # noqa: SIM115
     from barnwright.cli.app import app
 
     try:
