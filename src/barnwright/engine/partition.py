@@ -6,7 +6,7 @@ Where every observable is the polar angle itself, the partition is the same for 
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from functools import lru_cache
 
 import numpy as np
@@ -35,14 +35,12 @@ SAME = 8 * EPSILON
 class Partition:
     """Panels, and for the total and every histogram entry and asymmetry the component of each panel.
 
-    ``undefined`` says for each row (or for all, shape (1,)) whether an observable has no value somewhere on the axis,
-    ``coarse`` whether the edges of the request leave wide panels.
+    ``undefined`` says for each row (or for all, shape (1,)) whether an observable has no value somewhere on the axis.
     """
 
     panels: Panels
     components: tuple[Integers, ...]
     undefined: NDArray[np.bool_]
-    coarse: bool = True
 
     def inside_cuts(self) -> Panels:
         """The panels with those that are cut away shrunk to nothing, at their end off the pole."""
@@ -78,15 +76,13 @@ def partition_of(setting: Setting, layout: Layout, rows: Rows) -> Partition:
 def _polar_partition(cuts: tuple[Cut, ...], layout: Layout, orientation: int, sliced: bool) -> Partition:
     wanted = levels_by_observable(cuts, layout)
     found = Crossings.join([polar_crossings(o, orientation, levels) for o, levels in wanted.items()])
-    coarse = True
     if sliced:
-        coarse = bool(np.max(panels_between(found, 1).width) > WIDEST)
-        found = Crossings.join([found, slices(1, coarse)])
+        wide = bool(np.max(panels_between(found, 1).width) > WIDEST)
+        found = Crossings.join([found, slices(1, wide)])
     panels = panels_between(found, 1)
     middle = panels.middle()
     defined = np.zeros(1, dtype=bool)
-    made = _partition((cuts, layout), panels, lambda o: polar_values(o, orientation, middle), defined)
-    return replace(made, coarse=coarse)
+    return _partition((cuts, layout), panels, lambda o: polar_values(o, orientation, middle), defined)
 
 
 def _partition(

@@ -37,9 +37,7 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
     if setting.rule == "closed_form":
         integrals = _closed_form(integrand, partition.panels)
     else:
-        integrals = integrate_panels(
-            integrand.density(), partition.inside_cuts(), integrand.scales(), rows.count, partition.coarse
-        )
+        integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), rows.count)
     if setting.beams.given == "kinetic":
         integrals = replace(integrals, error=integrals.error + _threshold_rounding(rows) * np.abs(integrals.value))
     return _collected(integrals, partition, setting, layout, rows)

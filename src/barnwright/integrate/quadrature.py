@@ -41,9 +41,7 @@ MOST_EVALUATIONS = 4_000_000
 """Of one row."""
 
 
-def integrate_panels(
-    density: Density, panels: Panels, scales: Array, rows: int, closely: bool = True
-) -> PanelIntegrals:
+def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int) -> PanelIntegrals:
     """Integrate a density over every panel of every row.
 
     Parameters
@@ -53,14 +51,12 @@ def integrate_panels(
     scales : array, shape (row or 1, 2)
         δ of the backward and the forward pole (∞: no peak there).
     rows : int
-    closely : bool
-        Whether to look at the ends of every panel, where an integrand that jumps would hide from the nodes.
     """
     with np.errstate(divide="ignore", invalid="ignore", over="ignore"):  # what is not finite is counted instead
-        return _integrated(density, panels, scales[:, panels.side], rows, closely)
+        return _integrated(density, panels, scales[:, panels.side], rows)
 
 
-def _integrated(density: Density, panels: Panels, scale: Array, rows: int, closely: bool) -> PanelIntegrals:
+def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> PanelIntegrals:
     left, right = to_map(panels.left, scale), to_map(panels.right, scale)
     ends, measure = _first_nodes(panels, scale, left, right)
     nodes, weights = gauss_legendre(FIRST_ORDER)
@@ -69,8 +65,7 @@ def _integrated(density: Density, panels: Panels, scale: Array, rows: int, close
     values = (found if found.shape == shape else np.broadcast_to(found, shape)).reshape(rows, nodes.size, -1) * measure
     fine = _weighted(values, weights)
     error = np.abs(_weighted(values, weights - embedded_weights()))
-    if closely:
-        error += _unseen(density, panels.side, scale, (left, right), values)
+    error += _unseen(density, panels.side, scale, (left, right), values)
     counts = np.zeros((rows, len(COUNTED)))
     counts[:, EVALUATIONS] = FIRST_ORDER * np.count_nonzero(panels.width, axis=1)
     result = PanelIntegrals(fine, error, counts)
