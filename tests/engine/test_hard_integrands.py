@@ -194,6 +194,6 @@ def test_a_jump_is_right_whatever_is_binned(bins: int) -> None:
     axis = {"count": bins, "low": -1.0, "high": 1.0}
     histogram = {"name": "c", "observables": ["cos_theta(mu-)"], "bins": [axis]}
     for place in (3.1, 12.53, 33.3, 49.97, 61.7, 74.02, 96.9):
-        p = predict(f"1 + (t + {place})/sqrt((t + {place})**2)", histograms=[histogram])
+        p = predict(f"1 + (t + {place})/(abs(t + {place}) + 1e-300)", histograms=[histogram])
         assert p.total.value == pytest.approx(2 * place / FLUX, rel=1e-12)
         assert sum(p.histograms["c"].contents) == pytest.approx(p.total.value, rel=1e-13)
