@@ -16,42 +16,51 @@ if TYPE_CHECKING:
     from barnwright.event import Event, Point
     from barnwright.peaks import Peak
     from barnwright.process import (
+        AngularCrossSection,
         Claims,
         ClosedForm,
         Expression,
+        HelicityAmplitudes,
         Parameters,
         Process,
         SquaredAmplitude,
+        TotalCrossSection,
         Validity,
         parameter,
     )
 
 _PLACES = {
+    "AngularCrossSection": "barnwright.process",
     "Claims": "barnwright.process",
     "ClosedForm": "barnwright.process",
     "Event": "barnwright.event",
     "Expression": "barnwright.process",
+    "HelicityAmplitudes": "barnwright.process",
     "Parameters": "barnwright.process",
     "Peak": "barnwright.peaks",
     "PluginError": "barnwright.errors",
     "Point": "barnwright.event",
     "Process": "barnwright.process",
     "SquaredAmplitude": "barnwright.process",
+    "TotalCrossSection": "barnwright.process",
     "Validity": "barnwright.process",
     "parameter": "barnwright.process",
 }
 
 __all__ = [
+    "AngularCrossSection",
     "Claims",
     "ClosedForm",
     "Event",
     "Expression",
+    "HelicityAmplitudes",
     "Parameters",
     "Peak",
     "PluginError",
     "Point",
     "Process",
     "SquaredAmplitude",
+    "TotalCrossSection",
     "Validity",
     "parameter",
 ]

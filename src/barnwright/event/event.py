@@ -8,7 +8,7 @@ from typing import Any, Protocol
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.kinematics import LAB, FourVector, Frame
+from barnwright.kinematics import CM, LAB, FourVector, Frame
 from barnwright.reaction import Reaction
 
 Array = NDArray[np.float64]
@@ -60,6 +60,16 @@ class Event:
         self.reaction = reaction
         self.kinematics = kinematics
         self._known: dict[Any, Any] = {}
+
+    def once(self, key: Any, make: Callable[[], Any]) -> Any:
+        """What ``make`` returns, made when it is first asked for under this key; an array becomes read-only."""
+        value = self._known.get(key)
+        if value is None:
+            value = make()
+            if isinstance(value, np.ndarray):
+                value.flags.writeable = False
+            self._known[key] = value
+        return value
 
     def _once(self, key: Any, make: Callable[[], Array]) -> Array:
         value = self._known.get(key)
@@ -115,6 +125,10 @@ class Event:
             self._known[key] = self.kinematics.vector(code, frame)
         vector: FourVector = self._known[key]
         return vector
+
+    def cm_vector(self, leg: LegKey) -> FourVector:
+        """The momentum of a leg in the cm, in light-cone components: what helicity amplitudes are made of."""
+        return self.vector(self.reaction.leg(leg), CM)
 
     def __getitem__(self, leg: LegKey) -> Array:
         """(E, px, py, pz) of a leg in the lab, GeV, shape (4, …)."""

@@ -10,9 +10,10 @@ from numpy.typing import ArrayLike, NDArray
 
 from barnwright.event import Point
 from barnwright.observables import Observable, compile_observable
+from barnwright.process.contributions import Parts, called
 from barnwright.reaction import Reaction
 
-Cumulative = Callable[[NDArray[Any], Point, Any], ArrayLike]
+Cumulative = Callable[..., ArrayLike]
 
 
 @dataclass(frozen=True, slots=True)
@@ -21,7 +22,7 @@ class ClosedForm:
 
     Attributes
     ----------
-    cumulative : function ``(x, point, parameters)``
+    cumulative : function ``(x, point, parameters)``, also with ``parts`` where the process has contributions
         x has the shape (point, edge) and broadcasts against the arrays of the point, (point, 1); so does the answer.
         Where the integral starts is free. +z is the direction of beam a.
     observable : str
@@ -33,6 +34,11 @@ class ClosedForm:
     cumulative: Cumulative
     observable: str
     massless: tuple[str, ...] = ()
+
+    def heights(self, x: NDArray[Any], point: Point, parameters: Any, parts: Parts | None = None) -> ArrayLike:
+        """The antiderivative at x."""
+        found: ArrayLike = called(self.cumulative, parts, x, point, parameters)
+        return found
 
     def axis(self, reaction: Reaction) -> Observable:
         """The observable that x is; leg numbers name one of identical particles too.

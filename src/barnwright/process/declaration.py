@@ -16,6 +16,8 @@ from barnwright.errors import PluginError, Violation, show
 from barnwright.peaks import Peak
 from barnwright.process.claims import Claims
 from barnwright.process.closed_form import ClosedForm
+from barnwright.process.cross_sections import AngularCrossSection, TotalCrossSection
+from barnwright.process.helicity_amplitudes import HelicityAmplitudes
 from barnwright.process.laws import Expression, SquaredAmplitude
 from barnwright.process.parameters import Parameters, facts_of
 from barnwright.process.statements import statement_findings
@@ -27,7 +29,10 @@ if TYPE_CHECKING:
 
 _NAME = re.compile(r"[a-z0-9]+(-[a-z0-9]+)*")
 _TUPLES: dict[str, tuple[tuple[type[Any], ...], str]] = {
-    "laws": ((SquaredAmplitude, Expression), "SquaredAmplitude and Expression"),
+    "laws": (
+        (SquaredAmplitude, HelicityAmplitudes, Expression, AngularCrossSection, TotalCrossSection),
+        "SquaredAmplitude, HelicityAmplitudes, Expression, AngularCrossSection and TotalCrossSection",
+    ),
     "closed_forms": ((ClosedForm,), "ClosedForm"),
     "peaks": ((Peak,), "Peak"),
     "references": ((str,), "text"),

@@ -23,12 +23,14 @@ from barnwright.errors import RequestError, Violation, show
 from barnwright.event import Event
 from barnwright.formula import Formula, compile_formula
 from barnwright.particles import find
+from barnwright.process.contributions import Parts, called
+from barnwright.process.cross_sections import AngularCrossSection, TotalCrossSection
+from barnwright.process.helicity_amplitudes import HelicityAmplitudes
+from barnwright.process.parameters import Parameters
 from barnwright.reaction import Reaction
 
-from .parameters import Parameters
-
 Array = NDArray[np.float64]
-LawFunction = Callable[[Event, Any], ArrayLike]
+LawFunction = Callable[..., ArrayLike]
 
 
 @dataclass(frozen=True, slots=True)
@@ -37,7 +39,7 @@ class SquaredAmplitude:
 
     Attributes
     ----------
-    function : function ``(event, parameters)``
+    function : function ``(event, parameters)``, also with ``parts`` where the process has contributions
     massless : particles or legs
         The law is skipped when one of these masses is not 0.
     compiled : bool
@@ -50,9 +52,10 @@ class SquaredAmplitude:
     massless: tuple[str, ...] = ()
     compiled: bool = False
 
-    def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
+    def squared(self, event: Event, parameters: Parameters, parts: Parts | None = None) -> ArrayLike:
         """|M|² in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``; raises what the function raises."""
-        return self.function(event, parameters)
+        found: ArrayLike = called(self.function, parts, event, parameters)
+        return found
 
 
 @dataclass(frozen=True, slots=True)
@@ -89,8 +92,9 @@ class Expression:
             initial_states(reaction)
         return _compiled(self.squared_amplitude, reaction, parameter_names)
 
-    def squared(self, event: Event, parameters: Parameters) -> ArrayLike:
+    def squared(self, event: Event, parameters: Parameters, parts: Parts | None = None) -> ArrayLike:
         """|M|² of the batch in GeV^(2(4 − N)), averaged; broadcasts to ``event.shape``."""
+        assert parts is None, "a process with contributions has no expressions"
         values = parameters.model_dump()
         found = self.compile(event.reaction, tuple(values)).evaluate(event, values)
         return found if self.spin_colour == "averaged" else found / initial_states(event.reaction)
@@ -102,7 +106,10 @@ def _compiled(expression: Any, reaction: Reaction, parameter_names: tuple[str, .
     return compile_formula(expression, reaction, parameter_names)
 
 
-Law = SquaredAmplitude | Expression
+MomentaLaw = SquaredAmplitude | HelicityAmplitudes | Expression
+"""Laws that see the momenta of an event."""
+
+Law = MomentaLaw | AngularCrossSection | TotalCrossSection
 
 
 def initial_states(reaction: Reaction) -> int:

@@ -31,7 +31,14 @@ class Parameters(BaseModel):
     )
 
 
-def parameter(default: Any = ..., *, unit: str = "", meaning: str = "", source: str = "") -> Any:
+def parameter(
+    default: Any = ...,
+    *,
+    unit: str = "",
+    meaning: str = "",
+    source: str = "",
+    used_with: Mapping[str, tuple[ParameterValue, ...]] | None = None,
+) -> Any:
     """Declare a field of `Parameters`.
 
     Parameters
@@ -42,13 +49,22 @@ def parameter(default: Any = ..., *, unit: str = "", meaning: str = "", source: 
         "GeV", "GeV^-2", …; "" for a pure number.
     meaning, source : str
         What it is, and where the default comes from.
+    used_with : values of other parameters by name, optional
+        ``{"scheme": ("alpha",)}``: the laws read it only where each of these has one of its values; a request that
+        sets it otherwise is refused, and says so.
     """
-    return Field(default, description=meaning, json_schema_extra={"unit": unit, "source": source})
+    extra: dict[str, Any] = {"unit": unit, "source": source}
+    if used_with:
+        extra["used_with"] = {name: list(values) for name, values in used_with.items()}
+    return Field(default, description=meaning, json_schema_extra=extra)
 
 
 @dataclass(frozen=True, slots=True)
 class ParameterFacts:
-    """What a user must know of a parameter; ``choices`` are the words of a ``word``, ``default`` None when required."""
+    """What a user must know of a parameter; ``choices`` are the words of a ``word``, ``default`` None when required.
+
+    ``used_with`` holds (name, values) of the other parameters that decide whether it is used.
+    """
 
     name: str
     type: Literal["float", "int", "bool", "word"]
@@ -58,6 +74,11 @@ class ParameterFacts:
     meaning: str
     source: str
     required: bool
+    used_with: tuple[tuple[str, tuple[ParameterValue, ...]], ...] = ()
+
+    def is_used(self, values: Mapping[str, ParameterValue]) -> bool:
+        """Whether the laws read it, given the values of all parameters."""
+        return all(values.get(name) in allowed for name, allowed in self.used_with)
 
 
 def facts_of(model: type[Parameters]) -> tuple[ParameterFacts, ...]:
@@ -83,7 +104,12 @@ def _facts(name: str, field: FieldInfo) -> ParameterFacts:
         meaning=field.description or "",
         source=str(extra.get("source", "")),
         required=field.is_required(),
+        used_with=tuple((key, tuple(values)) for key, values in _table(extra.get("used_with")).items()),
     )
+
+
+def _table(value: Any) -> dict[str, Any]:
+    return value if isinstance(value, dict) else {}
 
 
 def _type_of(name: str, annotation: Any) -> tuple[Literal["float", "int", "bool", "word"], tuple[str, ...]]:

@@ -119,7 +119,7 @@ WRONG: list[tuple[dict[str, Any], str]] = [
     ({"reaction": "e- e+ => mu- mu+"}, "reaction: got 'e- e+ => mu- mu+'"),
     ({"laws": ()}, "laws: got none, expected at least one law or closed form"),
     ({"laws": (Expression("g*t"),)}, "laws[0].squared_amplitude: got"),
-    ({"laws": LAW}, "expected a tuple of SquaredAmplitude and Expression"),
+    ({"laws": LAW}, "expected a tuple of SquaredAmplitude, HelicityAmplitudes, Expression"),
     ({"references": "a book"}, "references: got 'a book', expected a tuple of text"),
     (
         {"laws": (SquaredAmplitude(flat, massless="e-"),)},
