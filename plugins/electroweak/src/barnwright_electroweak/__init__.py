@@ -1,0 +1,1 @@
+"""The electroweak interaction at lowest order: photon, Z, W and Higgs, beams polarised."""
