@@ -25,6 +25,8 @@ class BeamSettings:
         +1 when beam a moves along +z in the cm, −1 when beam b does.
     target : int or None
         The leg code (−1 or −2) of a particle at rest in the lab.
+    polarisation : two floats
+        (N_R − N_L)/(N_R + N_L) of beam a and beam b, by helicity in the cm.
     """
 
     given: Literal["sqrt_s", "kinetic"]
@@ -32,3 +34,4 @@ class BeamSettings:
     second: tuple[float, ...] = ()
     orientation: int = 1
     target: int | None = None
+    polarisation: tuple[float, float] = (0.0, 0.0)

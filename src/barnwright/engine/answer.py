@@ -1,7 +1,11 @@
-"""What one setting's integration yields for a batch of rows, before it becomes a tally."""
+"""What one setting's integration yields for a batch of rows, before it becomes a tally.
+
+Where a setting has several parts, its rows come part after part.
+"""
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -30,6 +34,22 @@ class Answer:
     def empty(rows: int, components: int) -> Answer:
         """Zeros that are exact."""
         return Answer(np.zeros((rows, components)), np.zeros((rows, components)), np.zeros((rows, len(COUNTS))))
+
+    @staticmethod
+    def joined(parts: Sequence[Answer]) -> Answer:
+        """The rows of several answers, one after another."""
+        worst = next((part.worst for part in parts if part.worst), ())
+        arrays = (np.concatenate([getattr(part, name) for part in parts]) for name in ("value", "error", "counts"))
+        return Answer(*arrays, worst)
+
+    def copy(self) -> Answer:
+        """An answer with arrays of its own."""
+        return Answer(self.value.copy(), self.error.copy(), self.counts.copy(), self.worst)
+
+    def rows(self, first: int, count: int) -> Answer:
+        """Some of the rows."""
+        chosen = slice(first, first + count)
+        return Answer(self.value[chosen], self.error[chosen], self.counts[chosen], self.worst)
 
     def filled(self, rows: Integers, found: Answer) -> Answer:
         """This answer with the chosen rows taken from another."""

@@ -33,15 +33,21 @@ DEEPEST = 10
 
 def over_azimuth(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
     """Totals, bins and asymmetries of every row, averaged over the azimuth where something depends on it."""
-    wanted = levels_by_observable(setting.cuts, layout)
-    if not any(observable.azimuthal for observable in wanted):
+    if not needs_azimuth(setting, layout, rows):
         return over_polar_angle(process, setting, layout, rows)
+    wanted = levels_by_observable(setting.cuts, layout)
     answer = Answer.empty(rows.count, layout.components)
     for point in range(rows.count):
         one = Rows(rows.reaction, rows.collision.take(slice(point, point + 1)), rows.masses, rows.azimuth)
         found = _one_point(process, setting, layout, one, wanted)
         answer = answer.filled(np.array([point]), found)
     return answer
+
+
+def needs_azimuth(setting: Setting, layout: Layout, rows: Rows) -> bool:
+    """Whether a cut or a question depends on the azimuth."""
+    del rows
+    return any(observable.azimuthal for observable in levels_by_observable(setting.cuts, layout))
 
 
 def _one_point(

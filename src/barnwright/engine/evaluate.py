@@ -1,24 +1,30 @@
 """A worker's whole job: from a block to its tally.
 
 The sums of a block have the shape (moment, point, variation, component), with the moments value and error bound in
-GeV⁻².
+GeV⁻². The variation axis holds, for the request as it stands and for each of its variations, all parts of the law that
+are asked for, and then every contribution that is reported.
 """
 
 from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import replace
 
 import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.beams import collide
 from barnwright.engine.answer import COUNTS, Answer
-from barnwright.engine.azimuth import over_azimuth
-from barnwright.engine.plan import Stage
+from barnwright.engine.azimuth import needs_azimuth, over_azimuth
+from barnwright.engine.inclusive import inclusive_answer
+from barnwright.engine.law import law_of
+from barnwright.engine.plan import Member, Stage
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Setting
 from barnwright.errors import PluginError
 from barnwright.integrate.block import Block
 from barnwright.integrate.tally import Sums, Tally, WorstPoint
-from barnwright.process import Process
+from barnwright.process import Process, TotalCrossSection
 
 Array = NDArray[np.float64]
 
@@ -29,10 +35,10 @@ def evaluate(block: Block, stage: Stage, process: Process) -> Tally:
     Parameters
     ----------
     block : Block
-        A range of points of the plan.
+        A range of points of the plan, of one of its members.
     stage : Stage
     process : Process
-        The one that the plan names.
+        The one that the plan names for this member.
 
     Raises
     ------
@@ -41,30 +47,44 @@ def evaluate(block: Block, stage: Stage, process: Process) -> Tally:
     """
     plan = stage.plan
     group, first, last = plan.group_of(block.points)
-    components = plan.layout.components
-    added = np.zeros((2, last - first, len(group.settings), components + len(COUNTS)))
+    member, share = plan.members[block.stratum], group.shares[block.stratum]
+    components = member.layout.components
+    added = np.zeros((2, last - first, share.entries, components + len(COUNTS)))
     worst: tuple[WorstPoint, ...] = ()
-    for number, setting in enumerate(group.settings):
-        try:
-            answer = _setting_answer(process, stage, setting, slice(first, last))
-        except PluginError as error:
-            raise PluginError(plan.source.distribution, plan.source.name, error.cause) from error
-        added[0, :, number, :components], added[1, :, number, :components] = answer.value, answer.error
-        added[0, :, number, components:] = answer.counts
-        worst = worst or answer.worst
+    entry = 0
+    try:
+        for setting in share.settings:
+            for answer in _by_part(process, member, setting, slice(first, last)):
+                added[0, :, entry, :components], added[1, :, entry, :components] = answer.value, answer.error
+                added[0, :, entry, components:] = answer.counts
+                worst = worst or answer.worst
+                entry += 1
+    except PluginError as error:
+        raise PluginError(member.source.distribution, member.source.name, error.cause) from error
     counts = added[0, ..., components:].sum(axis=(0, 1))
     counters = {name: int(count) for name, count in zip(COUNTS, counts, strict=True)}
     return Tally(block, {(0, 0): Sums(added, np.zeros(added.shape[1:]))}, counters, worst)
 
 
-def _setting_answer(process: Process, stage: Stage, setting: Setting, points: slice) -> Answer:
-    """One variation: the points below its threshold stay 0, the others are integrated."""
-    plan = stage.plan
+def _by_part(process: Process, member: Member, setting: Setting, points: slice) -> Iterator[Answer]:
+    """The answers of one setting, part after part; points below threshold stay 0."""
     collision = collide(setting.beams, setting.masses[:2]).take(points)
     open_points = np.nonzero(collision.above(sum(setting.masses[2:]))[:, 0] > 0)[0]
-    answer = Answer.empty(collision.sqrt_s.shape[0], plan.layout.components)
+    empty = Answer.empty(collision.sqrt_s.shape[0], member.layout.components)
     if open_points.size == 0:
-        return answer
-    rows = Rows(plan.reaction, collision.take(open_points), setting.masses, np.zeros((1, 1)))
-    found = over_azimuth(process, setting, plan.layout, rows)
-    return answer.filled(open_points, found)
+        yield from (empty for _ in setting.parts)
+        return
+    found = _all_parts(process, member, setting, Rows.of(member.reaction, collision.take(open_points), setting.masses))
+    for number in range(len(setting.parts)):
+        yield empty.copy().filled(open_points, found.rows(number * open_points.size, open_points.size))
+
+
+def _all_parts(process: Process, member: Member, setting: Setting, rows: Rows) -> Answer:
+    """All parts above threshold, part after part; one by one where the azimuth is integrated over."""
+    layout = member.layout
+    if setting.law is not None and isinstance(law_of(process, setting), TotalCrossSection):
+        return inclusive_answer(process, setting, layout, member.reaction, rows.collision)
+    if len(setting.parts) == 1 or not needs_azimuth(setting, layout, rows):
+        return over_azimuth(process, setting, layout, rows)
+    alone = (replace(setting, parts=(part,)) for part in setting.parts)
+    return Answer.joined([over_azimuth(process, one, layout, rows) for one in alone])

@@ -42,6 +42,15 @@ class Partition:
     components: tuple[Integers, ...]
     undefined: NDArray[np.bool_]
 
+    def tiled(self, tile: Callable[[NDArray[np.generic]], NDArray[np.generic]]) -> Partition:
+        """The same partition for rows that are repeated part after part, where its arrays have one row each."""
+        old = self.panels
+        if tile(old.left) is old.left and all(tile(c) is c for c in self.components):
+            return self
+        arrays = (np.asarray(tile(array)) for array in (old.left, old.right, old.wobble, old.graze))
+        components = tuple(np.asarray(tile(component)) for component in self.components)
+        return Partition(Panels(old.side, *arrays), components, np.asarray(tile(self.undefined)))
+
     def inside_cuts(self) -> Panels:
         """The panels with those that are cut away shrunk to nothing, at their end off the pole."""
         cut_away = self.components[0] == OUTSIDE

@@ -6,6 +6,7 @@ Rules of this file
   share a group, whose settings hold arrays of energies; every other change makes a group of its own.
 - The digest covers everything that shapes the numbers and nothing that only says when to stop: not `relative`,
   `absolute`, `max_evaluations`, `max_seconds`, `rounds`.
+- A sum of processes has a member and a stratum for each; their contents and bounds add up.
 - No functions: a process is named by its identity, a formula by its text.
 """
 
@@ -59,6 +60,45 @@ class ValidRange:
 
 
 @dataclass(frozen=True, slots=True)
+class Member:
+    """One of the processes that a request sums; most requests have one.
+
+    ``layout`` has as many components in every member, ``provided`` is what a prediction repeats of the process.
+    """
+
+    source: ProcessSource
+    reaction: Reaction
+    layout: Layout
+    provided: Mapping[str, Any]
+    provided_sources: Mapping[str, str]
+    valid: ValidRange | None = None
+
+    def masses_by_name(self, setting: Setting) -> dict[str, float]:
+        """The mass in GeV of every particle of the reaction."""
+        names = (*self.reaction.incoming, *self.reaction.outgoing)
+        return dict(zip(names, setting.masses, strict=False))
+
+    @property
+    def plugin_version(self) -> dict[str, str]:
+        """The plugin's distribution and version; empty for a formula."""
+        return {self.source.distribution: self.source.version} if self.source.distribution else {}
+
+
+@dataclass(frozen=True, slots=True)
+class Share:
+    """What one member makes of a group: the request as it stands first, then its variations."""
+
+    settings: tuple[Setting, ...]
+    notes: tuple[Note, ...] = ()
+    mass_sources: Mapping[int, str] = field(default_factory=dict)
+
+    @property
+    def entries(self) -> int:
+        """How many entries it has on the variation axis."""
+        return sum(len(setting.parts) for setting in self.settings)
+
+
+@dataclass(frozen=True, slots=True)
 class Group:
     """Points that share everything but the beam energies.
 
@@ -66,16 +106,15 @@ class Group:
     ----------
     points : tuple of int
         Their numbers in the scan.
-    settings : tuple of Setting
-        The request as it stands first, then its variations.
+    request : Request
+    shares : tuple of Share
+        One for each member of the plan.
     """
 
     points: tuple[int, ...]
-    settings: tuple[Setting, ...]
     request: Request
+    shares: tuple[Share, ...]
     columns: Mapping[str, tuple[Any, ...]] = field(default_factory=dict)
-    notes: tuple[Note, ...] = ()
-    mass_sources: Mapping[int, str] = field(default_factory=dict)
 
 
 @dataclass(frozen=True)
@@ -83,14 +122,9 @@ class Plan:
     """Everything that workers and assembly need; see the rules above."""
 
     digest: str
-    source: ProcessSource
-    reaction: Reaction
-    layout: Layout
+    members: tuple[Member, ...]
     groups: tuple[Group, ...]
     shape: tuple[int, ...]
-    provided: Mapping[str, Any]
-    provided_sources: Mapping[str, str]
-    valid: ValidRange | None = None
 
     @property
     def points(self) -> int:
@@ -105,21 +139,28 @@ class Plan:
             starts.append(starts[-1] + len(group.points))
         return tuple(starts)
 
-    def sources(self, group: Group) -> dict[str, str]:
-        """Where parameters, constants and (by ``masses.`` and the particle) masses come from."""
-        asked = dict.fromkeys(group.request.parameters, "request")
-        masses = {f"masses.{self.reaction.name_of(code)}": text for code, text in group.mass_sources.items()}
-        return {**self.provided_sources, **asked, **masses}
-
-    def masses_by_name(self, setting: Setting) -> dict[str, float]:
-        """The mass in GeV of every particle of the reaction."""
-        names = (*self.reaction.incoming, *self.reaction.outgoing)
-        return dict(zip(names, setting.masses, strict=True))
+    @property
+    def request(self) -> Request:
+        """The request at the first point."""
+        return self.groups[0].request
 
     @property
-    def plugin_version(self) -> dict[str, str]:
-        """The plugin's distribution and version; empty for a formula."""
-        return {self.source.distribution: self.source.version} if self.source.distribution else {}
+    def components(self) -> int:
+        """How many components each entry of the variation axis has."""
+        return self.members[0].layout.components
+
+    @property
+    def entries(self) -> int:
+        """How many entries the variation axis has."""
+        return self.groups[0].shares[0].entries
+
+    def sources(self, group: Group, member: int) -> dict[str, str]:
+        """Where parameters, constants and (by ``masses.`` and the particle) masses come from."""
+        own, share = self.members[member], group.shares[member]
+        asked = dict.fromkeys(group.request.parameters, "request")
+        names = {code: own.reaction.name_of(code) for code in share.mass_sources}
+        masses = {f"masses.{names[code]}": text for code, text in share.mass_sources.items()}
+        return {**own.provided_sources, **asked, **masses}
 
     def group_of(self, points: tuple[int, int]) -> tuple[Group, int, int]:
         """The group of a block's points, and their range within it; blocks never cross groups."""
@@ -130,7 +171,7 @@ class Plan:
 
     def ranges(self) -> Iterator[tuple[int, int]]:
         """Ranges of points of about `NODES_A_BLOCK` nodes each."""
-        nodes = 5 * (self.layout.components + 8)
+        nodes = 5 * (self.components + 8)
         step = max(1, NODES_A_BLOCK // nodes)
         for start, stop in zip(self.starts, self.starts[1:], strict=False):
             for first in range(start, stop, step):
@@ -139,12 +180,13 @@ class Plan:
     @property
     def name(self) -> str:
         """What messages call it, as ``qed/compton``."""
-        return self.source.name
+        return " + ".join(member.source.name for member in self.members)
 
-    @property
+    @cached_property
     def rule(self) -> Rule:
         """How sums become values and errors: closed forms and quadrature both state bounds."""
-        return "exact" if all(s.rule == "closed_form" for g in self.groups for s in g.settings) else "embedded"
+        settings = (setting for group in self.groups for share in group.shares for setting in share.settings)
+        return "exact" if all(setting.rule == "closed_form" for setting in settings) else "embedded"
 
     @property
     def training(self) -> None:
@@ -157,9 +199,10 @@ class Plan:
         return None
 
     def round(self, frozen: Frozen, number: int) -> Round:
-        """The one round of closed forms and quadrature: a block for each range of points."""
+        """The one round of closed forms and quadrature: a block for each range of points of each member."""
         del frozen
-        return Round(self.digest, number, tuple(Strand(points) for points in self.ranges()))
+        strands = (Strand(points, stratum) for stratum in range(len(self.members)) for points in self.ranges())
+        return Round(self.digest, number, tuple(strands))
 
     def stage(self) -> Stage:
         """The plan with its frozen arrays: none for closed forms and quadrature."""

@@ -15,7 +15,7 @@ from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
 from barnwright.event import Point
 from barnwright.integrate.extrema import EPSILON
-from barnwright.integrate.panel_integrals import COUNTED, EVALUATIONS, NON_FINITE, PanelIntegrals
+from barnwright.integrate.panel_integrals import COUNTED, EVALUATIONS, NEGATIVE, NON_FINITE, PanelIntegrals
 from barnwright.integrate.panels import Panels
 from barnwright.integrate.polar_axis import Ends
 from barnwright.integrate.quadrature import integrate_panels
@@ -32,15 +32,17 @@ SMALL_SHARE = 1e-4
 
 def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
     """Totals, bins and asymmetries of every row."""
-    partition = partition_of(setting, layout, rows)
     integrand = Integrand(process, setting, rows, process.parameters_of(setting.parameters))
+    partition = partition_of(setting, layout, rows).tiled(integrand.tiled)
     if setting.rule == "closed_form":
         integrals = _closed_form(integrand, partition.panels)
     else:
-        integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), rows.count)
+        integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), integrand.count)
     if setting.beams.given == "kinetic":
-        integrals = replace(integrals, error=integrals.error + _threshold_rounding(rows) * np.abs(integrals.value))
-    return _collected(integrals, partition, setting, layout, rows)
+        rounding = np.asarray(integrand.tiled(_threshold_rounding(rows)))
+        integrals = replace(integrals, error=integrals.error + rounding * np.abs(integrals.value))
+    integrals.counts[integrand.signed, NEGATIVE] = 0
+    return _collected(integrals, partition, integrand, layout)
 
 
 def _threshold_rounding(rows: Rows) -> Array:
@@ -53,25 +55,34 @@ def _threshold_rounding(rows: Rows) -> Array:
 
 def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     """Differences of the antiderivative, with quadrature for the panels that are too small for them."""
-    setting, rows, process = integrand.setting, integrand.rows, integrand.process
-    assert setting.closed_form is not None
-    point = Point.of(rows.reaction, rows.collision, rows.masses)
-    x = _natural_values(process.closed_forms[setting.closed_form].observable, rows, panels.boundaries())
-    heights = cumulative(process, setting.closed_form, x, point, integrand.parameters)
+    x, heights = _heights(integrand, panels)
     direction = np.where(x[:, -1:] >= x[:, :1], 1.0, -1.0)
     value = direction * np.diff(heights, axis=1)
     error = 4 * EPSILON * (np.abs(heights[:, 1:]) + np.abs(heights[:, :-1])) * (panels.width > 0)
     with np.errstate(divide="ignore", invalid="ignore"):  # the antiderivative gets its edges as floats, rounded to ε
         error += np.where(panels.width > 0, EPSILON * np.abs(value) / panels.width, 0.0)
-    total = direction * (heights[:, -1:] - heights[:, :1])
-    counts = np.zeros((rows.count, len(COUNTED)))
+    total = np.max(heights, axis=1, keepdims=True) - np.min(heights, axis=1, keepdims=True)
+    counts = np.zeros((integrand.count, len(COUNTED)))
     counts[:, EVALUATIONS] = 1 + np.count_nonzero(panels.width, axis=1)
     counts[:, NON_FINITE] = np.count_nonzero(~np.isfinite(heights), axis=1)
     result = PanelIntegrals(np.where(panels.width > 0, value, 0.0), error, counts)
-    small = (panels.width > 0) & (value < SMALL_SHARE * total)
-    if setting.law is None or not small.any():
+    small = (panels.width > 0) & (np.abs(value) < SMALL_SHARE * total)
+    if integrand.setting.law is None or not small.any():
         return result
     return _with_quadrature(integrand, panels, result, small)
+
+
+def _heights(integrand: Integrand, panels: Panels) -> tuple[Array, Array]:
+    """The boundaries of the panels in the closed form's observable, and its antiderivative there, part after part."""
+    setting, rows, process = integrand.setting, integrand.rows, integrand.process
+    assert setting.closed_form is not None
+    ends = panels.boundaries()
+    if ends.one_plus.shape[0] == integrand.count:
+        ends = Ends(ends.one_minus[: rows.count], ends.one_plus[: rows.count])
+    point = Point.of(rows.reaction, rows.collision, rows.masses)
+    x = _natural_values(process.closed_forms[setting.closed_form].observable, rows, ends)
+    found = [cumulative(process, setting, x, point, integrand.parameters, parts) for parts in integrand.parts]
+    return np.asarray(integrand.tiled(x)), found[0] if len(found) == 1 else np.concatenate(found)
 
 
 def _with_quadrature(
@@ -84,7 +95,7 @@ def _with_quadrature(
     )
     use = small[:, chosen]
     some = replace(some, left=np.where(use, some.left, some.right))
-    fine = integrate_panels(integrand.density(), some, integrand.scales(), integrand.rows.count)
+    fine = integrate_panels(integrand.density(), some, integrand.scales(), integrand.count)
     result.value[:, chosen] = np.where(use, fine.value, result.value[:, chosen])
     result.error[:, chosen] = np.where(use, fine.error, result.error[:, chosen])
     return PanelIntegrals(result.value, result.error, result.counts + fine.counts, fine.worst)
@@ -104,22 +115,22 @@ def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
     return own.values(observable, None, ends)
 
 
-def _collected(integrals: PanelIntegrals, partition: Partition, setting: Setting, layout: Layout, rows: Rows) -> Answer:
+def _collected(integrals: PanelIntegrals, partition: Partition, integrand: Integrand, layout: Layout) -> Answer:
     """Add the panels up into components; an edge of a histogram that is grazed says nothing about the uncut total."""
-    panels, answer = partition.panels, Answer.empty(rows.count, layout.components)
+    panels, answer = partition.panels, Answer.empty(integrand.count, layout.components)
     heights = _boundary_heights(integrals, panels)
     for number, component in enumerate(partition.components):
         add_panels(answer.value, component, integrals.value)
         add_panels(answer.error, component, integrals.error)
         if heights is not None:
             whole = np.broadcast_to(component, (component.shape[0], panels.side.size))
-            grazed = panels.graze if number > 0 or setting.cuts else 0.0
+            grazed = panels.graze if number > 0 or integrand.setting.cuts else 0.0
             slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, grazed) * heights
             add_panels(answer.error, whole[:, 1:], slack)
             add_panels(answer.error, whole[:, :-1], slack)
-    undefined = np.broadcast_to(partition.undefined, (rows.count,))
+    undefined = np.broadcast_to(partition.undefined, (integrand.count,))
     counts = np.column_stack([integrals.counts, undefined])
-    return Answer(answer.value, answer.error, counts, _worst(integrals, rows))
+    return Answer(answer.value, answer.error, counts, _worst(integrals, integrand))
 
 
 def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:
@@ -132,13 +143,14 @@ def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None
     return np.maximum(mean[:, 1:], mean[:, :-1])
 
 
-def _worst(integrals: PanelIntegrals, rows: Rows) -> tuple[WorstPoint, ...]:
-    """The momenta of the first point that was not finite or negative."""
-    if integrals.worst is None:
+def _worst(integrals: PanelIntegrals, integrand: Integrand) -> tuple[WorstPoint, ...]:
+    """The first point at which the law was not finite, or negative where it must not be."""
+    if integrals.worst is None or not integrals.counts[:, [NON_FINITE, NEGATIVE]].any():
         return ()
+    rows = integrand.rows
     row, one_minus, one_plus, value = integrals.worst
     ends = Ends(np.array([[one_minus]]), np.array([[one_plus]]))
-    event = rows.event(np.array([row]), ends)
+    event = rows.event(np.array([row % rows.count]), ends)
     legs = (-1, -2, *range(1, len(rows.reaction.outgoing) + 1))
     momenta = tuple(tuple(float(c) for c in event.vector(code, CM).components().reshape(4)) for code in legs)
     return (WorstPoint(value=value, momenta=momenta),)

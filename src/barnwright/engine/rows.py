@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from barnwright.engine.edges import is_polar, polar_values
 from barnwright.engine.setting import Masses
-from barnwright.event import Event
+from barnwright.event import Event, Point
 from barnwright.integrate.polar_axis import Ends, Integers
 from barnwright.kinematics import Collision, TwoBody
 from barnwright.observables import Observable
@@ -26,6 +26,11 @@ class Rows:
     collision: Collision
     masses: Masses
     azimuth: Array
+
+    @classmethod
+    def of(cls, reaction: Reaction, collision: Collision, masses: Masses) -> Rows:
+        """The rows of a collision at azimuth 0."""
+        return cls(reaction, collision, masses, np.zeros((1, 1)))
 
     @property
     def count(self) -> int:
@@ -46,6 +51,14 @@ class Rows:
             collision = self._reshaped(flat, shape)
             azimuth = azimuth.ravel() if azimuth.size == 1 else azimuth[flat, 0].reshape(shape)
         return Event(self.reaction, TwoBody(collision, self.masses, ends.one_minus, ends.one_plus, azimuth))
+
+    def point(self, row: Integers | None, ends: Ends) -> Point:
+        """What an angular law sees beside the angle; parameters as for `event`."""
+        collision = self.collision
+        if row is not None:
+            chosen = row if row.ndim == ends.one_plus.ndim else row[:, None]
+            collision = self._reshaped(chosen.ravel(), chosen.shape)
+        return Point.of(self.reaction, collision, self.masses)
 
     def two_body(self, ends: Ends) -> TwoBody:
         """The bare kinematics of all rows at locations of shape (row or 1, node)."""

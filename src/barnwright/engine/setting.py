@@ -8,8 +8,11 @@ from typing import Literal
 
 from barnwright.beams import BeamSettings
 from barnwright.observables import Cut, Observable, angle_in_degrees
+from barnwright.process import Parts
 
-Masses = tuple[float, float, float, float]
+Masses = tuple[float, ...]
+"""GeV, of beam a, beam b and the outgoing legs; of the beams alone where the final state is X."""
+WHOLE: tuple[tuple[str, Parts | None], ...] = (("", None),)
 ParameterValue = float | int | bool | str
 
 
@@ -77,7 +80,7 @@ class Layout:
 
 @dataclass(frozen=True, slots=True)
 class Setting:
-    """One entry of the variation axis.
+    """The request as it stands, or one of its variations.
 
     Attributes
     ----------
@@ -85,7 +88,7 @@ class Setting:
         "" for the request as it stands, else the variation's name.
     beams : BeamSettings
         With one entry a point.
-    masses : four floats, GeV
+    masses : floats, GeV
         Of beam a, beam b, leg 1, leg 2.
     parameters : pairs of name and value
     cuts : tuple of Cut
@@ -93,6 +96,8 @@ class Setting:
     closed_form, law : int or None
         Which of the process's closed forms and laws answer.
     peaks : pairs of "t" or "u" and a mass in GeV
+    parts : pairs of a name and the parts of the law
+        One entry each on the variation axis: all that were asked for, "", then every contribution that is reported.
     """
 
     name: str
@@ -104,3 +109,4 @@ class Setting:
     closed_form: int | None
     law: int | None
     peaks: tuple[tuple[str, float], ...] = ()
+    parts: tuple[tuple[str, Parts | None], ...] = WHOLE
