@@ -9,7 +9,7 @@ from typing import Any, overload
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.documents import Prediction, Request, plain_axes
+from barnwright.documents import Prediction, Request, Scanned, plain_axes
 from barnwright.engine import Answers
 from barnwright.process import Process
 from barnwright.run.local import answers
@@ -17,8 +17,8 @@ from barnwright.run.local import answers
 Array = NDArray[np.float64]
 
 
-@dataclass(frozen=True, slots=True)
-class Sweep(Sequence[Prediction]):
+@dataclass(frozen=True)
+class Sweep(Scanned):
     """The answers of a scan.
 
     Attributes
@@ -31,14 +31,9 @@ class Sweep(Sequence[Prediction]):
     answers: Answers
 
     @property
-    def shape(self) -> tuple[int, ...]:
-        """How many values each key has."""
-        return tuple(len(values) for values in self.over.values())
-
-    @property
     def unit(self) -> str:
         """The unit of the totals."""
-        return self.answers.plan.groups[0].request.unit
+        return self.answers.plan.request.unit
 
     @property
     def values(self) -> Array:
@@ -51,19 +46,9 @@ class Sweep(Sequence[Prediction]):
         return self.answers.error[:, 0, 0].reshape(self.shape)
 
     @property
-    def points(self) -> tuple[dict[str, Any], ...]:
-        """The values of the scanned keys at every point, in the order of the predictions."""
-        grids = np.unravel_index(np.arange(len(self)), self.shape)
-        keys = list(self.over)
-        return tuple({key: self.over[key][int(grids[k][i])] for k, key in enumerate(keys)} for i in range(len(self)))
-
-    @property
     def status(self) -> str:
         """The status that all points share."""
         return self.answers.status
-
-    def __len__(self) -> int:
-        return int(np.prod(self.shape))
 
     @overload
     def __getitem__(self, index: int) -> Prediction: ...

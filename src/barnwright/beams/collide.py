@@ -27,7 +27,7 @@ def kinetic_from_momentum(momentum: float, mass: float) -> float:
     return momentum * momentum / (energy + mass) if momentum else 0.0
 
 
-def collide(beams: BeamSettings, masses: tuple[float, float]) -> Collision:
+def collide(beams: BeamSettings, masses: tuple[float, ...]) -> Collision:
     """The collision at every point, arrays of shape (point, 1).
 
     Parameters

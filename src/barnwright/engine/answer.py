@@ -39,8 +39,8 @@ class Answer:
     def joined(parts: Sequence[Answer]) -> Answer:
         """The rows of several answers, one after another."""
         worst = next((part.worst for part in parts if part.worst), ())
-        arrays = (np.concatenate([getattr(part, name) for part in parts]) for name in ("value", "error", "counts"))
-        return Answer(*arrays, worst)
+        value, error, counts = zip(*((part.value, part.error, part.counts) for part in parts), strict=True)
+        return Answer(np.concatenate(value), np.concatenate(error), np.concatenate(counts), worst)
 
     def copy(self) -> Answer:
         """An answer with arrays of its own."""

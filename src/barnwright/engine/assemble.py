@@ -5,7 +5,7 @@ Everything that the points of a group share is made once; a point of a scan cost
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from functools import cached_property
 from typing import Any, Literal
@@ -13,12 +13,14 @@ from typing import Any, Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.beams import collide
-from barnwright.documents import ByName, Diagnostics, Histogram, Part, Prediction, Request, Run, Total
+from barnwright.documents import ByName, Diagnostics, Part, Prediction, Request, Run
 from barnwright.documents import Note as NoteDocument
-from barnwright.engine.derived import between_variations, point_asymmetries
-from barnwright.engine.histograms import HistogramForm, histogram_form
+from barnwright.engine.derived import between_variations
+from barnwright.engine.faults import faults
+from barnwright.engine.form import Form
+from barnwright.engine.numbers import Numbers
 from barnwright.engine.plan import Group, Plan
+from barnwright.engine.resolve.scan import beam_field
 from barnwright.integrate.panel_integrals import COUNTED, NON_FINITE
 from barnwright.integrate.settled import Settled
 from barnwright.units import from_natural
@@ -41,20 +43,33 @@ class Answers:
 
     Attributes
     ----------
-    value, error : arrays, shape (point, variation, component), in the request's unit
-        In the order of the scan.
-    counts : array, shape (point, 4)
-        What `COUNTED` names, of all variations of a point together.
+    numbers : Numbers
+        In the request's unit, of all members together.
+    by_member : tuple of Numbers
     """
 
     plan: Plan
-    value: Array
-    error: Array
-    counts: Array
+    numbers: Numbers
+    by_member: tuple[Numbers, ...]
     settled: Settled
     verdict: Status
     origin: Origin
     run: Run
+
+    @property
+    def value(self) -> Array:
+        """Contents in the request's unit, shape (point, variation, component), in the order of the scan."""
+        return self.numbers.value
+
+    @property
+    def error(self) -> Array:
+        """Their error bounds."""
+        return self.numbers.error
+
+    @property
+    def counts(self) -> Array:
+        """What `COUNTS` names, of all entries of the variation axis of a point together; shape (point, 5)."""
+        return self.numbers.counts
 
     @property
     def status(self) -> Status:
@@ -96,16 +111,19 @@ def assemble(plan: Plan, settled: Settled, status: Status, origin: Origin, run: 
     Parameters
     ----------
     settled : Settled
-        Sums in GeV⁻², shape (moment, point, variation, component), points in the order of the groups.
+        Sums in GeV⁻², shape (moment, point, variation, component), points in the order of the groups; a stratum for
+        each member.
     """
-    sums = settled.of(0, 0)
-    components = plan.layout.components
+    components = plan.components
     order = np.argsort(np.concatenate([np.array(group.points, dtype=np.intp) for group in plan.groups]))
-    factor = from_natural(plan.groups[0].request.unit)
-    with np.errstate(over="ignore", invalid="ignore"):
-        value, error = (sums.added[k, ..., :components][order] * factor for k in (0, 1))
-    counts = sums.added[0, ..., components:][order].sum(axis=1)
-    return Answers(plan, value, error, counts, settled, status, origin, run)
+    factor = from_natural(plan.request.unit)
+    numbers = []
+    for member in range(len(plan.members)):
+        added = settled.of(member, 0).added
+        with np.errstate(over="ignore", invalid="ignore"):
+            value, error = (added[k, ..., :components][order] * factor for k in (0, 1))
+        numbers.append(Numbers(value, error, added[0, ..., components:][order].sum(axis=1)))
+    return Answers(plan, Numbers.summed(numbers), tuple(numbers), settled, status, origin, run)
 
 
 class _Shared:
@@ -114,59 +132,62 @@ class _Shared:
     def __init__(self, plan: Plan, group: Group, origin: Origin) -> None:
         self.plan, self.group = plan, group
         self.unit = group.request.unit
-        self.forms: list[HistogramForm] = [histogram_form(h, self.unit) for h in plan.layout.histograms]
-        self.notes = tuple(NoteDocument.build(code=n.code, text=n.text) for n in group.notes)
-        nominal = group.settings[0]
-        self.collision = collide(nominal.beams, nominal.masses[:2])
+        self.members = tuple(
+            Form(member, share, self.unit) for member, share in zip(plan.members, group.shares, strict=True)
+        )
+        self.notes = tuple(dict.fromkeys(note for form in self.members for note in form.notes(len(plan.members) > 1)))
         self.fields: dict[str, Any] = {
-            "method": nominal.rule,
-            **plan.provided,
-            "parameters": dict(nominal.parameters),
-            "masses": plan.masses_by_name(nominal),
-            "sources": plan.sources(group),
-            "versions": {**origin.versions, **plan.plugin_version},
-            "source_digests": {plan.source.name: plan.source.digest},
+            "method": _common_method(group),
+            **_provided(plan),
+            "parameters": _agreed(form.parameters for form in self.members),
+            "masses": _agreed(form.masses for form in self.members),
+            "sources": _agreed(plan.sources(group, number) for number in range(len(plan.members))),
+            "versions": {**origin.versions, **{k: v for m in plan.members for k, v in m.plugin_version.items()}},
+            "source_digests": {member.source.name: member.source.digest for member in plan.members},
             "environment": origin.environment,
         }
 
-    def _diagnostics(self, answers: Answers, point: int) -> Diagnostics:
-        counted = {name: int(count) for name, count in zip(COUNTED, answers.counts[point], strict=False)}
-        return Diagnostics.build(rounds=answers.settled.number + 1, **counted)
-
     def prediction(self, answers: Answers, point: int, place: int) -> Prediction:
         """The prediction of one point."""
-        value, error = answers.value[point], answers.error[point]
-        parts = [self._results(value[v], error[v]) for v in range(value.shape[0])]
-        notes = self.notes + self._notes_of_point(value, place) + _faults(answers, point)
-        named = [
-            Part.build(
-                name=setting.name,
-                parameters=dict(setting.parameters),
-                masses=self.plan.masses_by_name(setting),
-                **part,
-            )
-            for setting, part in zip(self.group.settings[1:], parts[1:], strict=True)
-        ]
+        numbers, first = answers.numbers, self.members[0]
+        whole = first.results(numbers, point, 0)
+        variations = ByName(first.variations(numbers, point))
         request = self._request(place)
-        derived = between_variations(request.derived, ByName(named), parts[0]["derived"])
+        derived = between_variations(request.derived, variations, whole["derived"])
         return Prediction.build(
             request=request,
             status=answers.status_of(point),
-            diagnostics=self._diagnostics(answers, point),
-            notes=notes,
-            variations=ByName(named),
+            diagnostics=_diagnostics(answers, point),
+            notes=self.notes + self._notes_of_point(answers, point, place) + faults(answers, point),
+            contributions=ByName(first.contributions(numbers, point)),
+            processes=ByName(self._processes(answers, point)),
+            variations=variations,
             run=answers.run,
-            **{**parts[0], "derived": derived},
+            **{**whole, "derived": derived},
             **self.fields,
         )
+
+    def _processes(self, answers: Answers, point: int) -> list[Part]:
+        """Each member of a sum by itself; nothing where there is one."""
+        if len(self.members) == 1:
+            return []
+        return [
+            Part.build(
+                name=form.member.source.name,
+                parameters=form.parameters,
+                masses=form.masses,
+                **form.results(own, point, 0),
+            )
+            for form, own in zip(self.members, answers.by_member, strict=True)
+        ]
 
     def _request(self, place: int) -> Request:
         """The group's request with this point's beam energies."""
         request = self.group.request
         changes: dict[str, Any] = {}
         for key, column in self.group.columns.items():
-            field, _, name = key.removeprefix("beams.").partition(".")
-            if not key.startswith("beams."):
+            field, _, name = (beam_field(key) or "").partition(".")
+            if not field:
                 continue
             if name:
                 table = changes.get(field, getattr(request.beams, field))
@@ -177,79 +198,36 @@ class _Shared:
             return request
         return request.model_copy(update={"beams": request.beams.model_copy(update=changes)})
 
-    def _results(self, value: Array, error: Array) -> dict[str, Any]:
-        """Total, histograms and asymmetries of one variation."""
-        layout = self.plan.layout
-        histograms: Sequence[Histogram] = [
-            form.histogram(value[part], error[part])
-            for form, part in ((f, layout.histogram_slice(k)) for k, f in enumerate(self.forms))
-        ]
-        return {
-            "total": _total(float(value[0]), float(error[0]), self.unit),
-            "histograms": ByName(histograms),
-            "derived": ByName(point_asymmetries(layout, value, error)),
-        }
-
-    def _notes_of_point(self, value: Array, place: int) -> tuple[NoteDocument, ...]:
-        setting = self.group.settings[0]
-        collision = self.collision.take(slice(place, place + 1))
-        threshold = sum(setting.masses[2:])
-        found = []
-        if self.plan.valid is not None and not self.plan.valid.low <= collision.sqrt_s[0, 0] <= self.plan.valid.high:
-            low, high, why = self.plan.valid.low, self.plan.valid.high, self.plan.valid.text
-            text = f"√s lies outside {low:g} to {high:g} GeV, where {self.plan.name} is valid: {why}"
-            found.append(NoteDocument.build(code="outside_validity", text=text))
-        if not collision.above(threshold)[0, 0] > 0:
-            text = f"√s is not above {threshold:.10g} GeV, the threshold of the final state, so σ = 0"
-            found.append(NoteDocument.build(code="below_threshold", text=text))
-        elif value[0, 0] == 0.0:
-            names = ", ".join(cut.name for cut in setting.cuts)
-            code = "cuts_exclude_everything" if names else "law_is_zero"
-            text = f"no event can pass the cuts ({names})" if names else "the law was 0 at every point that was asked"
-            found.append(NoteDocument.build(code=code, text=f"{text}, so σ = 0"))
+    def _notes_of_point(self, answers: Answers, point: int, place: int) -> tuple[NoteDocument, ...]:
+        found: dict[NoteDocument, None] = {}
+        for form, own in zip(self.members, answers.by_member, strict=True):
+            found.update(dict.fromkeys(form.notes_of_point(own, point, place)))
         return tuple(found)
 
 
-def _total(value: float, error: float, unit: str) -> Total:
-    if not (np.isfinite(value) and np.isfinite(error)):
-        return Total.build(value=None, error=None, unit=unit, error_kind="numerical_bound")
-    return Total.build(value=value, error=error, unit=unit, error_kind="numerical_bound")
+def _common_method(group: Group) -> str:
+    rules = {share.settings[0].rule for share in group.shares}
+    return "closed_form" if rules == {"closed_form"} else "quadrature"
 
 
-def _faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
-    """Notes on points that were not finite or negative, and on panels that did not settle."""
-    _, non_finite, negative, unresolved, undefined = (int(count) for count in answers.counts[point])
-    alone = len(answers.counts) == 1 and answers.settled.worst
-    where = f"; the first of them: {_momenta(answers.settled)}" if alone else ""
-    found = []
-    if non_finite:
-        text = f"the law was not finite at {non_finite} points{where}"
-        found.append(NoteDocument.build(code="non_finite", text=text))
-    if negative:
-        text = f"the law was negative at {negative} points{where}"
-        found.append(NoteDocument.build(code="negative", text=text))
-    if not np.isfinite(answers.value[point]).all() and not non_finite:
-        text = "the result is too large for floating-point numbers in this unit"
-        found.append(NoteDocument.build(code="overflow", text=text))
-    if undefined:
-        text = "an observable is not a number for some events, and where that begins is no edge of the quadrature"
-        found.append(NoteDocument.build(code="undefined_observable", text=text))
-    if answers.status_of(point) == "evaluation_limit":
-        text = (
-            "the error is larger than what was asked for: a cut or an asymmetry lies within rounding of an extremum "
-            "of its observable, where √ε is all that can be had; move it away"
-        )
-        found.append(NoteDocument.build(code="accuracy_not_reached", text=text))
-    if unresolved:
-        text = (
-            f"{unresolved} panels of the polar angle did not settle: the law diverges, or has more structure "
-            "than quadrature resolves; a cut that keeps away from cos_theta = 1 and -1 in the cm may close it"
-        )
-        found.append(NoteDocument.build(code="not_settled", text=text))
-    return tuple(found)
+def _provided(plan: Plan) -> dict[str, Any]:
+    """What a prediction repeats of its processes."""
+    orders = dict.fromkeys(member.provided["order"] for member in plan.members)
+    schemes = dict.fromkeys(dict(share.settings[0].parameters).get("scheme") for share in plan.groups[0].shares)
+    scheme = next(iter(schemes)) if len(schemes) == 1 else None
+    return {"order": ", ".join(orders), "scheme": scheme, "constants": plan.members[0].provided["constants"]}
 
 
-def _momenta(settled: Settled) -> str:
-    point = settled.worst[0]
-    legs = "; ".join("(" + ", ".join(f"{c:.6g}" for c in leg) + ")" for leg in point.momenta)
-    return f"{point.value:g} at momenta (E, px, py, pz) {legs} GeV in the cm"
+def _agreed(tables: Iterable[Mapping[str, Any]]) -> dict[str, Any]:
+    """All entries of some tables but those in which they differ."""
+    found: dict[str, Any] = {}
+    differ: set[str] = set()
+    for table in tables:
+        differ.update(name for name, value in table.items() if name in found and found[name] != value)
+        found.update(table)
+    return {name: value for name, value in found.items() if name not in differ}
+
+
+def _diagnostics(answers: Answers, point: int) -> Diagnostics:
+    counted = {name: int(count) for name, count in zip(COUNTED, answers.counts[point], strict=False)}
+    return Diagnostics.build(rounds=answers.settled.number + 1, **counted)

@@ -182,6 +182,11 @@ class Plan:
         """What messages call it, as ``qed/compton``."""
         return " + ".join(member.source.name for member in self.members)
 
+    @property
+    def distribution(self) -> str:
+        """The plugins whose code it runs."""
+        return ", ".join(dict.fromkeys(member.source.distribution for member in self.members))
+
     @cached_property
     def rule(self) -> Rule:
         """How sums become values and errors: closed forms and quadrature both state bounds."""

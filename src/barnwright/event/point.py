@@ -22,7 +22,7 @@ class Point:
     ----------
     s, sqrt_s : arrays, GeV² and GeV
     momentum, final_momentum : arrays, GeV
-        In the cm, of the incoming and of the outgoing particles.
+        In the cm, of the incoming and of the two outgoing particles (0 where the final state is X).
     """
 
     reaction: Reaction
@@ -30,19 +30,14 @@ class Point:
     sqrt_s: Array
     momentum: Array
     final_momentum: Array
-    masses: tuple[float, float, float, float]
+    masses: tuple[float, ...]
 
     @classmethod
-    def of(cls, reaction: Reaction, collision: Collision, masses: tuple[float, float, float, float]) -> Point:
-        """The point of a 2 → 2 collision; masses in GeV of beam a, beam b, leg 1, leg 2."""
-        return cls(
-            reaction,
-            collision.s,
-            collision.sqrt_s,
-            collision.momentum(*masses[:2]),
-            collision.momentum(*masses[2:]),
-            masses,
-        )
+    def of(cls, reaction: Reaction, collision: Collision, masses: tuple[float, ...]) -> Point:
+        """The point of a 2 → 2 or 2 → X collision; masses in GeV of beam a, beam b, and leg 1, leg 2 or nothing."""
+        before = collision.momentum(masses[0], masses[1])
+        after = collision.momentum(masses[2], masses[3]) if len(masses) > 2 else np.zeros_like(before)
+        return cls(reaction, collision.s, collision.sqrt_s, before, after, masses)
 
     def mass(self, leg: LegKey) -> float:
         """The resolved mass of a leg in GeV.

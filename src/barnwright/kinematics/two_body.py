@@ -42,7 +42,7 @@ class TwoBody:
     def __init__(
         self,
         collision: Collision,
-        masses: tuple[float, float, float, float],
+        masses: tuple[float, ...],
         one_minus_cos: Array,
         one_plus_cos: Array,
         azimuth: Array | float = 0.0,
@@ -136,7 +136,7 @@ class TwoBody:
     @cached_property
     def _momentum_difference(self) -> Array:
         m = self._masses
-        sums = m[-1] ** 2 + m[-2] ** 2 - m[1] ** 2 - m[2] ** 2
+        sums = (m[-1] - m[1]) * (m[-1] + m[1]) + (m[-2] - m[2]) * (m[-2] + m[2])  # exactly 0 where it is elastic
         before, after = (m[-1] - m[-2]) * (m[-1] + m[-2]), (m[1] - m[2]) * (m[1] + m[2])
         squares = -0.5 * sums + (before - after) * (before + after) / (4 * self.s)
         total = self.incoming_momentum + self.outgoing_momentum

@@ -12,7 +12,7 @@ Array = NDArray[np.float64]
 SMALLEST_SCALE = 1e-30
 
 
-def two_body_density(collision: Collision, masses: tuple[float, float]) -> Array:
+def two_body_density(collision: Collision, masses: tuple[float, ...]) -> Array:
     """dΦ₂/dcos θ = p'/(8π √s), the azimuth integrated over; dimensionless, shape (point, 1).
 
     Source: PDG Review, Kinematics, two-body phase space (dΦ₂ = p dΩ/(16π² √s), with (2π)⁴δ⁴ included), from memory.

@@ -2,9 +2,9 @@
 
 from .claims import Claims
 from .closed_form import ClosedForm
-from .declaration import DeclarationError
 from .contributions import Parts, is_interference
 from .cross_sections import AngularCrossSection, TotalCrossSection
+from .declaration import DeclarationError
 from .helicity_amplitudes import HelicityAmplitudes
 from .laws import Expression, Law, MomentaLaw, SquaredAmplitude
 from .parameters import ParameterFacts, Parameters, ParameterValue, facts_of, parameter, parameters_model

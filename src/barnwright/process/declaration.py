@@ -40,6 +40,7 @@ _TUPLES: dict[str, tuple[tuple[type[Any], ...], str]] = {
     "singular": ((str,), "text"),
     "derived": ((Mapping,), "tables"),
 }
+_NUMBERS = (int, float, complex)
 _OTHERS: dict[str, tuple[tuple[type[Any], ...], str]] = {
     "valid": ((Validity, type(None)), "Validity(...) or None"),
     "claims": ((Claims, type(None)), "Claims(...) or None"),
@@ -97,16 +98,42 @@ def _types(process: Process) -> Iterator[Violation]:
         if not isinstance(getattr(process, name), kinds):
             yield Violation(name, show(getattr(process, name)), what)
     if isinstance(process.laws, tuple) and isinstance(process.closed_forms, tuple):
-        yield from _massless_types(process)
+        yield from _law_types(process)
+    yield from _table_types(process)
     yield from _parameter_types(process.parameters)
 
 
-def _massless_types(process: Process) -> Iterator[Violation]:
+def _law_types(process: Process) -> Iterator[Violation]:
     for field in ("laws", "closed_forms"):
         for index, law in enumerate(getattr(process, field)):
             massless = getattr(law, "massless", ())
             if not isinstance(massless, tuple):
                 yield Violation(f"{field}[{index}].massless", show(massless), "a tuple of legs")
+            if isinstance(law, HelicityAmplitudes):
+                yield from _helicity_types(f"{field}[{index}]", law)
+
+
+def _helicity_types(field: str, law: HelicityAmplitudes) -> Iterator[Violation]:
+    """Tuples of tuples, of whole numbers and of numbers: whatever else comes of them is looked at later."""
+    helicities = () if law.helicities is None else law.helicities
+    tables = (("helicities", helicities, (int,), "whole numbers"), ("colour", law.colour, _NUMBERS, "numbers"))
+    for name, table, kinds, what in tables:
+        rows = table if isinstance(table, tuple) else (None,)
+        if not all(isinstance(row, tuple) and all(isinstance(entry, kinds) for entry in row) for row in rows):
+            yield Violation(f"{field}.{name}", show(table), f"a tuple of tuples of {what}")
+
+
+def _table_types(process: Process) -> Iterator[Violation]:
+    """Contributions are texts by name, a claimed exchange is a pair."""
+    if isinstance(process.contributions, Mapping):
+        for name, keyword in process.contributions.items():
+            if not (isinstance(name, str) and name and isinstance(keyword, str)):
+                yield Violation(f"contributions.{name}", show(keyword), "a keyword, as text, by a name")
+    if isinstance(process.claims, Claims):
+        for pair in process.claims.exchange:
+            if not (isinstance(pair, tuple) and len(pair) == 2):
+                yield Violation("claims.exchange", show(process.claims.exchange), "a tuple of pairs of legs")
+                return
 
 
 def _parameter_types(model: Any) -> Iterator[Violation]:

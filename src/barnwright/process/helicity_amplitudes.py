@@ -90,10 +90,9 @@ class HelicityAmplitudes:
     def _amplitudes(self, event: Event, parameters: Parameters, key: str | None, weights: Array) -> Complex:
         """The rows with a weight, once for each event and set of diagrams."""
         wanted = np.nonzero(weights)[0]
-        return event.once(
-            (self.amplitudes, parameters, key, wanted.tobytes()),
-            lambda: self._asked(event, parameters, key, wanted),
-        )
+        name = (self.amplitudes, parameters, key, wanted.tobytes())
+        found: Complex = event.once(name, lambda: self._asked(event, parameters, key, wanted))
+        return found
 
     def _asked(self, event: Event, parameters: Parameters, key: str | None, wanted: NDArray[np.intp]) -> Complex:
         rows = self.combinations(event.reaction)

@@ -29,11 +29,13 @@ def codes_of(reaction: Reaction, leg: str | int) -> tuple[int, ...]:
 def leg_choices(reaction: Reaction) -> tuple[str, ...]:
     """Every word that names legs of the reaction: its particles, then the beams."""
     beams = tuple(name for name, code in BEAMS.items() if code in _names(reaction))
-    return (*dict.fromkeys((*reaction.incoming, *reaction.outgoing)), *beams)
+    return (*dict.fromkeys(_names(reaction).values()), *beams)
 
 
 def _names(reaction: Reaction) -> dict[int, str]:
-    return {**{-1 - i: p for i, p in enumerate(reaction.incoming)}, **dict(enumerate(reaction.outgoing, 1))}
+    """The particles by code; a final state X has none."""
+    outgoing = () if reaction.inclusive else reaction.outgoing
+    return {**{-1 - i: p for i, p in enumerate(reaction.incoming)}, **dict(enumerate(outgoing, 1))}
 
 
 def _species(leg: str | int) -> set[str]:

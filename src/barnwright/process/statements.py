@@ -4,23 +4,24 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator
 from typing import TYPE_CHECKING
-
-from pydantic import ValidationError
 
 from barnwright.errors import Violation, nearest, show
 from barnwright.formula import FormulaError
 from barnwright.observables import ObservableError
 from barnwright.process.claims import Claims
+from barnwright.process.law_statements import law_findings
 from barnwright.process.laws import Expression
-from barnwright.process.parameters import ParameterValue, facts_of
+from barnwright.process.parameter_statements import parameter_findings
+from barnwright.process.parameters import facts_of
 from barnwright.process.species import codes_of, leg_choices
 from barnwright.reaction import LegError, Reaction
 
 if TYPE_CHECKING:
     from barnwright.process.process import Process
 
+_FULL_NAME = re.compile(r"[a-z0-9]+(-[a-z0-9]+)*/[a-z0-9]+(-[a-z0-9]+)*")
 _SINGULAR = re.compile(r"[tu]|soft\((?P<soft>[^,]+)\)|collinear\((?P<first>[^,]+),(?P<second>[^,]+)\)")
 
 
@@ -29,6 +30,7 @@ def statement_findings(process: Process, reaction: Reaction) -> Iterator[Violati
     if not (process.laws or process.closed_forms):
         yield Violation("laws", "none", "at least one law or closed form")
     yield from _validity(process)
+    yield from law_findings(process, reaction)
     yield from _expressions(process, reaction)
     yield from _closed_forms(process, reaction)
     yield from _massless(process, reaction)
@@ -37,7 +39,7 @@ def statement_findings(process: Process, reaction: Reaction) -> Iterator[Violati
     yield from _singular(process, reaction)
     if process.claims is not None:
         yield from _claims(process.claims, reaction)
-    yield from _parameter_sets(process)
+    yield from parameter_findings(process)
 
 
 def _validity(process: Process) -> Iterator[Violation]:
@@ -90,7 +92,9 @@ def _peaks(process: Process, reaction: Reaction) -> Iterator[Violation]:
 
 
 def _singular(process: Process, reaction: Reaction) -> Iterator[Violation]:
-    for index, entry in enumerate(process.singular):
+    if reaction.inclusive and process.singular:
+        yield Violation("singular", show(process.singular), "nothing, since no cut can be made on a final state X")
+    for index, entry in enumerate(process.singular if not reaction.inclusive else ()):
         match = _SINGULAR.fullmatch(entry)
         if match is None:
             yield Violation(f"singular[{index}]", show(entry), "t, u, soft(leg) or collinear(leg, leg)")
@@ -100,6 +104,12 @@ def _singular(process: Process, reaction: Reaction) -> Iterator[Violation]:
 
 
 def _claims(claims: Claims, reaction: Reaction) -> Iterator[Violation]:
+    for pair in claims.exchange:
+        if len(set(pair)) != 2:
+            yield Violation("claims.exchange", show(pair), "two different legs")
+    for name in claims.crossing:
+        if not _FULL_NAME.fullmatch(name):
+            yield Violation("claims.crossing", show(name), "the name of a process, plugin/name")
     named = [("claims.exchange", leg) for pair in claims.exchange for leg in pair]
     named += [("claims.gauge_legs", leg) for leg in claims.gauge_legs]
     for field, leg in named:
@@ -126,23 +136,3 @@ def _size(field: str, size: float | str, process: Process) -> Iterator[Violation
             yield Violation(field, show(size), expected, nearest(size, floats))
     elif not (math.isfinite(size) and size >= 0):
         yield Violation(field, show(size), "a finite number of at least 0 (GeV), or the name of a parameter")
-
-
-def _parameter_sets(process: Process) -> Iterator[Violation]:
-    """Sets of values that the process hands out itself; where it gives no example, the defaults must do."""
-    yield from _unfit("example", process.example, process)
-    for name, values in process.alternatives.items():
-        yield from _unfit(f"alternatives.{name}", {**process.example, **values}, process)
-
-
-def _unfit(field: str, values: Mapping[str, ParameterValue], process: Process) -> Iterator[Violation]:
-    try:
-        process.parameters_of(values)
-    except ValidationError as error:
-        for details in error.errors(include_url=False):
-            name = ".".join(map(str, details["loc"]))
-            if details["type"] == "missing":
-                yield Violation(f"{field}.{name}", "nothing", "a value, since this parameter has no default")
-            else:
-                expected = f"a value of this parameter ({details['msg']})"
-                yield Violation(f"{field}.{name}", show(details["input"]), expected)

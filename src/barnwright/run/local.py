@@ -43,18 +43,22 @@ def answers(
     started = time.perf_counter()
     lookup = catalogue().load if process is None else (lambda _: loaded_object(process))
     plan = resolve(request, lookup, over)
-    return calculated(plan, process if process is not None else process_of(plan.source), request, started)
+    return calculated(plan, process, started)
 
 
-def calculated(plan: Plan, process: Process, request: Request, started: float) -> Answers:
-    """Drive a plan inline; ``started`` is when its clock began, from `time.perf_counter`."""
+def calculated(plan: Plan, process: Process | None, started: float) -> Answers:
+    """Drive a plan inline; ``started`` is when its clock began, from `time.perf_counter`.
+
+    Without a process object, the plan's processes are found by their identities.
+    """
     stage = plan.stage()
+    processes = [process or process_of(member.source) for member in plan.members]
 
     def work(block: Block, frozen: Frozen) -> Tally:
         del frozen
-        return evaluate(block, stage, process)
+        return evaluate(block, stage, processes[block.stratum])
 
-    verdict = drive(plan, Ledger(plan.digest), work, Pace(time.perf_counter, request.accuracy.max_seconds))
+    verdict = drive(plan, Ledger(plan.digest), work, Pace(time.perf_counter, plan.request.accuracy.max_seconds))
     return assemble(plan, verdict.settled, verdict.status, origin(), run_record(started, "inline"))
 
 

@@ -44,7 +44,7 @@ def evaluate_task(block: Block, stage: Stage) -> Tally:
     PluginError
         When the process here is not the one that the plan was made with, or misbehaves.
     """
-    return evaluate(block, stage, process_of(stage.plan.source))
+    return evaluate(block, stage, process_of(stage.plan.members[block.stratum].source))
 
 
 def process_of(source: ProcessSource) -> Process:

@@ -95,7 +95,7 @@ CALLS: Mapping[str, Call] = {
 def _answers(plan: Plan, started: float) -> Generator[Step, Any, Answers]:
     """Calculate and assemble; ``started`` is when the call's clock began."""
     ledger, stage = Ledger(plan.digest), plan.stage()
-    pace = Pace(perf_counter, plan.groups[0].request.accuracy.max_seconds)
+    pace = Pace(perf_counter, plan.request.accuracy.max_seconds)
     calculation = calculate(plan, ledger)
     while True:
         try:

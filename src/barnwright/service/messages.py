@@ -29,9 +29,9 @@ def scan_message(answers: Answers, first: int, stop: int) -> bytes:
 
 def validation_message(plan: Plan) -> bytes:
     """What a request means and costs."""
-    components = plan.layout.components * len(plan.groups[0].settings)
+    components = plan.components * plan.entries
     cost = {"points": plan.points, "components": components, "blocks": len(plan.round((), 0))}
-    answer: dict[str, Any] = {"request": plan.groups[0].request.canonical(), "cost": cost}
+    answer: dict[str, Any] = {"request": plan.request.canonical(), "cost": cost}
     return encode(answer, wire.ValidateRequestResponse).SerializeToString()
 
 

@@ -23,7 +23,7 @@ Code = tuple[str, str]
 
 def code_of(step: Light | Blocks) -> Code:
     """The code that the tasks of a step run."""
-    return (step.task, step.process) if isinstance(step, Light) else ("tally", step.stage.plan.source.name)
+    return (step.task, step.process) if isinstance(step, Light) else ("tally", step.stage.plan.name)
 
 
 @dataclass(slots=True, eq=False)
@@ -54,7 +54,7 @@ class Task:
     def plugin(self) -> str:
         """The distribution that offers the process; before it is known, the plugin's name."""
         if isinstance(self.step, Blocks):
-            return self.step.stage.plan.source.distribution
+            return self.step.stage.plan.distribution
         return self.resolved.plugin if self.resolved else self.process.partition("/")[0]
 
     @property

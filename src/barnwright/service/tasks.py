@@ -63,9 +63,9 @@ def predict_task(tell: Tell, request: Mapping[str, Any]) -> bytes | Plan:
     plan = resolve_task(request, None)
     if plan.training is not None or plan.ladder is not None or len(plan.round((), 0)) > 1:
         return plan
-    tell(Resolved(plan.source.name, plan.source.distribution))
+    tell(Resolved(plan.name, plan.distribution))
     stage = plan.stage()
-    pace = Pace(perf_counter, plan.groups[0].request.accuracy.max_seconds)
+    pace = Pace(perf_counter, plan.request.accuracy.max_seconds)
     verdict = drive(plan, Ledger(plan.digest), lambda block, _: evaluate_task(block, stage), pace)
     answers = assemble(plan, verdict.settled, verdict.status, origin(), run_record(started, EXECUTOR))
     return prediction_message(answers)

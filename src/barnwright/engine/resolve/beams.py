@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from barnwright.beams import BeamSettings, kinetic_from_energy, kinetic_from_momentum
 from barnwright.documents import ColliderBeams, DecayBeams, FixedTargetBeams
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.resolve.legs import beam_code
+from barnwright.process import can_be_polarised
 from barnwright.reaction import Reaction
 
 LARGEST = 1e20
@@ -44,18 +45,28 @@ def resolve_beams(
         expected = "'collider' or 'fixed_target': the process has two incoming particles"
         context.findings.add("beams.kind", "decay", expected, "'collider'")
         return None
-    _refuse_polarisation(beams, context)
+    polarisation = _polarisation(beams, context)
     if isinstance(beams, ColliderBeams):
-        return _collider(beams, columns, context)
-    return _fixed_target(beams, columns, context)
+        settings = _collider(beams, columns, context)
+    else:
+        settings = _fixed_target(beams, columns, context)
+    return None if settings is None else replace(settings, polarisation=polarisation)
 
 
-def _refuse_polarisation(beams: ColliderBeams | FixedTargetBeams, context: BeamContext) -> None:
+def _polarisation(beams: ColliderBeams | FixedTargetBeams, context: BeamContext) -> tuple[float, float]:
+    """Of beam a and beam b, by helicity in the cm."""
+    found = {-1: 0.0, -2: 0.0}
     for name, value in beams.polarisation.items():
         where = f"beams.polarisation.{name}"
-        if beam_code(name, context.reaction, where, context.findings) is not None and value != 0:
-            expected = "0: the laws of this process have no helicities, so its beams are unpolarised"
+        code = beam_code(name, context.reaction, where, context.findings)
+        if code is None:
+            continue
+        particle = context.name(code)
+        if value != 0 and not can_be_polarised(particle):
+            expected = f"0: {particle} has not two helicities; leptons, quarks, nucleons, photons and gluons have"
             context.findings.add(where, value, expected, "0")
+        found[code] = float(value)
+    return found[-1], found[-2]
 
 
 def _collider(beams: ColliderBeams, columns: Columns, context: BeamContext) -> BeamSettings | None:

@@ -7,22 +7,25 @@ import json
 from functools import lru_cache
 from typing import Any
 
-from barnwright.engine.plan import Group, ProcessSource
+from barnwright.engine.plan import Group, Member
 from barnwright.engine.setting import Layout, Setting
 from barnwright.observables import Cut
-from barnwright.reaction import Reaction
 
 
-def plan_digest(source: ProcessSource, reaction: Reaction, layout: Layout, groups: tuple[Group, ...]) -> str:
+def plan_digest(members: tuple[Member, ...], groups: tuple[Group, ...]) -> str:
     """64 hexadecimal digits. What only says when to stop is left out, and so are units and names of the answer."""
     content: dict[str, Any] = {
-        "source": [source.name, source.distribution, source.version, source.digest],
-        "reaction": reaction.text,
-        "layout": _layout_digest(layout),
-        "groups": [[g.points, [_setting(s) for s in g.settings]] for g in groups],
+        "members": [_member(member) for member in members],
+        "groups": [[g.points, [[_setting(one) for one in share.settings] for share in g.shares]] for g in groups],
     }
     text = json.dumps(content, sort_keys=True, separators=(",", ":"))
     return hashlib.sha256(text.encode()).hexdigest()
+
+
+def _member(member: Member) -> list[Any]:
+    source = member.source
+    identity = [source.name, source.distribution, source.version, source.digest]
+    return [identity, member.reaction.text, _layout_digest(member.layout)]
 
 
 @lru_cache(maxsize=256)
@@ -37,11 +40,12 @@ def _setting(setting: Setting) -> list[Any]:
     beams = setting.beams
     return [
         setting.name,
-        [beams.given, beams.first, beams.second, beams.orientation, beams.target],
+        [beams.given, beams.first, beams.second, beams.orientation, beams.target, beams.polarisation],
         setting.masses,
         setting.parameters,
         [_cut(cut) for cut in setting.cuts],
         [setting.rule, setting.closed_form, setting.law, setting.peaks],
+        [[name, sorted(parts or ())] for name, parts in setting.parts],
     ]
 
 

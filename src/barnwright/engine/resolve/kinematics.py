@@ -2,12 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
-
 import numpy as np
 
 from barnwright.beams import collide
 from barnwright.engine.resolve.findings import Findings
+from barnwright.engine.resolve.questions import asked_observables
 from barnwright.engine.setting import Layout, Setting
 from barnwright.observables import Observable, tied_selections
 from barnwright.observables.tree import leaves
@@ -19,7 +18,7 @@ def check_kinematics(reaction: Reaction, layout: Layout, settings: tuple[Setting
     nominal = settings[0]
     collision = collide(nominal.beams, nominal.masses[:2])
     lab_is_cm = collision.lab_is_cm or bool(np.all(collision.stretch == 1.0))
-    for where, observable in _asked(layout, nominal):
+    for where, observable in asked_observables(nominal.cuts, layout):
         if lab_is_cm and tied_selections(observable):
             expected = "each(...), any(...), min(...) or max(...): in the cm both particles have the same energy"
             findings.add(where, observable.text, expected)
@@ -30,17 +29,6 @@ def check_kinematics(reaction: Reaction, layout: Layout, settings: tuple[Setting
                 expected = f"particles that can be at rest in frame=rest(…); {name} has no mass here"
                 findings.add(where, observable.text, expected, "frame=cm")
                 break
-
-
-def _asked(layout: Layout, setting: Setting) -> Iterator[tuple[str, Observable]]:
-    """Every observable of a request with its field."""
-    for k, cut in enumerate(setting.cuts):
-        yield f"cuts[{k}].observable", cut.observable
-    for k, histogram in enumerate(layout.histograms):
-        for n, observable in enumerate(histogram.observables):
-            yield f"histograms[{k}].observables[{n}]", observable
-    for asymmetry in layout.asymmetries:
-        yield f"derived.{asymmetry.name}.observable", asymmetry.observable
 
 
 def _massless_rest_frame(observable: Observable, setting: Setting) -> int | None:

@@ -12,12 +12,12 @@ from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.setting import ParameterValue
 from barnwright.errors import Violation, nearest
 from barnwright.particles import find
-from barnwright.process import Parameters, Process
+from barnwright.process import ParameterFacts, Parameters, Process, facts_of
 
 
 @dataclass(frozen=True, slots=True)
 class Inputs:
-    """Resolved parameters, and the mass in GeV of every leg by code with where it came from."""
+    """Resolved parameters that the laws read, and the mass in GeV of every leg by code with where it came from."""
 
     parameters: dict[str, ParameterValue]
     masses: dict[int, float]
@@ -55,7 +55,26 @@ def resolve_inputs(
     if model is None:
         return None
     values: dict[str, ParameterValue] = model.model_dump()
-    return Inputs(values, *_all_masses(process, values, own))
+    facts = facts_of(process.parameters)
+    _check_use(facts, wanted, values, findings)
+    used = {fact.name: values[fact.name] for fact in facts if fact.required or fact.is_used(values)}
+    return Inputs(used, *_all_masses(process, values, own))
+
+
+def _check_use(
+    facts: tuple[ParameterFacts, ...],
+    wanted: Mapping[str, ParameterValue],
+    values: Mapping[str, ParameterValue],
+    findings: Findings,
+) -> None:
+    """Refuse a parameter that another one makes idle."""
+    for fact in facts:
+        if fact.name not in wanted or fact.is_used(values):
+            continue
+        name, allowed = next((key, words) for key, words in fact.used_with if values.get(key) not in words)
+        words = " or ".join(f"{word!r}" for word in allowed)
+        expected = f"nothing: with {name} = {values.get(name)!r} no law reads it; it is used with {name} = {words}"
+        findings.add(f"parameters.{fact.name}", wanted[fact.name], expected, f"{name} = {allowed[0]!r}")
 
 
 def _tied(process: Process, code: int) -> str | None:
@@ -91,7 +110,8 @@ def _all_masses(
 ) -> tuple[dict[int, float], dict[int, str]]:
     masses, sources = {}, {}
     reaction = process.legs
-    names = {**{-1 - i: p for i, p in enumerate(reaction.incoming)}, **dict(enumerate(reaction.outgoing, 1))}
+    outgoing = () if reaction.inclusive else reaction.outgoing
+    names = {**{-1 - i: p for i, p in enumerate(reaction.incoming)}, **dict(enumerate(outgoing, 1))}
     for code, particle in names.items():
         declared = process.mass_of(code)
         if code in own:

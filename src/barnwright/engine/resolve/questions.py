@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Iterator
 from functools import lru_cache
 from typing import Literal
 
@@ -38,6 +39,17 @@ def resolve_layout(request: Request, reaction: Reaction, findings: Findings) -> 
     if layout.components > MOST_COMPONENTS:
         findings.add("histograms", f"{layout.components} components", f"at most {MOST_COMPONENTS} in one request")
     return layout
+
+
+def asked_observables(cuts: tuple[Cut, ...], layout: Layout) -> Iterator[tuple[str, Observable]]:
+    """Every observable of a request with its field."""
+    for k, cut in enumerate(cuts):
+        yield f"cuts[{k}].observable", cut.observable
+    for k, histogram in enumerate(layout.histograms):
+        for n, observable in enumerate(histogram.observables):
+            yield f"histograms[{k}].observables[{n}]", observable
+    for asymmetry in layout.asymmetries:
+        yield f"derived.{asymmetry.name}.observable", asymmetry.observable
 
 
 def _histogram(asked: HistogramRequest, index: int, reaction: Reaction, findings: Findings) -> HistogramPlan | None:

@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 from barnwright.documents import Request
 from barnwright.engine.resolve.findings import Findings
+from barnwright.engine.resolve.parts import check_contributions
 from barnwright.errors import nearest
 from barnwright.process import Process
 from barnwright.units import AREA_UNITS
@@ -21,14 +22,14 @@ def check_scope(request: Request, process: Process, findings: Findings) -> None:
         expected = f"at most {LONGEST_OBSERVABLES} characters in the observables of one request"
         findings.add("cuts" if request.cuts else "histograms", f"{length} characters", expected)
         findings.refuse()
-    if len(reaction.incoming) != 2 or len(reaction.outgoing) != 2 or reaction.inclusive:
-        expected = "a reaction of two particles into two"
+    if len(reaction.incoming) != 2 or not (reaction.inclusive or len(reaction.outgoing) == 2):
+        expected = "a reaction of two particles into two, or into X"
         findings.add("formula.reaction" if request.formula else "process", reaction.text, expected)
         findings.refuse()
     if request.unit not in AREA_UNITS and request.beams.kind != "decay":
         expected = f"a unit of area: {', '.join(AREA_UNITS)}"
         findings.add("unit", request.unit, expected, nearest(request.unit, AREA_UNITS))
-    _check_contributions(request, process, findings)
+    check_contributions(request, process, findings)
     if request.accuracy.method == "monte_carlo":
         expected = "closed_form or quadrature, the methods for two-body final states"
         findings.add("accuracy.method", "monte_carlo", expected, "quadrature")
@@ -45,15 +46,3 @@ def _observables(request: Request) -> Iterator[str]:
     yield from (text for histogram in request.histograms for text in histogram.observables)
     for variation in request.variations:
         yield from (cut.observable for cut in variation.cuts if cut.observable is not None)
-
-
-def _check_contributions(request: Request, process: Process, findings: Findings) -> None:
-    known = tuple(process.contributions)
-    for index, name in enumerate(request.contributions or ()):
-        if name not in known:
-            expected = (
-                f"a contribution of {process.name}: {', '.join(known)}"
-                if known
-                else (f"no contributions: {process.name} declares none")
-            )
-            findings.add(f"contributions[{index}]", name, expected, nearest(name, known))
