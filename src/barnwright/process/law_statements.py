@@ -63,10 +63,11 @@ def _contributions(process: Process) -> Iterator[Violation]:
         if not all(map(_KEYWORD.fullmatch, two)) or keyword != "*".join(two):
             yield Violation(field, show(keyword), _FORM)
             continue
+        if len(set(two)) < len(two):
+            yield Violation(field, show(keyword), "the interference of two different keywords")
+            continue
         if frozenset(two) in seen:
             yield Violation(field, show(keyword), "a keyword that no other contribution has")
-        elif len(set(two)) < len(two):
-            yield Violation(field, show(keyword), "the interference of two different keywords")
         seen.add(frozenset(two))
         if len(two) == 2:
             yield from _undeclared(field, two, plain)

@@ -39,7 +39,7 @@ def findings_of(process: Process) -> list[str]:
     """Everything that is wrong with a process's laws and closed forms; an empty list when nothing is."""
     findings = Findings()
     inputs = resolve_inputs(process, dict(process.example), {}, findings)
-    if inputs is None:
+    if findings or inputs is None:
         return [str(violation) for violation in findings.violations]
     found: list[str] = []
     for field, laws in (("laws", process.laws), ("closed_forms", process.closed_forms)):

@@ -15,6 +15,7 @@ from barnwright.process import (
     SquaredAmplitude,
     TotalCrossSection,
 )
+from barnwright.process.contributions import takes
 
 
 def function_of(law: Law | ClosedForm) -> Any:
@@ -53,6 +54,8 @@ def signature_finding(law: Law | ClosedForm, with_parts: bool) -> str | None:
         return None
     function, names = function_of(law), arguments_of(law)
     keywords = {"parts": "parts"} if with_parts else {}
+    if isinstance(law, HelicityAmplitudes) and takes(function, "helicities"):
+        keywords["helicities"] = "helicities"
     wanted = f"({', '.join((*names, *keywords))})"
     if not callable(function):
         return f"expected a function {wanted}, got {show(function)}"
