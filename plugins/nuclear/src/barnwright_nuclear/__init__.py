@@ -1,0 +1,1 @@
+"""Scattering on nucleons: elastic electron-proton scattering, the proton point-like or with form factors."""
