@@ -1,1 +1,1 @@
-"""Quantum electrodynamics at lowest order: lepton pairs and Compton scattering, masses exact."""
+"""Quantum electrodynamics at lowest order: two-body scattering, annihilation and pairs, masses exact."""

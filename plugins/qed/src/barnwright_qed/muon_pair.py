@@ -4,4 +4,4 @@ from __future__ import annotations
 
 from barnwright_qed.pairs import pair
 
-process = pair("muon-pair", "mu", "muon")
+process = pair("muon-pair", "mu", "muon", crossing=("qed/electron-muon",))

@@ -1,20 +1,26 @@
 """e- e+ into a pair of heavier leptons through one photon, the masses of both kinds exact.
 
-Source: M. Peskin, D. Schroeder, An Introduction to Quantum Field Theory (1995), section 5.1, with the traces kept to
-all orders in both masses. With E = √s/2, momenta p before and q after, and c = cos θ between e- and l- in the cm,
+Source: M. Peskin, D. Schroeder, An Introduction to Quantum Field Theory (1995), sections 5.1 and 5.2, with the traces
+kept to all orders in both masses. With E = √s/2, momenta p before and q after, and c = cos θ between e- and l- in the
+cm,
 
     |M|² = e⁴ [1 + 4(m² + M²)/s + 16 p²q²c²/s²],   dσ/dc = |M|² q/(32π s p).
+
+Helicity amplitudes: e² times 1 ± c where both pairs have opposite helicities; a pair of equal ones costs m/E, and
+leaves sin θ or, when both are, cos θ.
 """
 
 from __future__ import annotations
 
-from typing import Any
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.plugin import Claims, ClosedForm, Event, Point, Process, SquaredAmplitude, Validity
-from barnwright_qed.coupling import RADIATION_CAUTION, Coupling
+from barnwright.plugin import Claims, ClosedForm, Event, HelicityAmplitudes, Point, Process, SquaredAmplitude, Validity
+from barnwright_qed import one_photon
+from barnwright_qed.coupling import ALTERNATIVES, BELOW_THE_Z, HELICITY_CAUTION, PESKIN, RADIATION_CAUTION, Coupling
+from barnwright_qed.helicity import Combination, Complex, HalfAngle, Table, both_parities, half_angle, rows
 
 Array = NDArray[np.float64]
 
@@ -25,17 +31,37 @@ RESONANCES = (
 )
 
 
+class Pairs(NamedTuple):
+    """The half angle, and m/E in the cm of either kind of lepton."""
+
+    half: HalfAngle
+    light: Array
+    heavy: Array
+
+
+TABLE: Table = {
+    (1, -1, 1, -1): lambda pair: 2 * pair.half.cos_squared,
+    (1, -1, -1, 1): lambda pair: 2 * pair.half.sin_squared,
+    (1, -1, 1, 1): lambda pair: 2 * pair.heavy * pair.half.product,
+    (1, -1, -1, -1): lambda pair: 2 * pair.heavy * pair.half.product,
+    (1, 1, 1, -1): lambda pair: 2 * pair.light * pair.half.product,
+    (1, 1, -1, 1): lambda pair: 2 * pair.light * pair.half.product,
+    (1, 1, 1, 1): lambda pair: pair.light * pair.heavy * pair.half.cosine,
+    (1, 1, -1, -1): lambda pair: pair.light * pair.heavy * pair.half.cosine,
+}
+HELICITIES = both_parities(TABLE)
+
+
 def squared(event: Event, parameters: Coupling) -> Array:
     """|M|², dimensionless; every term is positive, so no digits are lost."""
-    light, heavy = event.mass("beam_a") ** 2, event.mass(1) ** 2
-    bracket = (
-        event.dot("beam_a", 1) * event.dot("beam_b", 2)
-        + event.dot("beam_a", 2) * event.dot("beam_b", 1)
-        + heavy * event.dot("beam_a", "beam_b")
-        + light * event.dot(1, 2)
-        + 2 * light * heavy
-    )
-    return np.asarray(8 * (4 * np.pi * parameters.alpha) ** 2 * bracket / np.square(event.s))
+    return one_photon.squared(event, parameters, ("beam_a", "beam_b"), (1, 2))
+
+
+def amplitudes(event: Event, parameters: Coupling, helicities: tuple[Combination, ...]) -> Complex:
+    """M of the wanted helicities of e-, e+, l-, l+; dimensionless, phases of rows left free."""
+    energy = event.sqrt_s / 2
+    found = Pairs(half_angle(event), event.mass("beam_a") / energy, event.mass(1) / energy)
+    return rows(event, parameters, helicities, TABLE, found)
 
 
 def cumulative(x: Array, point: Point, parameters: Coupling) -> Array:
@@ -47,21 +73,18 @@ def cumulative(x: Array, point: Point, parameters: Coupling) -> Array:
     return np.asarray(scale * x * (flat + curved * np.square(x)))
 
 
-def pair(name: str, lepton: str, word: str, **more: Any) -> Process:
+def pair(name: str, lepton: str, word: str, crossing: tuple[str, ...] = ()) -> Process:
     """The process e- e+ -> lepton pair; ``word`` is the lepton's name in a sentence."""
     return Process(
         name=name,
         reaction=f"e- e+ -> {lepton}- {lepton}+",
         summary=f"{word} pairs from e- e+ through one photon, both masses exact",
-        references=("M. Peskin, D. Schroeder, An Introduction to Quantum Field Theory (1995), section 5.1",),
-        laws=(SquaredAmplitude(squared),),
+        references=(f"{PESKIN}, sections 5.1 and 5.2",),
+        laws=(SquaredAmplitude(squared), HelicityAmplitudes(amplitudes, helicities=HELICITIES)),
         closed_forms=(ClosedForm(cumulative, observable="cos_theta(1, frame=cm)"),),
         parameters=Coupling,
-        claims=Claims(exchange=((1, 2),), limits=(LIMIT,)),
-        valid=Validity(
-            sqrt_s=(0.0, 30.0),
-            text="lowest order in alpha with the photon alone; above about 30 GeV the Z boson is felt",
-        ),
-        cautions=(RESONANCES, RADIATION_CAUTION),
-        **more,
+        claims=Claims(exchange=((1, 2), ("beam_a", "beam_b")), crossing=crossing, limits=(LIMIT,)),
+        valid=Validity(sqrt_s=(0.0, 30.0), text=BELOW_THE_Z),
+        cautions=(RESONANCES, HELICITY_CAUTION, RADIATION_CAUTION),
+        alternatives=ALTERNATIVES,
     )
