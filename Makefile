@@ -6,7 +6,7 @@ SHELL := /bin/bash
 .DELETE_ON_ERROR:
 
 # The bundled plugins: installed by path, like a stranger's.
-PLUGINS := plugins/qed
+PLUGINS := plugins/electroweak plugins/nuclear plugins/qed plugins/resonances
 
 VENV := .venv
 PY := $(VENV)/bin/python
@@ -49,7 +49,7 @@ types: $(FOR_DEVELOPERS)
 	$(PY) -m mypy
 
 imports: $(FOR_DEVELOPERS)
-	PYTHONPATH=src:plugins/qed/src $(VENV)/bin/lint-imports --no-cache
+	PYTHONPATH=src$(subst $() ,,$(addsuffix /src,$(addprefix :,$(PLUGINS)))) $(VENV)/bin/lint-imports --no-cache
 
 dependencies: $(FOR_DEVELOPERS)
 	$(VENV)/bin/deptry src
