@@ -15,7 +15,7 @@ from numpy.typing import NDArray
 
 from barnwright.documents import ByName, Diagnostics, Part, Prediction, Request, Run
 from barnwright.documents import Note as NoteDocument
-from barnwright.engine.derived import between_variations
+from barnwright.engine.derived import derived_quantities, undefined_ratios
 from barnwright.engine.faults import faults
 from barnwright.engine.form import Form
 from barnwright.engine.numbers import Numbers
@@ -153,12 +153,17 @@ class _Shared:
         whole = first.results(numbers, point, 0)
         variations = ByName(first.variations(numbers, point))
         request = self._request(place)
-        derived = between_variations(request.derived, variations, whole["derived"])
+        derived = derived_quantities(request.derived, whole, variations)
         return Prediction.build(
             request=request,
             status=answers.status_of(point),
             diagnostics=_diagnostics(answers, point),
-            notes=self.notes + self._notes_of_point(answers, point, place) + faults(answers, point),
+            notes=(
+                *self.notes,
+                *self._notes_of_point(answers, point, place),
+                *faults(answers, point),
+                *undefined_ratios(derived, variations, whole["total"]),
+            ),
             contributions=ByName(first.contributions(numbers, point)),
             processes=ByName(self._processes(answers, point)),
             variations=variations,

@@ -1,14 +1,25 @@
-"""Derived quantities with the bounds of their errors."""
+"""Derived quantities with the bounds of their errors, and a note about those that would divide by 0."""
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.documents import AsymmetryRequest, ByName, Derived, DerivedBins, Part, RatioRequest
+from barnwright.documents import (
+    AsymmetryRequest,
+    ByName,
+    Derived,
+    DerivedBins,
+    EnvelopeRequest,
+    Note,
+    Part,
+    RatioRequest,
+    Total,
+)
+from barnwright.engine.envelope import envelope
 from barnwright.engine.setting import Layout
 
 Array = NDArray[np.float64]
@@ -43,24 +54,59 @@ def point_asymmetries(layout: Layout, value: Array, error: Array) -> list[Derive
     return found
 
 
-def between_variations(
-    asked: Sequence[AsymmetryRequest | RatioRequest], variations: ByName[Part], known: ByName[Derived]
+def derived_quantities(
+    asked: Sequence[AsymmetryRequest | RatioRequest | EnvelopeRequest],
+    nominal: Mapping[str, Any],
+    variations: ByName[Part],
 ) -> ByName[Derived]:
-    """All derived quantities in the order of the request; those between variations bin by bin as well."""
+    """All derived quantities in the order of the request; those of variations bin by bin as well.
+
+    ``nominal`` has the total, the histograms and the asymmetries at a point of the request as it stands.
+    """
     found = []
     for request in asked:
-        if request.between is None:
-            found.append(known[request.name])
-            continue
-        first, second = (variations[name] for name in request.between)
-        quotient: Quotient = ratio if isinstance(request, RatioRequest) else asymmetry
-        bins = []
-        for one, two in zip(first.histograms, second.histograms, strict=True):
-            values, errors = quotient(one.contents, two.contents, one.content_errors, two.content_errors)
-            bins.append(DerivedBins.build(name=one.name, values=values, errors=errors))
-        totals = [_number(p.total.value) for p in (first, second)] + [_number(p.total.error) for p in (first, second)]
-        found.append(_derived(request.name, *quotient(*totals), ByName(bins)))
+        if isinstance(request, EnvelopeRequest):
+            found.append(envelope(request, nominal, variations))
+        elif request.between is None:
+            found.append(nominal["derived"][request.name])
+        else:
+            first, second = (variations[name] for name in request.between)
+            found.append(_between(request, first, second))
     return ByName(found)
+
+
+def _between(request: AsymmetryRequest | RatioRequest, first: Part, second: Part) -> Derived:
+    quotient: Quotient = ratio if isinstance(request, RatioRequest) else asymmetry
+    bins = []
+    for one, two in zip(first.histograms, second.histograms, strict=True):
+        values, errors = quotient(one.contents, two.contents, one.content_errors, two.content_errors)
+        bins.append(DerivedBins.build(name=one.name, values=values, errors=errors))
+    totals = [_number(p.total.value) for p in (first, second)] + [_number(p.total.error) for p in (first, second)]
+    return _derived(request.name, *quotient(*totals), ByName(bins))
+
+
+def undefined_ratios(derived: ByName[Derived], variations: ByName[Part], total: Total) -> tuple[Note, ...]:
+    """A note that names what is not known because it would be divided by 0; none where the totals are not known."""
+    if total.value is None or any(part.total.value is None for part in variations):
+        return ()
+    found = [text for entry in derived for text in _undefined(entry)]
+    found += [f"{text} in variation {part.name}" for part in variations for e in part.derived for text in _undefined(e)]
+    if not found:
+        return ()
+    return (
+        Note.build(
+            code="undefined_ratio", text=f"what it is divided by is 0, so this is not known: {'; '.join(found)}"
+        ),
+    )
+
+
+def _undefined(derived: Derived) -> Iterator[str]:
+    if derived.value is None:
+        yield derived.name
+    for bins in derived.histograms:
+        unknown = int(np.count_nonzero(~np.isfinite(bins.values)))
+        if unknown:
+            yield f"{derived.name} in {unknown} of {bins.values.size} bins of {bins.name}"
 
 
 def _number(value: float | None) -> Array:

@@ -35,10 +35,11 @@ def check_scope(request: Request, process: Process, findings: Findings) -> None:
         findings.add("accuracy.method", "monte_carlo", expected, "quadrature")
     names = {variation.name for variation in request.variations}
     for index, derived in enumerate(request.derived):
-        for k, name in enumerate(derived.between or ()):
+        field, compared = derived.compared
+        for k, name in enumerate(compared):
             if name not in names:
                 expected = f"the name of a variation: {', '.join(sorted(names)) or 'there is none'}"
-                findings.add(f"derived[{index}].between[{k}]", name, expected, nearest(name, names))
+                findings.add(f"derived[{index}].{field}[{k}]", name, expected, nearest(name, names))
 
 
 def _observables(request: Request) -> Iterator[str]:
