@@ -27,6 +27,8 @@ class BeamSettings:
         The leg code (−1 or −2) of a particle at rest in the lab.
     polarisation : two floats
         (N_R − N_L)/(N_R + N_L) of beam a and beam b, by helicity in the cm.
+    crossing_angle : float, rad
+        The full angle between two beams that move, 0 where they meet head on.
     """
 
     given: Literal["sqrt_s", "kinetic"]
@@ -35,3 +37,4 @@ class BeamSettings:
     orientation: int = 1
     target: int | None = None
     polarisation: tuple[float, float] = (0.0, 0.0)
+    crossing_angle: float = 0.0

@@ -3,6 +3,7 @@
 Everything is built from kinetic energies, so a soft photon on a target keeps its digits:
 s − (m_a + m_b)² = 2 (T_a T_b + T_a m_b + T_b m_a + p_a p_b) for beams head on. √s itself is rounded to a few ε where it
 was not given as such; what that means close above the threshold of a final state, the error of the answer says.
+Beams that cross at an angle are worked out in `crossing`.
 """
 
 from __future__ import annotations
@@ -11,6 +12,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.beams.beam_settings import BeamSettings
+from barnwright.beams.crossing import cross
 from barnwright.kinematics import Collision
 
 Array = NDArray[np.float64]
@@ -41,6 +43,8 @@ def collide(beams: BeamSettings, masses: tuple[float, ...]) -> Collision:
         return Collision(first, np.zeros_like(first), np.ones_like(first), beams.orientation, None, True)
     second = np.array(beams.second, dtype=float)[:, None]
     m_a, m_b = masses
+    if beams.crossing_angle:
+        return cross((first, second), (m_a, m_b), beams.crossing_angle, beams.orientation)
     p_a, p_b = (np.sqrt(t * (t + 2 * m)) for t, m in ((first, m_a), (second, m_b)))
     excess = 2 * (first * second + first * m_b + second * m_a + p_a * p_b)
     total = m_a + m_b

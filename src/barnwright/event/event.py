@@ -30,6 +30,10 @@ class Kinematics(Protocol):
     def sqrt_s(self) -> Array:
         """√s in GeV."""
 
+    @property
+    def turns(self) -> bool:
+        """Whether quantities of the lab change with the azimuth of the cm: where the beams cross at an angle."""
+
     def mass(self, code: int) -> float:
         """The mass of a leg in GeV."""
 

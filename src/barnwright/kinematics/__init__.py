@@ -1,8 +1,9 @@
 """Kinematics: the collision's energy, frames, four-vectors and two-body momenta; knows no process and no cut."""
 
 from barnwright.kinematics.collision import Collision
+from barnwright.kinematics.crossed_beams import CrossedBeams
 from barnwright.kinematics.four_vector import FourVector, boost_to_rest
 from barnwright.kinematics.frame import CM, LAB, Frame
-from barnwright.kinematics.two_body import TwoBody
+from barnwright.kinematics.two_body import Turn, TwoBody
 
-__all__ = ["CM", "LAB", "Collision", "FourVector", "Frame", "TwoBody", "boost_to_rest"]
+__all__ = ["CM", "LAB", "Collision", "CrossedBeams", "FourVector", "Frame", "Turn", "TwoBody", "boost_to_rest"]

@@ -12,11 +12,14 @@ Rules of this file
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass, field
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
+
+from barnwright.kinematics.crossed_beams import CrossedBeams
 
 Array = NDArray[np.float64]
 
@@ -30,13 +33,15 @@ class Collision:
     sqrt_s, correction : arrays, GeV
         √s = sqrt_s + correction.
     stretch : array
-        exp(Y) with Y the rapidity of the centre of mass in the lab, along +z.
+        exp(Y) with Y the rapidity of the centre of mass in the lab, along +z; 1 where the beams cross at an angle.
     orientation : int
         +1 when beam a moves along +z in the centre of mass, −1 when beam b does.
     target : int or None
         The leg code (−1 or −2) of the incoming particle at rest in the lab.
     lab_is_cm : bool
         Whether the lab is the cm by the way the beams were given, at every point.
+    crossed : CrossedBeams or None
+        Where the beams cross at an angle: what leads from the centre of mass to the lab.
     """
 
     sqrt_s: Array
@@ -45,6 +50,7 @@ class Collision:
     orientation: int = 1
     target: int | None = None
     lab_is_cm: bool = False
+    crossed: CrossedBeams | None = None
     _momenta: dict[tuple[float, float], Array] = field(default_factory=dict, init=False, repr=False, compare=False)
 
     @property
@@ -73,11 +79,17 @@ class Collision:
 
     def take(self, points: Any) -> Collision:
         """The collision of the chosen points (an index array, or a slice)."""
-        taken = (self.sqrt_s[points], self.correction[points], self.stretch[points])
-        return Collision(*taken, self.orientation, self.target, self.lab_is_cm)
+        return self.mapped(lambda array: array[points])
+
+    def mapped(self, change: Callable[[Array], Array]) -> Collision:
+        """The same collision with every array put through a function."""
+        arrays = (change(self.sqrt_s), change(self.correction), change(self.stretch))
+        crossed = None if self.crossed is None else self.crossed.mapped(change)
+        return Collision(*arrays, self.orientation, self.target, self.lab_is_cm, crossed)
 
     def facing_a(self) -> Collision:
         """The same collision seen with +z along beam a."""
         if self.orientation == 1:
             return self
-        return Collision(self.sqrt_s, self.correction, 1.0 / self.stretch, 1, self.target, self.lab_is_cm)
+        crossed = None if self.crossed is None else self.crossed.turned()
+        return Collision(self.sqrt_s, self.correction, 1.0 / self.stretch, 1, self.target, self.lab_is_cm, crossed)

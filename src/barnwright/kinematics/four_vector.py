@@ -40,16 +40,16 @@ class FourVector:
     plus, minus : arrays, GeV
         E + pz and E − pz.
     pt, phi : arrays, GeV and rad
-        Transverse momentum and azimuth, phi in (−π, π].
+        Transverse momentum and azimuth, phi in (−π, π]; phi None where ``exact`` knows px and py.
     mass : float or array, GeV
     exact : Exact
     """
 
     def __init__(
-        self, plus: Array, minus: Array, pt: Array, phi: Array, mass: float | Array, exact: Exact = NOTHING_EXACT
+        self, plus: Array, minus: Array, pt: Array, phi: Array | None, mass: float | Array, exact: Exact = NOTHING_EXACT
     ) -> None:
-        self.plus, self.minus, self.pt, self.phi, self.mass = plus, minus, pt, phi, mass
-        self._exact = exact
+        self.plus, self.minus, self.pt, self.mass = plus, minus, pt, mass
+        self._phi, self._exact = phi, exact
 
     @classmethod
     def from_components(cls, energy: Array, px: Array, py: Array, pz: Array, mass: float | Array) -> FourVector:
@@ -59,6 +59,11 @@ class FourVector:
         smaller = (np.square(mass) + pt * pt) / np.where(larger > 0, larger, 1.0)
         forward = pz >= 0
         return cls(np.where(forward, larger, smaller), np.where(forward, smaller, larger), pt, np.arctan2(py, px), mass)
+
+    @cached_property
+    def phi(self) -> Array:
+        """Azimuth in rad, in (−π, π]."""
+        return np.arctan2(self.py, self.px) if self._phi is None else self._phi
 
     @cached_property
     def energy(self) -> Array:

@@ -14,15 +14,24 @@ Rules of this file
 from __future__ import annotations
 
 from functools import cached_property
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.kinematics.collision import Collision
+from barnwright.kinematics.crossed_beams import CrossedBeams
 from barnwright.kinematics.four_vector import Exact, FourVector, boost_to_rest
 from barnwright.kinematics.frame import CM, Frame
 
 Array = NDArray[np.float64]
+
+
+class Turn(NamedTuple):
+    """Cosine and sine of an azimuth."""
+
+    cosine: Array
+    sine: Array
 
 
 class TwoBody:
@@ -35,8 +44,8 @@ class TwoBody:
     masses : four floats, GeV
         Of beam a, beam b, leg 1, leg 2.
     one_minus_cos, one_plus_cos : arrays of shape (point or 1, node)
-    azimuth : array, rad
-        Of leg 1, in the lab and in the cm.
+    azimuth : array in rad, or Turn
+        Of leg 1, in the cm (and in the lab, unless the beams cross at an angle).
     """
 
     def __init__(
@@ -45,19 +54,38 @@ class TwoBody:
         masses: tuple[float, ...],
         one_minus_cos: Array,
         one_plus_cos: Array,
-        azimuth: Array | float = 0.0,
+        azimuth: Array | float | Turn = 0.0,
     ) -> None:
         self.collision = collision
         self._masses = dict(zip((-1, -2, 1, 2), masses, strict=True))
         self.one_minus_cos, self.one_plus_cos = one_minus_cos, one_plus_cos
-        self._azimuth = np.asarray(azimuth, dtype=float)
+        self._turned = azimuth
         self._energies: dict[int, Array] = {}
         self._small: dict[int, Array] = {}
 
     @cached_property
     def shape(self) -> tuple[int, ...]:
         """The shape of one quantity of the batch, (point, node)."""
-        return np.broadcast_shapes(self.collision.sqrt_s.shape, self.one_minus_cos.shape, self._azimuth.shape)
+        around = self._turned.cosine if isinstance(self._turned, Turn) else np.asarray(self._turned)
+        return np.broadcast_shapes(self.collision.sqrt_s.shape, self.one_minus_cos.shape, around.shape)
+
+    @cached_property
+    def _azimuth(self) -> Array:
+        """The azimuth of leg 1 in rad."""
+        turned = self._turned
+        angle = np.arctan2(turned.sine, turned.cosine) if isinstance(turned, Turn) else turned
+        return np.asarray(angle, dtype=float)
+
+    @cached_property
+    def _turn(self) -> Turn:
+        """Cosine and sine of the azimuth of leg 1."""
+        turned = self._turned
+        return turned if isinstance(turned, Turn) else Turn(np.cos(self._azimuth), np.sin(self._azimuth))
+
+    @property
+    def turns(self) -> bool:
+        """Whether quantities of the lab change with the azimuth of the cm: where the beams cross at an angle."""
+        return self.collision.crossed is not None
 
     @property
     def sqrt_s(self) -> Array:
@@ -171,9 +199,7 @@ class TwoBody:
             zero = np.zeros_like(momentum)
             forward = (code == -1) == (self.collision.orientation == 1)
             return FourVector(*((large, small) if forward else (small, large)), zero, zero, self._masses[code])
-        along, against = self.one_plus_cos, self.one_minus_cos
-        if (code == 1) != (self.collision.orientation == 1):
-            along, against = against, along
+        along, against = self._halves(code)
         pt = momentum * np.sqrt(self.one_minus_cos * self.one_plus_cos)
         plus, minus = small + momentum * along, small + momentum * against
         exact = Exact(energy=self._energy(code), momentum=momentum)
@@ -181,17 +207,33 @@ class TwoBody:
             exact = exact._replace(px=-pt * np.cos(self._azimuth), py=-pt * np.sin(self._azimuth))
         return FourVector(plus, minus, pt, self._phi(code), self._masses[code], exact)
 
+    def _halves(self, code: int) -> tuple[Array, Array]:
+        """1 + cos and 1 − cos of the angle of an outgoing leg to +z in the cm."""
+        with_z = (code == 1) == (self.collision.orientation == 1)
+        return (self.one_plus_cos, self.one_minus_cos) if with_z else (self.one_minus_cos, self.one_plus_cos)
+
     def _phi(self, code: int) -> Array:
         if code == 1:
             return self._azimuth
         return np.where(self._azimuth > 0, self._azimuth - np.pi, self._azimuth + np.pi)
 
     def _lab_vector(self, code: int) -> FourVector:
+        if self.collision.crossed is not None:
+            return self._crossed_vector(code, self.collision.crossed)
         in_cm, stretch = self.vector(code, CM), self.collision.stretch
         if self.collision.lab_is_cm:
             return in_cm
         exact = Exact(kinetic=self._recoil_energy(code))
         return FourVector(in_cm.plus * stretch, in_cm.minus / stretch, in_cm.pt, in_cm.phi, in_cm.mass, exact)
+
+    def _crossed_vector(self, code: int, crossed: CrossedBeams) -> FourVector:
+        """The lab momentum of a leg where the beams cross at an angle."""
+        mass = self._masses[code]
+        if code < 0:
+            return crossed.beam(code, mass, (code == -1) == (self.collision.orientation == 1))
+        turn = self._turn if code == 1 else Turn(-self._turn.cosine, -self._turn.sine)
+        in_cm = self._momentum(code), self._energy_minus_momentum(code)
+        return crossed.to_lab(mass, in_cm, self._halves(code), turn)
 
     def _recoil_energy(self, code: int) -> Array | None:
         """Kinetic energy of an outgoing leg where a target is at rest: ((m_T − m)² − (p_T − p)²)/2m_T."""

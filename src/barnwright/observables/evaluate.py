@@ -112,8 +112,9 @@ def _acollinearity(leaf: Leaf, event: Event) -> Array:
 
 
 def _delta_phi(leaf: Leaf, event: Event) -> Array:
-    """In (−π, π]; two bodies are back to back across the beam, whatever rounding says."""
-    if len(event.reaction.outgoing) == 2 and leaf.frame in (LAB, CM):
+    """In (−π, π]; two bodies are back to back across a beam along z, whatever rounding says."""
+    along_z = leaf.frame == CM or (leaf.frame == LAB and not event.kinematics.turns)
+    if len(event.reaction.outgoing) == 2 and along_z:
         return np.full(event.shape, np.pi)
     first, second = _vectors(leaf, event)
     difference = np.asarray(first.phi - second.phi)
