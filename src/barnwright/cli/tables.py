@@ -57,12 +57,15 @@ def _beams(prediction: Prediction) -> str:
     beams = prediction.request.beams
     if beams.kind == "decay":
         return "a decay"
+    polarised = [f"{name} polarised {value:+g}" for name, value in sorted(beams.polarisation.items()) if value]
     if beams.kind == "collider":
-        energies = beams.energies or {}
-        return ", ".join(f"{n} {e:g} GeV" for n, e in sorted(energies.items())) or f"sqrt_s = {beams.sqrt_s:g} GeV"
+        energies = [f"{n} {e:g} GeV" for n, e in sorted((beams.energies or {}).items())]
+        crossing = [f"crossing at {beams.crossing_angle:g} rad"] if beams.crossing_angle else []
+        return ", ".join([*(energies or [f"sqrt_s = {beams.sqrt_s:g} GeV"]), *crossing, *polarised])
     given = {"energy": beams.energy, "kinetic energy": beams.kinetic_energy, "momentum": beams.momentum}
     what, value = next((what, value) for what, value in given.items() if value is not None)
-    return f"{what} {value:g} GeV on {beams.target or 'the second particle'} at rest"
+    target = f"{what} {value:g} GeV on {beams.target or 'the second particle'} at rest"
+    return ", ".join([target, *polarised])
 
 
 def _error(prediction: Prediction) -> str:
@@ -75,7 +78,8 @@ def _error(prediction: Prediction) -> str:
 def _parts_titled(title: str, parts: Iterable[Part]) -> Table:
     table = titled(title, ("name", "total"))
     for part in parts:
-        table.add_row(Text(part.name), Text(str(part.total)))
+        signed = " (may be negative)" if any(note.code == "signed" for note in part.notes) else ""
+        table.add_row(Text(f"{part.name}{signed}"), Text(str(part.total)))
     return table
 
 
