@@ -34,6 +34,10 @@ class Explicit:
     def sqrt_s(self) -> Array:
         return self._array(-1, "cm")[0] + self._array(-2, "cm")[0]
 
+    @property
+    def turns(self) -> bool:
+        return False
+
     def mass(self, code: int) -> float:
         return self._masses[code]
 
