@@ -169,7 +169,7 @@ PHYSICS = [
     one("along an outgoing leg", collider(sqrt_s=10.0, along_z="mu-"), "beams.along_z", "'mu-'", "e-"),
     one(
         "polarised without helicities",
-        collider(sqrt_s=10.0, polarisation={"e-": -0.8}),
+        {**formula(), **collider(sqrt_s=10.0, polarisation={"e-": -0.8})},
         "beams.polarisation.e-",
         "-0.8",
         "0",
