@@ -16,7 +16,9 @@ from barnwright.amplitudes.dirac import GAMMA, GAMMA5, P_LEFT, P_RIGHT, apply_sl
 from barnwright.amplitudes.electroweak import (
     electric_charge,
     from_vector_axial,
+    higgs_coupling,
     photon_coupling,
+    vacuum_value,
     w_coupling,
     weak_isospin,
     z_coupling,
@@ -31,7 +33,8 @@ from barnwright.amplitudes.propagators import (
     vector_exchange,
 )
 from barnwright.amplitudes.spinors import adjoint, spinor_u, spinor_v
-from barnwright.amplitudes.states import external_states, helicity_rows, physical_helicities
+from barnwright.amplitudes.states import external_states, helicity_rows
+from barnwright.amplitudes.vertices import three_vector_vertex
 
 __all__ = [
     "GAMMA",
@@ -53,8 +56,8 @@ __all__ = [
     "external_states",
     "from_vector_axial",
     "helicity_rows",
+    "higgs_coupling",
     "photon_coupling",
-    "physical_helicities",
     "polarisation_vector",
     "propagator",
     "pseudoscalar_current",
@@ -63,6 +66,8 @@ __all__ = [
     "slash",
     "spinor_u",
     "spinor_v",
+    "three_vector_vertex",
+    "vacuum_value",
     "vector_exchange",
     "w_coupling",
     "weak_isospin",

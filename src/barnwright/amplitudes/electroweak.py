@@ -1,4 +1,4 @@
-"""Couplings of the standard model's fermions to photon, Z and W, read from the names of the particles.
+"""Couplings of the standard model's fermions to photon, Z, W and H, read from the names of the particles.
 
 Rules of this file
 ------------------
@@ -13,13 +13,13 @@ Rules of this file
 
 from __future__ import annotations
 
+from math import sqrt
 from typing import Any
-
-import numpy as np
 
 from barnwright.particles import ParticleData, find
 
 _UP_TYPE, _DOWN_TYPE = (2, 4, 6), (1, 3, 5)
+_MASSIVE_VECTORS = (23, 24)
 _CHARGED_LEPTONS, _NEUTRINOS = (11, 13, 15), (12, 14, 16)
 _ISOSPIN = dict.fromkeys(_UP_TYPE + _NEUTRINOS, 0.5) | dict.fromkeys(_DOWN_TYPE + _CHARGED_LEPTONS, -0.5)
 
@@ -90,7 +90,35 @@ def w_coupling(first: str, second: str, mixing: complex = 1.0) -> tuple[complex,
     same_doublet = numbers[0] in _CHARGED_LEPTONS and numbers[1] == numbers[0] + 1
     if not (same_doublet or (quarks and _ISOSPIN[numbers[0]] != _ISOSPIN[numbers[1]])):
         raise ValueError(f"fermions of a W vertex: got {first} and {second}, expected two that a W joins")
-    return mixing * np.sqrt(0.5), 0.0
+    return mixing * sqrt(0.5), 0.0
+
+
+def higgs_coupling(name: str, mass: Any, vacuum_value: Any) -> Any:
+    """g of a vertex with one H, in GeV^0 or GeV: −m/v of a fermion (i g), 2M²/v of W and Z (i g g^μν).
+
+    Parameters
+    ----------
+    name : str
+        A quark, a lepton, ``"W+"``, ``"W-"`` or ``"Z0"``.
+    mass : number or array, GeV
+        Of that particle.
+    vacuum_value : number or array, GeV
+        v = (√2 G_F)^(−1/2), as `vacuum_value` gives it.
+
+    Raises
+    ------
+    UnknownParticleError, ValueError
+        As `weak_isospin`.
+    """
+    if abs(find(name).pdg_id) in _MASSIVE_VECTORS:
+        return 2 * mass * mass / vacuum_value
+    _number(name)
+    return -mass / vacuum_value
+
+
+def vacuum_value(fermi_constant: Any) -> Any:
+    """v = (√2 G_F)^(−1/2) in GeV, from G_F in GeV⁻²."""
+    return (sqrt(2) * fermi_constant) ** -0.5
 
 
 def from_vector_axial(vector: Any, axial: Any) -> tuple[Any, Any]:

@@ -33,22 +33,26 @@ def polarisation_vector(vector: FourVector, helicity: int) -> Complex:
     ValueError
         For another helicity, and for 0 where the mass is 0.
     """
+    return polarisation_in(vector, direction(vector), helicity)
+
+
+def polarisation_in(vector: FourVector, towards: Direction, helicity: int) -> Complex:
+    """ε^μ of a momentum whose `direction` is known."""
     if helicity not in (-1, 0, 1):
         raise ValueError(f"helicity: got {helicity!r}, expected -1, 0 or 1 (of a vector boson)")
-    towards = direction(vector)
     if helicity:
         return _transverse(towards, helicity)
     if np.any(np.asarray(vector.mass) == 0):
         raise ValueError("helicity: got 0, expected -1 or 1, the only ones of a massless vector boson")
+    return _longitudinal(vector, towards)
+
+
+def _longitudinal(vector: FourVector, towards: Direction) -> Complex:
     cosine, sine, phase = towards
     along = vector.energy / vector.mass
     across = 2 * sine * cosine * along
-    return filled(
-        vector.momentum / vector.mass,
-        across * phase.real,
-        across * phase.imag,
-        (cosine - sine) * (cosine + sine) * along,
-    )
+    z = (cosine - sine) * (cosine + sine) * along
+    return filled(vector.momentum / vector.mass, across * phase.real, across * phase.imag, z)
 
 
 def _transverse(towards: Direction, helicity: int) -> Complex:

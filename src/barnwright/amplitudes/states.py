@@ -10,12 +10,12 @@ Every leg brings its own helicity axis, so that plain broadcasting makes the pro
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from functools import lru_cache
 
 import numpy as np
 
 from barnwright.amplitudes.arrays import Complex
-from barnwright.amplitudes.polarisations import polarisation_vector
+from barnwright.amplitudes.directions import direction
+from barnwright.amplitudes.polarisations import polarisation_in
 from barnwright.amplitudes.spinors import adjoint, frame, u_in, v_in
 from barnwright.event import Event
 from barnwright.kinematics import FourVector
@@ -48,18 +48,17 @@ def external_states(event: Event, helicities: Sequence[Sequence[int]] | None = N
     ValueError
         For a particle of spin other than 0, ½, 1.
     """
-    reaction, legs = event.reaction, _leg_keys(event)
-    names = (*reaction.incoming, *reaction.outgoing)
+    incoming = event.reaction.incoming
+    names, legs = (*incoming, *event.reaction.outgoing), _leg_keys(event)
     states = []
-    for place, (key, name) in enumerate(zip(legs, names, strict=True)):
-        wave = _wave(name, place < len(reaction.incoming))
-        vector = event.cm_vector(key)
+    for place, (leg, name) in enumerate(zip(legs, names, strict=True)):
+        wave = _wave(name, place < len(incoming), event.cm_vector(leg))
         if helicities is None:
-            own, before, after = physical_helicities(name), place, len(legs) - place - 1
-            states.append(_laid_out([wave(vector, value) for value in own], event, before, after))
+            waves = [wave(value) for value in _physical_helicities(find(name))]
+            states.append(_laid_out(waves, event, place, len(legs) - place - 1))
         else:
             rows = [combination[place] for combination in helicities]
-            known = {value: wave(vector, value) for value in set(rows)}
+            known = {value: wave(value) for value in set(rows)}
             states.append(_laid_out([known[value] for value in rows], event, 0, 0))
     return tuple(states)
 
@@ -79,21 +78,6 @@ def helicity_rows(event: Event, *flows: Complex) -> Complex:
     return np.stack(stacked, axis=1)
 
 
-def physical_helicities(name: str) -> tuple[int, ...]:
-    """The helicities of a particle of spin 0, ½ or 1, rising.
-
-    (−1, 1) for fermions (twice their value), photon and gluon, (−1,) for neutrinos, (1,) for antineutrinos, (−1, 0, 1)
-    for W and Z, (0,) for scalars.
-    """
-    particle = find(name)
-    if _is_fermion(particle):
-        chiral = particle.spin_states == 1
-        return (-1 if particle.pdg_id > 0 else 1,) if chiral else (-1, 1)
-    if particle.pdg_id in _MASSLESS_VECTORS:
-        return (-1, 1)
-    return (0,) if particle.spin_states == 1 else (-1, 0, 1)
-
-
 def _leg_keys(event: Event) -> tuple[str | int, ...]:
     incoming = ("beam_a", "beam_b")[: len(event.reaction.incoming)]
     return (*incoming, *range(1, len(event.reaction.outgoing) + 1))
@@ -105,23 +89,29 @@ def _is_fermion(particle: ParticleData) -> bool:
     return particle.spin_states == 2 and particle.pdg_id not in _MASSLESS_VECTORS
 
 
-@lru_cache(maxsize=256)
-def _wave(name: str, incoming: bool) -> Callable[[FourVector, int], Complex]:
-    """The wave function of a leg, by its momentum and helicity."""
-    particle = find(name)
-    if _is_fermion(particle):
-        spinor = u_in if particle.pdg_id > 0 else v_in
-        barred = incoming != (particle.pdg_id > 0)
-        return lambda vector, helicity: (
-            adjoint(spinor(frame(vector), helicity)) if barred else spinor(frame(vector), helicity)
-        )
+def _physical_helicities(particle: ParticleData) -> tuple[int, ...]:
+    """Rising: (−1, 1), neutrinos (−1,), antineutrinos (1,), W and Z (−1, 0, 1), scalars (0,)."""
     if particle.spin_states == 1:
-        return lambda _vector, _helicity: np.ones((), dtype=complex)
-    if particle.spin_states not in (2, 3):
+        return (-1 if particle.pdg_id > 0 else 1,) if _is_fermion(particle) else (0,)
+    return (-1, 1) if particle.spin_states == 2 else (-1, 0, 1)
+
+
+def _wave(name: str, incoming: bool, vector: FourVector) -> Callable[[int], Complex]:
+    """The wave function of a leg, by its helicity; what its helicities share is worked out once."""
+    particle = find(name)
+    if particle.spin_states not in (1, 2, 3):
         raise ValueError(f"leg: got {name}, expected a particle of spin 0, 1/2 or 1")
+    if _is_fermion(particle):
+        spinor, known = u_in if particle.pdg_id > 0 else v_in, frame(vector)
+        if incoming == (particle.pdg_id > 0):
+            return lambda helicity: spinor(known, helicity)
+        return lambda helicity: adjoint(spinor(known, helicity))
+    if particle.spin_states == 1:
+        return lambda _helicity: np.ones((), dtype=complex)
+    towards = direction(vector)
     if incoming:
-        return polarisation_vector
-    return lambda vector, helicity: np.conj(polarisation_vector(vector, helicity))
+        return lambda helicity: polarisation_in(vector, towards, helicity)
+    return lambda helicity: np.conj(polarisation_in(vector, towards, helicity))
 
 
 def _laid_out(waves: list[Complex], event: Event, before: int, after: int) -> Complex:
