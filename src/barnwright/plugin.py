@@ -3,8 +3,8 @@
     from barnwright.plugin import Event, Parameters, Process, SquaredAmplitude, parameter
 
 These names are the contract of the entry-point group ``barnwright.processes.v1``: they stay, and grow by fields with
-defaults. Beside them a plugin may import ``barnwright.amplitudes`` (spinors, currents, propagators, couplings) and, in its
-tests, ``barnwright.testing``.
+defaults. Beside them a plugin may import ``barnwright.amplitudes`` (spinors, currents, propagators, couplings) and
+``barnwright.testing``.
 """
 
 from __future__ import annotations
