@@ -91,11 +91,11 @@ def _results(results: Results) -> Iterator[RenderableType]:
 
 
 def derived_table(derived: Iterable[Derived]) -> Table:
-    """Asymmetries and ratios of the totals; those bin by bin are in the document."""
+    """Asymmetries, ratios and envelopes of the totals; those bin by bin are in the document."""
     table = titled("derived quantities", ("name", "value"))
     for entry in derived:
         value = "not known" if entry.value is None else str(Quantity(entry.value, entry.error, entry.unit))
-        table.add_row(Text(entry.name), Text(value))
+        table.add_row(Text(entry.name), Text(value + entry.spread))
     return table
 
 

@@ -106,9 +106,10 @@ def _derived(request: Request) -> list[Finding]:
     expected = f"the name of a variation ({', '.join(names) or 'there is none'})"
     of = tuple(("variations", index, "name") for index in range(len(names)))
     for index, entry in enumerate(request.derived):
-        for place, name in enumerate(entry.between or ()):
+        field, compared = entry.compared
+        for place, name in enumerate(compared):
             if name not in names:
-                where = ("derived", index, "between", place)
+                where = ("derived", index, field, place)
                 found.append(Finding(where, name, expected, nearest(name, names), of=(where, *of)))
     return found
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import Annotated, Any, Self
 
-from pydantic import model_validator
+from pydantic import SerializerFunctionWrapHandler, model_serializer, model_validator
 
 from barnwright.documents.base import Document, Expects, Name, Number, Observable
 from barnwright.documents.checks import NOTHING, Finding, refuse
@@ -15,13 +15,20 @@ Crack = Annotated[
 
 
 class CutChange(Document):
-    """What a variation says about a cut: only the name is needed, the rest is merged into the cut of that name."""
+    """What a variation says about a cut: only the name is needed, the rest is merged into the cut of that name.
+
+    A limit that is given as None is taken away; what is not given stays as it is, so it is never written.
+    """
 
     name: Name
     observable: Observable | None = None
     min: Number | None = None
     max: Number | None = None
     outside: Crack | None = None
+
+    @model_serializer(mode="wrap")
+    def _only_given(self, written: SerializerFunctionWrapHandler) -> dict[str, Any]:
+        return {name: value for name, value in written(self).items() if name in self.model_fields_set}
 
 
 class Cut(Document):

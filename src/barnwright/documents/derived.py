@@ -1,4 +1,4 @@
-"""Derived quantities: asymmetries and ratios."""
+"""Derived quantities: asymmetries, ratios and envelopes."""
 
 from __future__ import annotations
 
@@ -6,10 +6,15 @@ from typing import Annotated, Literal, Self
 
 from pydantic import Field, model_validator
 
-from barnwright.documents.base import Document, Expects, Name, Number, Observable
-from barnwright.documents.checks import NOTHING, Finding, refuse
+from barnwright.documents.base import MAX_ITEMS, Document, Expects, Name, Number, Observable
+from barnwright.documents.checks import NOTHING, Finding, refuse, repeated
 
 Between = Annotated[tuple[Name, Name], Expects("a list of two names of variations")]
+Members = Annotated[
+    tuple[Name, ...],
+    Field(min_length=1, max_length=MAX_ITEMS),
+    Expects(f"a list of 1 to {MAX_ITEMS} names of variations"),
+]
 
 
 def _differ(between: tuple[str, str] | None) -> list[Finding]:
@@ -43,6 +48,11 @@ class AsymmetryRequest(Document):
         refuse(found)
         return self
 
+    @property
+    def compared(self) -> tuple[str, tuple[str, ...]]:
+        """The field that names variations, and the names."""
+        return "between", self.between or ()
+
 
 class RatioRequest(Document):
     """first/second of two variations, of the total and bin by bin."""
@@ -56,9 +66,32 @@ class RatioRequest(Document):
         refuse(_differ(self.between))
         return self
 
+    @property
+    def compared(self) -> tuple[str, tuple[str, ...]]:
+        """The field that names variations, and the names."""
+        return "between", self.between
+
+
+class EnvelopeRequest(Document):
+    """The smallest and the largest of the request as it stands and of some variations, of the total and bin by bin."""
+
+    name: Name
+    kind: Literal["envelope"]
+    of: Members
+
+    @model_validator(mode="after")
+    def _agree(self) -> Self:
+        refuse(repeated(self.of, ("of",), last=None))
+        return self
+
+    @property
+    def compared(self) -> tuple[str, tuple[str, ...]]:
+        """The field that names variations, and the names."""
+        return "of", self.of
+
 
 DerivedRequest = Annotated[
-    AsymmetryRequest | RatioRequest,
+    AsymmetryRequest | RatioRequest | EnvelopeRequest,
     Field(discriminator="kind"),
-    Expects("a table whose kind is 'asymmetry' or 'ratio'"),
+    Expects("a table whose kind is 'asymmetry', 'ratio' or 'envelope'"),
 ]

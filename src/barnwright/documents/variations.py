@@ -41,4 +41,5 @@ class Variation(Document):
 
     def change(self) -> dict[str, Any]:
         """The override that this variation stands for: only what was given, without the name."""
-        return self.model_dump(mode="json", exclude_unset=True, exclude={"name"})
+        left_out = {"name", "beams"} if self.beams is None else {"name"}
+        return self.model_dump(mode="json", exclude_unset=True, exclude=left_out)

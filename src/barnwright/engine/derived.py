@@ -93,11 +93,8 @@ def undefined_ratios(derived: ByName[Derived], variations: ByName[Part], total: 
     found += [f"{text} in variation {part.name}" for part in variations for e in part.derived for text in _undefined(e)]
     if not found:
         return ()
-    return (
-        Note.build(
-            code="undefined_ratio", text=f"what it is divided by is 0, so this is not known: {'; '.join(found)}"
-        ),
-    )
+    text = f"not known, since what it is divided by is 0: {'; '.join(found)}"
+    return (Note.build(code="undefined_ratio", text=text),)
 
 
 def _undefined(derived: Derived) -> Iterator[str]:

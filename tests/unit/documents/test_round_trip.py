@@ -143,3 +143,14 @@ def _examined(override: dict[str, Any]) -> tuple[Request | None, tuple[Violation
         return Request.model_validate(merge(Request.from_toml(FULL).given(), override)), ()
     except RequestError as error:
         return None, error.violations
+
+
+def test_a_variation_of_a_cut_comes_back(small: dict[str, Any]) -> None:
+    """What it leaves to the cut of its name is left in the canonical form too."""
+    cut = {"name": "angle", "observable": "cos_theta(mu-)", "min": -0.5}
+    varied = {"name": "wide", "cuts": [{"name": "angle", "max": 0.9}]}
+    request = Request.model_validate({**small, "cuts": [cut], "variations": [varied]})
+    again = Request.from_json(request.canonical_json())
+    assert again.canonical_json() == request.canonical_json()
+    (found,) = again.varied(again.variations[0]).cuts
+    assert (found.observable, found.min, found.max) == ("cos_theta(mu-)", -0.5, 0.9)

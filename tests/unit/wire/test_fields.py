@@ -19,7 +19,7 @@ PAIRS = [
     (request_pb2.Bins, [documents.Bins]),
     (request_pb2.Variation, [documents.Variation]),
     (request_pb2.BeamsChange, [documents.BeamsChange]),
-    (request_pb2.DerivedRequest, [documents.AsymmetryRequest, documents.RatioRequest]),
+    (request_pb2.DerivedRequest, [documents.AsymmetryRequest, documents.RatioRequest, documents.EnvelopeRequest]),
     (request_pb2.Accuracy, [documents.Accuracy]),
     (request_pb2.Formula, [documents.Formula]),
     (request_pb2.FormulaPeak, [documents.FormulaPeak]),

@@ -152,7 +152,7 @@ class Histogram(_message.Message):
     def __init__(self, name: _Optional[str] = ..., observables: _Optional[_Iterable[str]] = ..., axis_units: _Optional[_Iterable[str]] = ..., per: _Optional[str] = ..., edges: _Optional[_Iterable[_Union[_values_pb2.Axis, _Mapping]]] = ..., values: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ..., errors: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ..., unit: _Optional[str] = ..., error_kind: _Optional[str] = ..., degrees_of_freedom: _Optional[float] = ..., underflow: _Optional[float] = ..., overflow: _Optional[float] = ..., underflow_error: _Optional[float] = ..., overflow_error: _Optional[float] = ..., solid_angles: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ...) -> None: ...
 
 class Derived(_message.Message):
-    __slots__ = ("name", "value", "error", "unit", "error_kind", "degrees_of_freedom", "histograms")
+    __slots__ = ("name", "value", "error", "unit", "error_kind", "degrees_of_freedom", "histograms", "low", "high")
     NAME_FIELD_NUMBER: _ClassVar[int]
     VALUE_FIELD_NUMBER: _ClassVar[int]
     ERROR_FIELD_NUMBER: _ClassVar[int]
@@ -160,6 +160,8 @@ class Derived(_message.Message):
     ERROR_KIND_FIELD_NUMBER: _ClassVar[int]
     DEGREES_OF_FREEDOM_FIELD_NUMBER: _ClassVar[int]
     HISTOGRAMS_FIELD_NUMBER: _ClassVar[int]
+    LOW_FIELD_NUMBER: _ClassVar[int]
+    HIGH_FIELD_NUMBER: _ClassVar[int]
     name: str
     value: float
     error: float
@@ -167,17 +169,23 @@ class Derived(_message.Message):
     error_kind: str
     degrees_of_freedom: float
     histograms: _containers.RepeatedCompositeFieldContainer[DerivedBins]
-    def __init__(self, name: _Optional[str] = ..., value: _Optional[float] = ..., error: _Optional[float] = ..., unit: _Optional[str] = ..., error_kind: _Optional[str] = ..., degrees_of_freedom: _Optional[float] = ..., histograms: _Optional[_Iterable[_Union[DerivedBins, _Mapping]]] = ...) -> None: ...
+    low: float
+    high: float
+    def __init__(self, name: _Optional[str] = ..., value: _Optional[float] = ..., error: _Optional[float] = ..., unit: _Optional[str] = ..., error_kind: _Optional[str] = ..., degrees_of_freedom: _Optional[float] = ..., histograms: _Optional[_Iterable[_Union[DerivedBins, _Mapping]]] = ..., low: _Optional[float] = ..., high: _Optional[float] = ...) -> None: ...
 
 class DerivedBins(_message.Message):
-    __slots__ = ("name", "values", "errors")
+    __slots__ = ("name", "values", "errors", "low", "high")
     NAME_FIELD_NUMBER: _ClassVar[int]
     VALUES_FIELD_NUMBER: _ClassVar[int]
     ERRORS_FIELD_NUMBER: _ClassVar[int]
+    LOW_FIELD_NUMBER: _ClassVar[int]
+    HIGH_FIELD_NUMBER: _ClassVar[int]
     name: str
     values: _values_pb2.Numbers
     errors: _values_pb2.Numbers
-    def __init__(self, name: _Optional[str] = ..., values: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ..., errors: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ...) -> None: ...
+    low: _values_pb2.Numbers
+    high: _values_pb2.Numbers
+    def __init__(self, name: _Optional[str] = ..., values: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ..., errors: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ..., low: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ..., high: _Optional[_Union[_values_pb2.Numbers, _Mapping]] = ...) -> None: ...
 
 class Part(_message.Message):
     __slots__ = ("name", "total", "histograms", "derived", "parameters", "masses", "notes", "replicates")

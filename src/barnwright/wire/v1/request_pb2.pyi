@@ -176,18 +176,20 @@ class BeamsChange(_message.Message):
     def __init__(self, polarisation: _Optional[_Mapping[str, float]] = ...) -> None: ...
 
 class DerivedRequest(_message.Message):
-    __slots__ = ("name", "kind", "observable", "at", "between")
+    __slots__ = ("name", "kind", "observable", "at", "between", "of")
     NAME_FIELD_NUMBER: _ClassVar[int]
     KIND_FIELD_NUMBER: _ClassVar[int]
     OBSERVABLE_FIELD_NUMBER: _ClassVar[int]
     AT_FIELD_NUMBER: _ClassVar[int]
     BETWEEN_FIELD_NUMBER: _ClassVar[int]
+    OF_FIELD_NUMBER: _ClassVar[int]
     name: str
     kind: str
     observable: str
     at: float
     between: _containers.RepeatedScalarFieldContainer[str]
-    def __init__(self, name: _Optional[str] = ..., kind: _Optional[str] = ..., observable: _Optional[str] = ..., at: _Optional[float] = ..., between: _Optional[_Iterable[str]] = ...) -> None: ...
+    of: _containers.RepeatedScalarFieldContainer[str]
+    def __init__(self, name: _Optional[str] = ..., kind: _Optional[str] = ..., observable: _Optional[str] = ..., at: _Optional[float] = ..., between: _Optional[_Iterable[str]] = ..., of: _Optional[_Iterable[str]] = ...) -> None: ...
 
 class Accuracy(_message.Message):
     __slots__ = ("relative", "absolute", "per_bin", "bin_floor", "max_evaluations", "max_seconds", "rounds", "method")
