@@ -39,6 +39,8 @@ ROWS = tuple((electron, -electron, z, 0) for electron in (-1, 1) for z in (-1, 0
 """Helicities that do not vanish: electron, positron, Z, H."""
 ELECTRON = -1.0, -0.5
 """Charge and isospin."""
+TINY = np.finfo(float).tiny
+"""What the momentum of a Z at rest is divided by: its sin θ is 0."""
 
 
 class HiggsStrahlungInputs(inputs.ElectroweakInputs):
@@ -66,7 +68,7 @@ def amplitudes(event: Event, parameters: HiggsStrahlungInputs) -> Complex:
     z, mass = event.cm_vector(1), event.mass(1)
     cosine = z.cos_theta * event.cm_vector("beam_a").cos_theta
     along, against = mass * (1 + cosine), mass * (1 - cosine)
-    across = z.energy * np.sqrt(2 * (1 - cosine) * (1 + cosine))
+    across = np.sqrt(2) * z.energy * z.pt / np.maximum(z.momentum, TINY)
     left, right = coupled.left(*ELECTRON), coupled.right(ELECTRON[0])
     rows = (left * along, left * across, left * against, right * against, -right * across, right * along)
     scale = coupled.neutral * np.sqrt(event.s / 2) * _propagator(event.s, parameters)
