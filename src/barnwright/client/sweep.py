@@ -2,30 +2,24 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
-from math import prod
 from typing import Any, overload
 
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.documents import Prediction
+from barnwright.documents import Prediction, Scanned
 
 Array = NDArray[np.float64]
 
 
-@dataclass(frozen=True, slots=True)
-class RemoteSweep(Sequence[Prediction]):
+@dataclass(frozen=True)
+class RemoteSweep(Scanned):
     """The answers of a scan; ``over`` are the values by key, the first key varies slowest."""
 
     over: Mapping[str, tuple[Any, ...]]
     predictions: tuple[Prediction, ...]
-
-    @property
-    def shape(self) -> tuple[int, ...]:
-        """How many values each key has."""
-        return tuple(len(values) for values in self.over.values())
 
     @property
     def unit(self) -> str:
@@ -43,20 +37,9 @@ class RemoteSweep(Sequence[Prediction]):
         return _numbers([prediction.total.error for prediction in self.predictions]).reshape(self.shape)
 
     @property
-    def points(self) -> tuple[dict[str, Any], ...]:
-        """The values of the scanned keys at every point, in the order of the predictions."""
-        places = (np.unravel_index(number, self.shape) for number in range(prod(self.shape)))
-        return tuple(
-            {key: values[int(place[axis])] for axis, (key, values) in enumerate(self.over.items())} for place in places
-        )
-
-    @property
     def status(self) -> str:
         """The status that all points share."""
         return self.predictions[0].status
-
-    def __len__(self) -> int:
-        return len(self.predictions)
 
     @overload
     def __getitem__(self, index: int) -> Prediction: ...

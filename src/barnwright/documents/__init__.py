@@ -7,8 +7,9 @@ from barnwright.documents.axes import plain_axes
 from barnwright.documents.base import Document
 from barnwright.documents.beams import ColliderBeams, DecayBeams, FixedTargetBeams
 from barnwright.documents.by_name import ByName
+from barnwright.documents.curves import Curve, Curves
 from barnwright.documents.cuts import Cut, CutChange
-from barnwright.documents.derived import AsymmetryRequest, RatioRequest
+from barnwright.documents.derived import AsymmetryRequest, EnvelopeRequest, RatioRequest
 from barnwright.documents.description import ParameterDescription, ProcessDescription, ProcessSummary
 from barnwright.documents.estimate import Estimate, Total
 from barnwright.documents.findings import violations_of
@@ -21,6 +22,7 @@ from barnwright.documents.prediction import Prediction
 from barnwright.documents.remainder import checked, completed, remainder_of
 from barnwright.documents.request import Request
 from barnwright.documents.results import Derived, DerivedBins, Part
+from barnwright.documents.scanned import Scanned
 from barnwright.documents.variations import BeamsChange, Variation
 
 __all__ = [
@@ -31,6 +33,8 @@ __all__ = [
     "ByName",
     "ColliderBeams",
     "Covariance",
+    "Curve",
+    "Curves",
     "Cut",
     "CutChange",
     "DecayBeams",
@@ -38,6 +42,7 @@ __all__ = [
     "DerivedBins",
     "Diagnostics",
     "Document",
+    "EnvelopeRequest",
     "Estimate",
     "FixedTargetBeams",
     "Formula",
@@ -53,6 +58,7 @@ __all__ = [
     "RatioRequest",
     "Request",
     "Run",
+    "Scanned",
     "Total",
     "Variation",
     "checked",

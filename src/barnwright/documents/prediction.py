@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import Annotated, Literal, Self
+from typing import TYPE_CHECKING, Annotated, Literal, Self
 
 from pydantic import Field, ValidationError
 
@@ -18,6 +18,12 @@ from barnwright.documents.notes import Diagnostics, Note, Run
 from barnwright.documents.request import Request
 from barnwright.documents.results import Derived, Masses, Part, Results, Values
 from barnwright.errors import RequestError
+from barnwright.pictures import picture
+
+if TYPE_CHECKING:
+    from os import PathLike
+
+    from matplotlib.figure import Figure
 
 Status = Literal["converged", "evaluation_limit", "time_limit", "cancelled", "suspect"]
 Method = Literal["closed_form", "quadrature", "monte_carlo"]
@@ -82,6 +88,15 @@ class Prediction(Results):
     def same_bits(self, other: Prediction) -> bool:
         """Whether the two are the same to the last bit, ``run`` apart."""
         return self.canonical_json() == other.canonical_json()
+
+    def plot(self, path: str | PathLike[str] | None = None) -> Figure:
+        """The picture of the histograms: a matplotlib figure, written to ``path`` (png, pdf or svg) if one is given.
+
+        Raises:
+            RequestError: when there is no histogram, or the path names no picture.
+            BarnwrightError: when matplotlib (extra ``plot``) is missing.
+        """
+        return picture(self, path)
 
     @property
     def title(self) -> str:
