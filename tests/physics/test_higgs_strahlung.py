@@ -229,6 +229,20 @@ def test_what_the_law_cannot_use_is_refused(changes: dict[str, Any], message: st
         )
 
 
+def test_exchanged_beams_give_the_same() -> None:
+    """|M|² is the same with the momenta of e- and e+ exchanged, as claimed; polarised, with (P₋, P₊) as (−P₊, −P₋)."""
+    assert process.claims is not None
+    assert process.claims.exchange == (("beam_a", "beam_b"),)
+    for law in process.laws:
+        here = law.squared(event(), GIVEN)
+        assert here == pytest.approx(np.asarray(law.squared(event(-1), GIVEN)), rel=1e-13, abs=0)
+        there = Event(process.legs, TwoBody(collision(), MASSES, 1 + ANGLES, 1 - ANGLES, 0.7))
+        assert here == pytest.approx(np.asarray(law.squared(there, GIVEN)), rel=1e-12, abs=0)
+    law = process.laws[1]
+    one, other = (law.squared(event(), GIVEN, None, beams) for beams in ((0.7, -0.2), (0.2, -0.7)))
+    assert one == pytest.approx(other, rel=1e-13, abs=0)
+
+
 def test_it_passes_the_conformance_kit() -> None:
     """Load checks, closed form against law, law against law; alternatives are valid parameters."""
     check_process(process)

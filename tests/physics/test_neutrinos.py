@@ -41,7 +41,7 @@ COUPLINGS = {
 """(g_L, g_R) for neutrinos, (g_R, g_L) for antineutrinos: G. 't Hooft, Phys. Lett. B 37 (1971) 195."""
 
 CONTACT = inverse_muon_decay.FermiInputs(fermi_constant=FERMI)
-GIVEN = muon_neutrino.parameters(fermi_constant=FERMI, sin2_theta_w=SIN2)  # type: ignore[call-arg]
+GIVEN = muon_neutrino.parameters(fermi_constant=FERMI, sin2_theta_w=SIN2)
 ANGLES = np.array([[-1.0, -1 + 1e-9, -0.7, 0.0, 0.3, 0.99, 1 - 1e-9, 1.0]])
 ENERGIES = [1e-6, 1e-4, 3e-3, 1.0, 1e3]
 """Of the neutrino in the electron's rest frame, GeV: from far below the electron's mass to far above."""
@@ -150,6 +150,31 @@ def all_rows(process: Process) -> list[tuple[int, ...]]:
     return [(own, before, own, after) for before in (-1, 1) for after in (-1, 1)]
 
 
+class Crossed:
+    """An event with the neutrino moved to the other side: p_ν and p_ν' exchanged, both with the other sign."""
+
+    def __init__(self, events: Event) -> None:
+        self.events, self.mass = events, events.mass
+
+    def dot(self, first: str | int, second: str | int) -> Any:
+        """The four-product of the exchanged momenta."""
+        other = {"beam_a": 1, 1: "beam_a"}
+        signs = (-1) ** sum(leg in other for leg in (first, second))
+        return signs * self.events.dot(other.get(first, first), other.get(second, second))
+
+
+@pytest.mark.parametrize(("process", "other"), [ELASTIC[:2], ELASTIC[2:]], ids=["muon", "electron"])
+def test_antineutrino_is_the_neutrino_crossed(process: Process, other: Process) -> None:
+    """The law of one with p_ν and −p_ν' exchanged is the law of the other to 1e-13, as both claim."""
+    for one, two in ((process, other), (other, process)):
+        assert one.claims is not None
+        assert one.claims.crossing == (f"electroweak/{two.name}",)
+        for energy in ENERGIES:
+            crossed = one.laws[0].squared(Crossed(event(one, energy)), GIVEN)
+            expected = two.laws[0].squared(event(two, energy), GIVEN)
+            assert crossed == pytest.approx(expected, rel=1e-13, abs=0)
+
+
 @pytest.mark.parametrize("energy", ENERGIES)
 @pytest.mark.parametrize("process", ELASTIC, ids=by_name)
 def test_elastic_closed_form_is_the_published_recoil_spectrum(process: Process, energy: float) -> None:
@@ -233,7 +258,7 @@ def test_inverse_decay_by_trace_spinors_and_published_formula(energy: float) -> 
     amplitudes = 2 * np.sqrt(2) * FERMI * helicity_rows(events, line)
     expected = np.sum(np.abs(amplitudes) ** 2, axis=(0, 1)) / 2
     for law in process.laws:
-        found = np.broadcast_to(law.squared(events, CONTACT), ANGLES.shape)  # type: ignore[union-attr]
+        found = np.broadcast_to(law.squared(events, CONTACT), ANGLES.shape)
         assert found == pytest.approx(expected, rel=1e-12, abs=0)
     with mpmath.workdps(30):
         neutrino, electron, muon, after = momenta(energy, 0.3, MUON)
