@@ -96,7 +96,7 @@ def _propagator(s: Array, parameters: HiggsStrahlungInputs) -> Complex:
 process = Process(
     name="higgs-strahlung",
     reaction="e- e+ -> Z0 H0",
-    summary="a Higgs boson radiated off a Z, the electron massless, the Z stable",
+    summary="a Higgs boson and a Z from e- e+ through a Z, the electron massless, the final Z stable",
     references=(
         "B. L. Ioffe, V. A. Khoze, Sov. J. Part. Nucl. 9 (1978) 50",
         "B. W. Lee, C. Quigg, H. B. Thacker, Phys. Rev. D 16 (1977) 1519",

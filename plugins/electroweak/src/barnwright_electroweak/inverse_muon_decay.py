@@ -60,7 +60,7 @@ def cumulative(x: Array, point: Point, parameters: FermiInputs) -> Array:
 process = Process(
     name="inverse-muon-decay",
     reaction="nu(mu) e- -> mu- nu(e)",
-    summary="a muon neutrino turns an electron into a muon, in the contact limit, both masses exact",
+    summary="muon neutrinos turn electrons into muons, in the contact limit, both masses exact",
     references=(
         "G. 't Hooft, Phys. Lett. B 37 (1971) 195",
         "P. Vilain et al. (CHARM II), Phys. Lett. B 364 (1995) 121",
@@ -83,7 +83,7 @@ process = Process(
         "σ by about 0.4 %",
     ),
     cautions=(
-        "Radiative corrections, about 3 % of σ near 20 GeV, are left out.",
+        "Radiative corrections, a few per cent of σ, are left out.",
         BOUND_ELECTRONS,
         RADIATION,
     ),

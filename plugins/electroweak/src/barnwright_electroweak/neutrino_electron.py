@@ -117,7 +117,7 @@ def _process(contact: Contact, neutrino: str, word: str, crossed: str) -> Proces
     return Process(
         name=_name(word),
         reaction=f"{neutrino} e- -> {neutrino} e-",
-        summary=f"{word} on an electron, elastic, in the contact limit, the electron's mass exact",
+        summary=f"elastic scattering of {word}s on electrons in the contact limit, the electron's mass exact",
         references=(
             "G. 't Hooft, Phys. Lett. B 37 (1971) 195",
             "PDG Review 2024, Electroweak model and constraints on new physics, section 10.3",
