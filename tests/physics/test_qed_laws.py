@@ -16,7 +16,6 @@ from scipy import constants
 from barnwright.event import Event, Point
 from barnwright.kinematics import Collision, TwoBody
 from barnwright.process import Process
-from barnwright.testing import check_process
 
 from . import traces
 
@@ -223,19 +222,3 @@ def gauss(density: Any, low: Any, high: Any) -> Any:
     middle, half = (low + high) / 2, (high - low) / 2
     root = 1 / mpmath.sqrt(3)
     return half * (density(middle - half * root) + density(middle + half * root))
-
-
-@pytest.mark.parametrize("process", [muon_pair.process, tau_pair.process, compton.process], ids=lambda p: p.name)
-def test_every_process_passes_the_conformance_kit(process: Process) -> None:
-    """Load checks, closed form against law, and the claimed exchange hold for each process of the plugin."""
-    check_process(process)
-
-
-@pytest.mark.parametrize("process", [muon_pair.process, tau_pair.process, compton.process], ids=lambda p: p.name)
-def test_every_process_says_what_a_user_must_know(process: Process) -> None:
-    """References, order, validity and the radiation caution are stated."""
-    assert process.references
-    assert process.order == "tree"
-    assert process.valid is not None
-    assert process.valid.text
-    assert any("radiation-protection expert" in caution for caution in process.cautions)
