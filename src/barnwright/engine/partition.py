@@ -54,11 +54,7 @@ class Partition:
     def inside_cuts(self) -> Panels:
         """The panels with those that are cut away shrunk to nothing, at their end off the pole."""
         cut_away = self.components[0] == OUTSIDE
-        if not cut_away.any():
-            return self.panels
-        end = np.maximum(self.panels.left, self.panels.right)
-        left, right = (np.where(cut_away, end, x) for x in (self.panels.left, self.panels.right))
-        return Panels(self.panels.side, left, right, self.panels.wobble, self.panels.graze)
+        return self.panels.only(~cut_away) if cut_away.any() else self.panels
 
 
 def partition_of(setting: Setting, layout: Layout, rows: Rows) -> Partition:
@@ -76,7 +72,7 @@ def partition_of(setting: Setting, layout: Layout, rows: Rows) -> Partition:
 
     def values(observable: Observable) -> Array:
         found = rows.values(observable, None, middle)
-        return found if observable not in searched else _snapped(found, wanted[observable])
+        return found if observable not in searched else snapped(found, wanted[observable])
 
     return _partition((setting.cuts, layout), panels, values, undefined)
 
@@ -105,7 +101,7 @@ def _partition(
     return Partition(panels, tuple(memberships(layout, known, passes(cuts, known))), undefined)
 
 
-def _snapped(values: Array, levels: Array) -> Array:
+def snapped(values: Array, levels: Array) -> Array:
     """The values, those within rounding of a level put on it: noise about a constant does not scatter it."""
     if levels.size == 0:
         return values

@@ -39,13 +39,13 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
     else:
         integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), integrand.count)
     if setting.beams.given == "kinetic":
-        rounding = np.asarray(integrand.tiled(_threshold_rounding(rows)))
+        rounding = np.asarray(integrand.tiled(threshold_rounding(rows)))
         integrals = replace(integrals, error=integrals.error + rounding * np.abs(integrals.value))
     integrals.counts[integrand.signed, NEGATIVE] = 0
     return _collected(integrals, partition, integrand, layout)
 
 
-def _threshold_rounding(rows: Rows) -> Array:
+def threshold_rounding(rows: Rows) -> Array:
     """What a few ε of s − (m_a + m_b)² mean for σ ∝ √(√s − M) above a threshold M, as a share of σ; shape (row, 1)."""
     collision, masses = rows.collision, rows.masses
     before, after = masses[0] + masses[1], masses[2] + masses[3]
@@ -80,7 +80,7 @@ def _heights(integrand: Integrand, panels: Panels) -> tuple[Array, Array]:
     if ends.one_plus.shape[0] == integrand.count:
         ends = Ends(ends.one_minus[: rows.count], ends.one_plus[: rows.count])
     point = Point.of(rows.reaction, rows.collision, rows.masses)
-    x = _natural_values(process.closed_forms[setting.closed_form].observable, rows, ends)
+    x = natural_values(process.closed_forms[setting.closed_form].observable, rows, ends)
     found = [cumulative(process, setting, x, point, integrand.parameters, parts) for parts in integrand.parts]
     return np.asarray(integrand.tiled(x)), found[0] if len(found) == 1 else np.concatenate(found)
 
@@ -89,19 +89,12 @@ def _with_quadrature(
     integrand: Integrand, panels: Panels, result: PanelIntegrals, small: NDArray[np.bool_]
 ) -> PanelIntegrals:
     """The same integrals with the small ones done by quadrature."""
-    chosen = np.nonzero(small.any(axis=0))[0]
-    some = Panels(
-        panels.side[chosen], panels.left[:, chosen], panels.right[:, chosen], panels.wobble[:, :0], panels.graze[:, :0]
-    )
-    use = small[:, chosen]
-    some = replace(some, left=np.where(use, some.left, some.right))
-    fine = integrate_panels(integrand.density(), some, integrand.scales(), integrand.count)
-    result.value[:, chosen] = np.where(use, fine.value, result.value[:, chosen])
-    result.error[:, chosen] = np.where(use, fine.error, result.error[:, chosen])
+    fine = integrate_panels(integrand.density(), panels.only(small), integrand.scales(), integrand.count)
+    result.value[small], result.error[small] = fine.value[small], fine.error[small]
     return PanelIntegrals(result.value, result.error, result.counts + fine.counts, fine.worst)
 
 
-def _natural_values(text: str, rows: Rows, ends: Ends) -> Array:
+def natural_values(text: str, rows: Rows, ends: Ends) -> Array:
     """A closed form's observable at locations, with +z along beam a whatever the request says."""
     observable = compile_observable(text, rows.reaction, numbered=True)
     if (
@@ -130,7 +123,7 @@ def _collected(integrals: PanelIntegrals, partition: Partition, integrand: Integ
             add_panels(answer.error, whole[:, :-1], slack)
     undefined = np.broadcast_to(partition.undefined, (integrand.count,))
     counts = np.column_stack([integrals.counts, undefined])
-    return Answer(answer.value, answer.error, counts, _worst(integrals, integrand))
+    return Answer(answer.value, answer.error, counts, worst_points(integrals, integrand))
 
 
 def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:
@@ -143,7 +136,7 @@ def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None
     return np.maximum(mean[:, 1:], mean[:, :-1])
 
 
-def _worst(integrals: PanelIntegrals, integrand: Integrand) -> tuple[WorstPoint, ...]:
+def worst_points(integrals: PanelIntegrals, integrand: Integrand) -> tuple[WorstPoint, ...]:
     """The first point at which the law was not finite, or negative where it must not be."""
     if integrals.worst is None or not integrals.counts[:, [NON_FINITE, NEGATIVE]].any():
         return ()

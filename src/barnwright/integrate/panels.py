@@ -11,7 +11,7 @@ from functools import cached_property
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.integrate.gauss import FIRST_ORDER, gauss_legendre
+from barnwright.integrate.gauss import lobatto
 from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers, ends_of
 from barnwright.integrate.roots import Crossings
 
@@ -44,13 +44,36 @@ class Panels:
         """Width in c."""
         return np.abs(self.right - self.left)
 
+    def only(self, chosen: NDArray[np.bool_]) -> Panels:
+        """The same panels with all but the chosen shrunk to nothing, at their end off the pole."""
+        end = np.maximum(self.left, self.right)
+        left, right = (np.where(chosen, x, end) for x in (self.left, self.right))
+        return Panels(self.side, left, right, self.wobble, self.graze)
+
+    def shared_ends(self) -> tuple[Integers, Array]:
+        """Hemisphere and x of the ends that neighbours share, (panel + 1,) and (row or 1, panel + 1), as c rises.
+
+        A panel without width lies at its end off the pole, so each end is taken from the panel that lies beyond it.
+        """
+        backward = int(np.count_nonzero(self.side == BACKWARD))
+        x = np.concatenate(
+            [self.left[:, :1], self.right[:, :backward], self.left[:, backward + 1 :], self.right[:, -1:]], axis=1
+        )
+        side = np.concatenate([self.side[:1], self.side[:backward], self.side[backward + 1 :], self.side[-1:]])
+        return side, x
+
     @cached_property
-    def first_nodes(self) -> tuple[Ends, Array]:
-        """The nodes of the first order with no map, (row or 1, node × panel), and the widths of the panels in c."""
-        nodes, _ = gauss_legendre(FIRST_ORDER)
-        x = self.left[:, None, :] + (self.right - self.left)[:, None, :] * nodes[:, None]
-        ends = ends_of(np.broadcast_to(self.side, x.shape), x)
-        return Ends(*(e.reshape(e.shape[0], -1) for e in ends)), self.width
+    def first_nodes(self) -> Ends:
+        """The inner nodes of the first rule, node after node, then the shared ends; (row or 1, 4 × panel + 1)."""
+        nodes = lobatto()[0][1:-1]
+        inner = self.left[:, None, :] + (self.right - self.left)[:, None, :] * nodes[:, None]
+        return self.located(inner)
+
+    def located(self, inner: Array) -> Ends:
+        """The locations x of inner nodes, (row or 1, node, panel), and of the shared ends after them."""
+        side, x = self.shared_ends()
+        sides = np.concatenate([np.tile(self.side, inner.shape[1]), side])
+        return ends_of(sides[None], np.concatenate([inner.reshape(inner.shape[0], -1), x], axis=1))
 
     def middle(self) -> Ends:
         """A location inside each panel, shape (row or 1, panel): the geometric mean where the ends lie far apart."""

@@ -1,12 +1,13 @@
-"""Gauss–Legendre quadrature of a density over panels, refined where a panel asks for it.
+"""Gauss quadrature of a density over panels, refined where a panel asks for it.
 
-A panel is accepted when the fine rule and the coarser one agree to `TOLERANCE` of its own integral; otherwise the
-order rises to 40 and then the panel is halved, near a pole geometrically (x from the pole keeps its digits). What a
+A panel is accepted when the first rule and the coarser one in it agree to `TOLERANCE` of its own integral; otherwise
+the order rises to 40 and then the panel is halved, near a pole geometrically (x from the pole keeps its digits). What a
 panel does depends on that panel alone, so a point of a scan has the bits of a point asked for by itself.
 """
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import replace
 
 import numpy as np
@@ -14,7 +15,7 @@ from numpy.typing import NDArray
 
 from barnwright.integrate.axis_map import from_map, to_map
 from barnwright.integrate.extrema import EPSILON
-from barnwright.integrate.gauss import FIRST_ORDER, ORDERS, embedded_weights, end_weights, gauss_legendre
+from barnwright.integrate.gauss import ORDERS, lobatto
 from barnwright.integrate.panel_integrals import (
     COUNTED,
     EVALUATIONS,
@@ -26,7 +27,7 @@ from barnwright.integrate.panel_integrals import (
 )
 from barnwright.integrate.panels import Panels
 from barnwright.integrate.pieces import Pieces, evaluated
-from barnwright.integrate.polar_axis import Ends, Integers, ends_of
+from barnwright.integrate.polar_axis import Ends, Integers
 
 Array = NDArray[np.float64]
 
@@ -59,27 +60,31 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
 def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> PanelIntegrals:
     left, right = to_map(panels.left, scale), to_map(panels.right, scale)
     ends, measure = _first_nodes(panels, scale, left, right)
-    nodes, weights = gauss_legendre(FIRST_ORDER)
-    found = density(None, ends)
-    shape = (rows, nodes.size * panels.side.size)
-    values = (found if found.shape == shape else np.broadcast_to(found, shape)).reshape(rows, nodes.size, -1) * measure
-    fine = _weighted(values, weights)
-    error = np.abs(_weighted(values, weights - embedded_weights()))
-    error += _unseen(density, panels.side, scale, (left, right), values)
+    count = panels.side.size
+    found = np.broadcast_to(density(None, ends), (rows, 4 * count + 1))
+    inner, edges = found[:, : 3 * count].reshape(rows, 3, count), found[:, 3 * count :]
+    values = [edges[:, :-1], inner[:, 0], inner[:, 1], inner[:, 2], edges[:, 1:]]
+    values = [value * measure[:, k % measure.shape[1]] for k, value in enumerate(values)]
+    _, weights, embedded = lobatto()
+    fine, error = _weighted(values, weights), np.abs(_weighted(values, weights - embedded))
     counts = np.zeros((rows, len(COUNTED)))
-    counts[:, EVALUATIONS] = FIRST_ORDER * np.count_nonzero(panels.width, axis=1)
+    counts[:, EVALUATIONS] = 1 + 4 * np.count_nonzero(panels.width, axis=1)
     result = PanelIntegrals(fine, error, counts)
 
     def located(bad: Integers) -> Located:
-        row, node, panel = bad
-        place = (min(row, ends.one_plus.shape[0] - 1), node * panels.side.size + panel)
+        row, node = bad
+        place = (min(int(row), ends.one_plus.shape[0] - 1), node)
         return int(row), float(ends.one_minus[place]), float(ends.one_plus[place])
 
-    result = inspected(result, values, np.arange(rows), located)
-    size = fine if result.clean else _weighted(np.abs(values), weights)
-    todo = np.nonzero(error > TOLERANCE * size)
+    wide = np.broadcast_to(np.tile(panels.width > 0, 3), (rows, 3 * count))
+    result = inspected(result, np.where(wide, found[:, : 3 * count], 0.0), np.arange(rows), located)
+    size = fine if result.clean else _weighted([np.abs(value) for value in values], weights)
+    open_end = ~(error < np.inf)
+    if open_end.any():  # not finite at an end, as at a pole: rules without ends decide
+        fine[open_end], error[open_end] = 0.0, np.inf
+    todo = np.nonzero(open_end | (error > TOLERANCE * size))
     if todo[0].size:
-        shape = (rows, panels.side.size)
+        shape = (rows, count)
         low, high, width = (np.broadcast_to(a, shape)[todo] for a in (left, right, scale))
         pieces = Pieces(todo[0], todo[1], panels.side[todo[1]], low, high, width)
         result = _refined(density, pieces, result)
@@ -87,35 +92,20 @@ def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> Pa
 
 
 def _first_nodes(panels: Panels, scale: Array, left: Array, right: Array) -> tuple[Ends, Array]:
-    """The nodes of the first order, (row or 1, node × panel), and dc, (row or 1, node or 1, panel)."""
+    """The nodes of the first rule, and dc, shape (row or 1, node or 1, panel)."""
     if np.isinf(scale).all():
-        ends, width = panels.first_nodes
-        return ends, width[:, None, :]
-    nodes, _ = gauss_legendre(FIRST_ORDER)
+        return panels.first_nodes, panels.width[:, None, :]
+    nodes = lobatto()[0]
     span = (right - left)[:, None, :]
     x, slope = from_map(left[:, None, :] + span * nodes[:, None], scale[:, None, :])
-    ends = ends_of(np.broadcast_to(panels.side, x.shape), x)
-    return Ends(*(e.reshape(e.shape[0], -1) for e in ends)), slope * np.abs(span)
+    return panels.located(x[:, 1:-1]), np.broadcast_to(slope * np.abs(span), x.shape)
 
 
-def _unseen(density: Density, side: Integers, scale: Array, between: tuple[Array, Array], values: Array) -> Array:
-    """What may hide between the outermost nodes and the ends of panels, (row, panel); `pieces` says how it shows."""
-    left, right = between
-    x, slope = from_map(np.stack([left, right], axis=1), scale[:, None, :])
-    ends = ends_of(np.broadcast_to(side, x.shape), x)
-    found = np.asarray(density(None, Ends(*(e.reshape(e.shape[0], -1) for e in ends))))
-    found = np.broadcast_to(found, (len(values), 2 * side.size)).reshape(len(values), 2, -1)
-    led = np.stack([_weighted(values, weights) for weights in end_weights(FIRST_ORDER)], axis=1)
-    missed = gauss_legendre(FIRST_ORDER)[0][0] * np.abs(found * slope * np.abs(right - left)[:, None, :] - led)
-    return np.asarray(np.where(np.isfinite(missed), missed, 0.0).sum(axis=1))
-
-
-def _weighted(values: Array, weights: Array) -> Array:
-    """The weighted sum over the middle axis, node by node in a fixed order, so that bits never depend on the batch."""
-    total: Array = values[:, 0] * weights[0]
-    for k in range(1, weights.size):
-        if weights[k]:
-            total += values[:, k] * weights[k]
+def _weighted(values: Sequence[Array], weights: Array) -> Array:
+    """The weighted sum, node by node in a fixed order, so that bits never depend on the batch."""
+    total: Array = values[0] * weights[0]
+    for value, weight in zip(values[1:], weights[1:], strict=True):
+        total += value * weight
     return total
 
 
@@ -123,7 +113,7 @@ def _refined(density: Density, pieces: Pieces, result: PanelIntegrals) -> PanelI
     """Raise the order of the pieces that need it, then halve what is left."""
     value, error = result.value, result.error
     before = value[pieces.row, pieces.panel]
-    for order in ORDERS[1:]:
+    for order in ORDERS:
         now, result = evaluated(density, pieces, order, result)
         change = np.abs(now.integral - before) + now.unseen
         value[pieces.row, pieces.panel], error[pieces.row, pieces.panel] = now.integral, change
