@@ -128,11 +128,12 @@ def add_panels(target: Array, component: Integers, amounts: Array) -> None:
     """
     rows, components = target.shape
     if component.shape[0] == 1 and rows >= MANY_ROWS:
-        panels, summed = amounts.shape[1], np.zeros_like(target)
-        for panel, place in enumerate(np.broadcast_to(component, (1, panels))[0].tolist()):
+        panels, summed = amounts.shape[1], np.zeros((components, rows))
+        places = np.broadcast_to(component, (1, panels))[0].tolist()
+        for place, column in zip(places, np.ascontiguousarray(amounts.T), strict=True):
             if place != OUTSIDE:
-                summed[:, place] += amounts[:, panel]
-        target += summed
+                summed[place] += column
+        target += summed.T
         return
     shape = np.broadcast_shapes(amounts.shape, component.shape, (rows, 1))
     flat = np.where(component == OUTSIDE, components, component) + (components + 1) * np.arange(rows)[:, None]

@@ -7,6 +7,8 @@ from itertools import product
 from math import prod
 from typing import Any, NamedTuple
 
+import numpy as np
+
 from barnwright.documents import Request
 from barnwright.documents.merge import split_key
 from barnwright.errors import RequestError, Violation, nearest, show
@@ -57,10 +59,9 @@ def _checked(key: str, values: Sequence[Any]) -> list[Violation]:
         ]
     if len(values) == 0:
         return [Violation(f"over.{key}", "[]", "a list of at least one value")]
-    if is_energy(key):
-        for value in values:
-            if isinstance(value, bool) or not isinstance(value, (int, float)):
-                return [Violation(f"over.{key}", show(value), "numbers (GeV)")]
+    if is_energy(key) and not set(map(type, values)) <= {int, float}:
+        wrong = next(value for value in values if isinstance(value, bool) or not isinstance(value, (int, float)))
+        return [Violation(f"over.{key}", show(wrong), "numbers (GeV)")]
     return []
 
 
@@ -101,12 +102,10 @@ def _points(
     keys: list[str], over: Mapping[str, Sequence[Any]], shape: tuple[int, ...], fixed: dict[int, int]
 ) -> tuple[tuple[int, ...], dict[str, tuple[Any, ...]]]:
     """Numbers of the points in which the slow keys are fixed, and every key's value at each."""
-    numbers, places = [], []
-    for place in product(*([fixed[k]] if k in fixed else range(n) for k, n in enumerate(shape))):
-        number = 0
-        for index, n in zip(place, shape, strict=True):
-            number = number * n + index
-        numbers.append(number)
-        places.append(place)
-    columns = {key: tuple(over[key][place[k]] for place in places) for k, key in enumerate(keys)}
-    return tuple(numbers), columns
+    if not shape:
+        return (0,), {}
+    grids = np.indices([1 if k in fixed else n for k, n in enumerate(shape)]).reshape(len(shape), -1)
+    places = [grids[k] + fixed.get(k, 0) for k in range(len(shape))]
+    numbers = tuple(np.ravel_multi_index(places, shape).tolist())
+    columns = {key: tuple(map(over[key].__getitem__, places[k].tolist())) for k, key in enumerate(keys)}
+    return numbers, columns
