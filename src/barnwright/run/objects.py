@@ -2,12 +2,11 @@
 
 from __future__ import annotations
 
-import hashlib
 from dataclasses import dataclass
-from typing import Any
 
 from barnwright.engine import ProcessSource
 from barnwright.process import Process
+from barnwright.run.object_digest import object_digest
 
 
 @dataclass(frozen=True, slots=True)
@@ -19,10 +18,5 @@ class LoadedObject:
 
 
 def loaded_object(process: Process) -> LoadedObject:
-    """The object and its identity; the digest covers its reaction and the byte code of its laws."""
-    digest = hashlib.sha256(process.reaction.encode())
-    for law in (*process.laws, *process.closed_forms):
-        function: Any = getattr(law, "function", None) or getattr(law, "cumulative", None)
-        code = getattr(function, "__code__", None)
-        digest.update(code.co_code + repr(code.co_consts).encode() if code is not None else repr(law).encode())
-    return LoadedObject(process, ProcessSource(process.name, "", "", digest.hexdigest()))
+    """The object and its identity, whose digest covers its declaration and the code that its numbers come from."""
+    return LoadedObject(process, ProcessSource(process.name, "", "", object_digest(process)))
