@@ -118,11 +118,11 @@ def strength(parameters: HiggsStrahlungInputs) -> float:
 
 
 def exchanged(parameters: HiggsStrahlungInputs) -> Any:
-    """The Z's propagator written out, (energy, 1): a pole at M² − iMΓ in units of 1 + Γ²/M², or a running width."""
+    """The Z's propagator written out, (energy, 1): a pole at M² − iMΓ, or a width that runs."""
     s, mass, width = np.square(ENERGIES), parameters.z_mass, parameters.z_width
     if parameters.width_scheme == "running":
         return 1 / (s - mass**2 + 1j * s * width / mass)
-    return 1 / (s - (mass**2 - 1j * mass * width) / (1 + (width / mass) ** 2))
+    return 1 / (s - (mass**2 - 1j * mass * width))
 
 
 def test_closed_form_is_the_published_formula() -> None:

@@ -16,7 +16,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.amplitudes import converted_width, propagator
+from barnwright.amplitudes import propagator
 from barnwright.plugin import (
     Claims,
     ClosedForm,
@@ -87,10 +87,8 @@ def cumulative(x: Array, point: Point, parameters: HiggsStrahlungInputs) -> Arra
 
 
 def _propagator(s: Array, parameters: HiggsStrahlungInputs) -> Complex:
-    """1/D(s) in GeV⁻²; mass and width are given in the running-width form."""
-    scheme = parameters.width_scheme
-    mass, width = converted_width(parameters.z_mass, parameters.z_width, "running", scheme)
-    return propagator(s, mass, width, scheme)
+    """1/D(s) in GeV⁻²; mass and width are those of the form that `width_scheme` names."""
+    return propagator(s, parameters.z_mass, parameters.z_width, parameters.width_scheme)
 
 
 process = Process(

@@ -77,13 +77,13 @@ def fermi_constant(used_with: UsedWith = None) -> Any:
 
 def z_mass(used_with: UsedWith = None) -> Any:
     """The mass of the Z; type it `Positive`."""
-    meaning = "mass of the Z, in the running-width form"
+    meaning = "mass of the Z, in the form that width_scheme names; the published one belongs to the running form"
     return parameter(table.mass(table.Z), unit="GeV", meaning=meaning, source=table.SOURCE, used_with=used_with)
 
 
 def z_width(used_with: UsedWith = None) -> Any:
     """The width of the Z; type it `NotNegative`."""
-    meaning = "total width of the Z, in the running-width form"
+    meaning = "total width of the Z, in the form that width_scheme names; the published one belongs to the running form"
     return parameter(table.width(table.Z), unit="GeV", meaning=meaning, source=table.SOURCE, used_with=used_with)
 
 
