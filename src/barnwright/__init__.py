@@ -4,13 +4,15 @@
     p = barnwright.predict(process="qed/muon-pair", beams={"kind": "collider", "sqrt_s": 10.0})
     print(p.total)
 
-Every name below is imported when it is first used; ``import barnwright`` itself loads nothing else.
+Every name below is imported when it is first used; ``import barnwright`` itself loads nothing but who draws pictures.
 """
 
 from __future__ import annotations
 
 from importlib import import_module
 from typing import TYPE_CHECKING, Any
+
+from barnwright import pictures
 
 if TYPE_CHECKING:
     from barnwright.api import connect, connect_async, describe, predict, processes, scan
@@ -65,6 +67,9 @@ __all__ = [
     "processes",
     "scan",
 ]
+
+
+pictures.drawn_by(lambda: import_module("barnwright.plot").picture)
 
 
 def __getattr__(name: str) -> Any:

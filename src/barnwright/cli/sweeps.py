@@ -8,7 +8,6 @@ from dataclasses import dataclass
 from itertools import product
 from typing import TYPE_CHECKING, Any, Protocol
 
-import numpy as np
 from rich.table import Table
 from rich.text import Text
 
@@ -17,6 +16,7 @@ from barnwright.cli.face import watched
 from barnwright.cli.options import Wish
 from barnwright.cli.tables import titled
 from barnwright.cli.writing import write_whole
+from barnwright.documents import Curves
 from barnwright.plot import draw_scan, encode
 
 if TYPE_CHECKING:
@@ -82,7 +82,6 @@ def _row(point: ScanPoint, derived: Sequence[str]) -> Iterator[str]:
 
 
 def _picture(points: Sequence[ScanPoint], over: Mapping[str, Sequence[Any]], form: str) -> bytes:
-    totals = [point.prediction.total for point in points]
-    values = np.array([np.nan if total.value is None else total.value for total in totals])
-    errors = np.array([np.nan if total.error is None else total.error for total in totals])
-    return encode(draw_scan(values, errors, over, totals[0].unit, points[0].prediction.title), form)
+    predictions = [point.prediction for point in points]
+    curves = Curves.of(predictions, tuple(len(values) for values in over.values()))
+    return encode(draw_scan(over, curves, predictions[0]), form)

@@ -13,8 +13,6 @@ from barnwright.documents.estimate import Estimate
 from barnwright.documents.prediction import Prediction
 from barnwright.documents.results import Derived, Part
 
-_COLUMNS = ("value", "error", "low", "high")
-
 
 @dataclass(frozen=True, slots=True)
 class Curve:
@@ -69,7 +67,9 @@ def _entries(prediction: Prediction) -> Iterator[Estimate]:
 
 
 def _numbers(entry: Estimate) -> list[float]:
-    found = (getattr(entry, name, None) for name in _COLUMNS)
+    """Value, error, and the ends of an envelope."""
+    found = [entry.value, entry.error]
+    found += [entry.low, entry.high] if isinstance(entry, Derived) else [None, None]
     return [np.nan if number is None else number for number in found]
 
 

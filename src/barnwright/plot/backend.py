@@ -13,13 +13,6 @@ if TYPE_CHECKING:
 
 FORMATS = ("png", "pdf", "svg")
 
-#: Okabe and Ito's palette for colour-blind readers ("Color Universal Design", 2008), darkest first so that it prints.
-COLOURS = ("#0072B2", "#D55E00", "#009E73", "#000000", "#CC79A7", "#E69F00", "#56B4E9")
-#: One line style a colour, so that a black-and-white print still tells them apart.
-DASHES = ("-", (0, (5, 2)), (0, (1, 1.2)), "-.", (0, (8, 2)), (0, (3, 1, 1, 1, 1, 1)), (0, (6, 1, 1, 1)))
-#: Cividis: even in lightness, and the same for the usual kinds of colour blindness.
-COLOUR_MAP = "cividis"
-
 _STYLE: dict[str, Any] = {
     "font.size": 10,
     "axes.titlesize": 10,
@@ -30,6 +23,7 @@ _STYLE: dict[str, Any] = {
     "ytick.right": True,
     "axes.formatter.limits": (-3, 4),
     "axes.formatter.use_mathtext": True,
+    "hatch.linewidth": 0.5,
     "mathtext.fontset": "dejavusans",
     "svg.hashsalt": "barnwright",
     "svg.fonttype": "path",
@@ -46,19 +40,11 @@ def matplotlib() -> ModuleType:
     return package
 
 
-def blank(panels: int) -> tuple[Figure, list[Any]]:
-    """A figure with so many panels, at most two side by side, and their axes."""
+def style() -> Any:
+    """A context in which everything that is made has the style of this room, whatever the user's own is."""
     package = matplotlib()
-    from matplotlib.figure import Figure
-
-    columns = 1 if panels == 1 else 2
-    rows = -(-panels // columns)
-    with package.rc_context(_STYLE):
-        figure = Figure(figsize=(6.4 if columns == 1 else 11.0, 4.4 * rows), layout="constrained")
-        grid = figure.subplots(rows, columns, squeeze=False).ravel()
-    for spare in grid[panels:]:
-        spare.set_visible(False)
-    return figure, list(grid[:panels])
+    plain = {name: value for name, value in package.rcParamsDefault.items() if not name.startswith("backend")}
+    return package.rc_context({**plain, **_STYLE})
 
 
 def check_format(name: str, field: str = "format") -> str:
@@ -83,6 +69,6 @@ def encode(figure: Figure, form: str) -> bytes:
     word = check_format(form)
     dates = {"png": {"Software": None}, "pdf": {"CreationDate": None}, "svg": {"Date": None}}
     content = BytesIO()
-    with matplotlib().rc_context(_STYLE):
+    with style():
         figure.savefig(content, format=word, dpi=160, metadata=dates[word])
     return content.getvalue()

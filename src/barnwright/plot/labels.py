@@ -1,8 +1,9 @@
-"""Observables and units as they are printed in papers: p_T(mu-) in GeV, cos theta* in the cm."""
+"""Observables, units and names as they are printed in papers: p_T(mu-) in GeV, cos theta* in the cm, A_FB."""
 
 from __future__ import annotations
 
 import re
+from collections.abc import Sequence
 
 _SYMBOLS = {
     "energy": "E",
@@ -18,23 +19,34 @@ _SYMBOLS = {
     "transfer": "t",
     "q2": "Q^2",
     "angle": r"\angle",
+    "acollinearity": r"\pi-\angle",
     "delta_phi": r"\Delta\phi",
+    "acoplanarity": r"\pi-|\Delta\phi|",
     "delta_r": r"\Delta R",
     "delta_eta": r"\Delta\eta",
     "delta_rapidity": r"\Delta y",
     "energy_fraction": "x_E",
     "recoil_mass": r"m_\mathrm{recoil}",
     "sqrt_s": r"\sqrt{s}",
+    "thrust": "T",
 }
 _CALL = re.compile(r"^(abs\()?([a-z_0-9]+)\((.*?)(?:,\s*frame\s*=\s*(lab|cm))?\)(?(1)\))$")
-_UNITS = {"ub": "µb", "cm2": "cm²", "m2": "m²", "GeV^2": "GeV²", "GeV^-2": "GeV⁻²"}
+_ORDERED = re.compile(r"^(leading|each|any|min|max)\((.+)\)$")
+_IN_UNIT = re.compile(r"^(.+?)\s*/\s*(deg|eV|keV|MeV|GeV|TeV)$")
+_UNITS = {"ub": "µb", "cm2": "cm²", "m2": "m²", "deg": "°"}
+_RAISED = str.maketrans("0123456789-", "⁰¹²³⁴⁵⁶⁷⁸⁹⁻")
+_NAME = re.compile(r"^([A-Za-z])(?:_([A-Za-z0-9]+))?$")
 
 
 def observable_label(text: str, unit: str) -> str:
-    """An axis label: the observable in symbols where it is one known function, else its own text; unit in brackets."""
-    symbols = observable_symbols(text)
-    label = f"${symbols}$" if symbols is not None else text.replace("$", r"\$")
-    return f"{label} [{unit_label(unit)}]" if unit else label
+    """An axis label: the observable in symbols where it is one known function, else its own text; unit in brackets.
+
+    A division by ``deg`` or by an energy, such as ``theta(mu-)/deg``, is shown as that unit.
+    """
+    body, own = _in_unit(text, unit)
+    symbols = observable_symbols(body)
+    label = f"${symbols}$" if symbols is not None else plain(body, 60)
+    return f"{label} [{unit_label(own)}]" if own else label
 
 
 def observable_symbols(text: str) -> str | None:
@@ -57,32 +69,39 @@ def observable_symbols(text: str) -> str | None:
     return f"|{symbols}|" if absolute else symbols
 
 
-def density_label(observables: tuple[str, ...], per: str, unit: str, letter: str) -> str:
-    """The label of what a histogram holds; letter is "sigma" for a cross section, "Gamma" for a width."""
+def density_label(axes: Sequence[tuple[str, str]], per: str, unit: str, letter: str) -> str:
+    """The label of what a histogram in ``axes``, observables and their units, holds, in ``unit``.
+
+    The letter is "sigma" for a cross section, "Gamma" for a width.
+
+    An observable in a unit of its own, such as ``theta(mu-)/deg``, moves that unit below the line: pb/°.
+    """
     quantity = rf"\{letter}"
     if per == "bin":
         return f"${quantity}$ per bin [{unit_label(unit)}]"
     if per == "solid_angle":
         return rf"$\mathrm{{d}}{quantity}/\mathrm{{d}}\Omega$ [{unit_label(unit)}]"
-    power = "" if len(observables) == 1 else f"^{len(observables)}"
-    below = [observable_symbols(text) for text in observables]
+    power = "" if len(axes) == 1 else f"^{len(axes)}"
+    split = [_in_unit(*axis) for axis in axes]
+    below = [observable_symbols(text) for text, _ in split]
     if any(symbols is None for symbols in below):
         below = ["x"] if len(below) == 1 else [f"x_{number}" for number in range(1, len(below) + 1)]
-    inside = r"\,".join(rf"\mathrm{{d}}{symbols}" for symbols in below)
-    return rf"$\mathrm{{d}}{power}{quantity}/{inside}$ [{unit_label(unit)}]"
+    inside = r"\,".join(rf"\mathrm{{d}}{_apart(str(symbols))}" for symbols in below)
+    divided = _divided(unit, [own for (_, given), (_, own) in zip(axes, split, strict=True) if not given])
+    return rf"$\mathrm{{d}}{power}{quantity}/{inside}$ [{unit_label(divided)}]"
 
 
 def unit_label(unit: str) -> str:
-    """A unit for print: "ub/GeV" becomes "µb/GeV", a dimensionless unit stays as it is."""
-    parts = re.split(r"(/| |\*)", unit)
-    return "".join(_UNITS.get(part, part) for part in parts)
+    """A unit for print: "ub/GeV^2" becomes "µb/GeV²", a dimensionless unit stays as it is."""
+    named = re.sub(r"\b(ub|cm2|m2|deg)\b", lambda match: _UNITS[match.group(1)], unit)
+    return re.sub(r"\^(-?\d+)(?![.\d])", lambda match: match.group(1).translate(_RAISED), named)
 
 
 def reaction_label(reaction: str) -> str:
     """A reaction in symbols: "e- e+ -> mu- mu+" with an arrow and the particles' own letters."""
     sides = [[_leg(name) for name in side.split()] for side in reaction.split("->")]
     if len(sides) != 2 or any(name is None for side in sides for name in side):
-        return reaction
+        return plain(reaction, 60)
     before, after = (r"\,".join(str(name) for name in side) for side in sides)
     return rf"${before} \to {after}$"
 
@@ -90,15 +109,58 @@ def reaction_label(reaction: str) -> str:
 def leg_label(name: str) -> str:
     """A particle or leg in its own letters, its name where it has none."""
     letters = _leg(name)
-    return name if letters is None else f"${letters}$"
+    return plain(name, 30) if letters is None else f"${letters}$"
+
+
+def name_label(name: str, width: int = 30) -> str:
+    """A name for print: "A_FB" with FB below the line, a single letter in italics, anything else as it was given."""
+    match = _NAME.match(name)
+    if match is None:
+        return plain(name, width)
+    return f"${match[1]}$" if match[2] is None else rf"${match[1]}_\mathrm{{{match[2]}}}$"
+
+
+def plain(text: str, width: int) -> str:
+    """A text as it is, but at most ``width`` characters of it, and no sign in it starts mathematics."""
+    short = text if len(text) <= width else f"{text[: width - 1].rstrip()}…"
+    return short.replace("$", r"\$")
+
+
+def _in_unit(text: str, unit: str) -> tuple[str, str]:
+    """An observable without the unit that it is divided by, and that unit; only where none is left otherwise."""
+    match = _IN_UNIT.match(text.strip())
+    if unit or match is None or observable_symbols(match[1]) is None:
+        return text, unit
+    return match[1], match[2]
+
+
+def _apart(symbols: str) -> str:
+    """Symbols that may follow an upright d: a function's name keeps its distance."""
+    return rf"\,{symbols}" if symbols.startswith(r"\cos") else symbols
+
+
+def _divided(unit: str, below: list[str]) -> str:
+    """A unit divided by further ones: pb and deg give "pb/deg"."""
+    further = [part for part in below if part]
+    if not further:
+        return unit
+    above, _, known = unit.partition("/")
+    parts = [*([known.strip("()")] if known else []), *further]
+    if len(parts) == 2 and parts[0] == parts[1]:
+        parts = [f"{parts[0]}^2"]
+    return f"{above}/{parts[0]}" if len(parts) == 1 else f"{above}/({' '.join(parts)})"
 
 
 def _leg(name: str) -> str | None:
-    """The letters of a leg; None where it is not a plain leg (a frame, a selection, arithmetic)."""
+    """The letters of a leg; None where it is not a plain leg (a frame, arithmetic)."""
     if name.isdigit() or name == "X":
         return name
     if name in ("beam_a", "beam_b"):
         return rf"\mathrm{{{name[0:4]}}}_{name[-1]}"
+    ordered = _ORDERED.match(name)
+    if ordered is not None:
+        inner = _leg(ordered[2].strip())
+        return None if inner is None else rf"\mathrm{{{ordered[1]}}}\,{inner}"
     from barnwright.particles import find
 
     try:
