@@ -17,7 +17,7 @@ from barnwright.event import Point
 from barnwright.integrate.extrema import EPSILON
 from barnwright.integrate.panel_integrals import COUNTED, EVALUATIONS, NEGATIVE, NON_FINITE, PanelIntegrals
 from barnwright.integrate.panels import Panels
-from barnwright.integrate.polar_axis import Ends
+from barnwright.integrate.polar_axis import Ends, ends_of
 from barnwright.integrate.quadrature import integrate_panels
 from barnwright.integrate.tally import WorstPoint
 from barnwright.kinematics import CM
@@ -35,7 +35,7 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
     integrand = Integrand(process, setting, rows, process.parameters_of(setting.parameters))
     partition = partition_of(setting, layout, rows).tiled(integrand.tiled)
     if setting.rule == "closed_form":
-        integrals = _closed_form(integrand, partition.panels)
+        integrals = _closed_form(integrand, partition.inside_cuts())
     else:
         integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), integrand.count)
     if setting.beams.given == "kinetic":
@@ -76,7 +76,8 @@ def _heights(integrand: Integrand, panels: Panels) -> tuple[Array, Array]:
     """The boundaries of the panels in the closed form's observable, and its antiderivative there, part after part."""
     setting, rows, process = integrand.setting, integrand.rows, integrand.process
     assert setting.closed_form is not None
-    ends = panels.boundaries()
+    side, x = panels.shared_ends()
+    ends = ends_of(np.broadcast_to(side, x.shape), x)
     if ends.one_plus.shape[0] == integrand.count:
         ends = Ends(ends.one_minus[: rows.count], ends.one_plus[: rows.count])
     point = Point.of(rows.reaction, rows.collision, rows.masses)
