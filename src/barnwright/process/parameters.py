@@ -10,6 +10,7 @@ import types
 import warnings
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any, Literal, Union, get_args, get_origin
 
 from pydantic import BaseModel, ConfigDict, Field, create_model
@@ -81,6 +82,7 @@ class ParameterFacts:
         return all(values.get(name) in allowed for name, allowed in self.used_with)
 
 
+@lru_cache(maxsize=1024)
 def facts_of(model: type[Parameters]) -> tuple[ParameterFacts, ...]:
     """The facts of every parameter in the order of declaration.
 

@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from barnwright.particles import find
 from barnwright.reaction import Reaction
 
 BEAMS = {"beam_a": -1, "beam_b": -2}
 
 
+@lru_cache(maxsize=4096)
 def codes_of(reaction: Reaction, leg: str | int) -> tuple[int, ...]:
     """The codes of a leg (``beam_a`` −1, ``beam_b`` −2, a number), or of all legs of a particle and its antiparticle.
 
