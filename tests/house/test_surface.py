@@ -32,7 +32,7 @@ def request_fields() -> set[str]:
 
 def test_public_names_are_pinned() -> None:
     """`__all__` of the modules that promise something is what it was."""
-    modules = ("barnwright", "barnwright.plugin", "barnwright.testing")
+    modules = ("barnwright", "barnwright.amplitudes", "barnwright.plugin", "barnwright.testing")
     pin("public_names.txt", "".join(f"{m}.{name}\n" for m in modules for name in sorted(import_module(m).__all__)))
 
 
