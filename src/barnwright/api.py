@@ -58,11 +58,19 @@ def scan(request: RequestLike | None = None, /, *, over: Mapping[str, Sequence[A
     return calculate(document, over, process)
 
 
-def processes() -> list[ProcessSummary]:
-    """Every process that is installed, sorted by name, the broken ones with the cause."""
+def processes(
+    *, particle: str | Sequence[str] | None = None, plugin: str | None = None, kind: str | None = None
+) -> list[ProcessSummary]:
+    """Every process that is installed, sorted by name, the broken ones with the cause; or those of a choice.
+
+    ``particle`` is a particle that comes in or goes out, or several of which all do; ``plugin`` the plugin that offers
+    it; ``kind`` a word for its reaction or for one of its laws, such as "elastic", "total", "angular" or "helicity".
+
+    Raises RequestError for a word that means nothing, with the nearest that does.
+    """
     from barnwright.run.describe import summaries
 
-    return summaries()
+    return summaries(particle, plugin, kind)
 
 
 def describe(name: str) -> ProcessDescription:

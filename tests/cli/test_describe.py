@@ -1,4 +1,4 @@
-"""barnwright processes and describe: what is installed, for people and for programs."""
+"""barnwright describe: one process in full, for people and for programs."""
 
 from __future__ import annotations
 
@@ -9,30 +9,6 @@ import pytest
 
 from barnwright import PluginError, api
 from barnwright.cli import main
-from barnwright.documents.description import ProcessSummary
-
-
-def test_processes_for_people_and_programs(capsys: pytest.CaptureFixture[str]) -> None:
-    """The table and the JSON list have the bundled processes."""
-    assert main(["processes"]) == 0
-    assert "gamma e- -> gamma e-" in capsys.readouterr().out
-    assert main(["processes", "--json"]) == 0
-    names = [entry["name"] for entry in json.loads(capsys.readouterr().out)]
-    assert {"qed/compton", "qed/muon-pair", "qed/tau-pair"} <= set(names)
-
-
-def test_broken_processes_are_listed_with_their_cause(
-    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
-) -> None:
-    """A process that cannot be loaded stands below the others, with where it comes from and why."""
-    broken = ProcessSummary(
-        name="bad/one", plugin="bad", distribution="barnwright-bad", version="0.2", broken="it does not import"
-    )
-    monkeypatch.setattr(api, "processes", lambda: [broken])
-    assert main(["processes"]) == 0
-    shown = capsys.readouterr().out
-    for text in ("broken", "bad/one", "barnwright-bad 0.2", "it does not import"):
-        assert text in shown
 
 
 def test_description_for_people(capsys: pytest.CaptureFixture[str]) -> None:

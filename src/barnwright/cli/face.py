@@ -23,8 +23,10 @@ class Answers(Protocol):
     def scan(self, request: Mapping[str, Any], /, *, over: Mapping[str, Sequence[Any]]) -> Any:
         """A sweep: one prediction for every point."""
 
-    def processes(self) -> list[ProcessSummary]:
-        """Every process."""
+    def processes(
+        self, *, particle: Sequence[str] | None = None, plugin: str | None = None, kind: str | None = None
+    ) -> list[ProcessSummary]:
+        """Every process, or those of a choice."""
 
     def describe(self, name: str) -> ProcessDescription:
         """One process in full."""

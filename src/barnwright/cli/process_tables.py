@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Sequence
-from typing import TYPE_CHECKING
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from typing import TYPE_CHECKING, Any
 
 from rich.console import Group, RenderableType
 from rich.table import Table
@@ -22,8 +22,8 @@ CAUTION = (
 )
 
 
-def summaries_view(summaries: Sequence[ProcessSummary]) -> RenderableType:
-    """The list of processes, and below it the broken ones with their causes."""
+def summaries_view(summaries: Sequence[ProcessSummary], choice: Mapping[str, Any] | None = None) -> RenderableType:
+    """The list of processes, and below it the broken ones with their causes; ``choice`` is what was asked for."""
     healthy = [entry for entry in summaries if entry.broken is None]
     broken = [entry for entry in summaries if entry.broken is not None]
     parts: list[RenderableType] = []
@@ -37,7 +37,15 @@ def summaries_view(summaries: Sequence[ProcessSummary]) -> RenderableType:
         for entry in broken:
             table.add_row(*map(Text, (entry.name, f"{entry.distribution} {entry.version}", entry.broken or "")))
         parts.append(table)
+    if choice and not healthy:
+        parts.insert(0, Text(f"no process fits: {_written(choice)}"))
     return Group(*parts) if parts else Text("no process is installed: install a plugin, such as barnwright-qed")
+
+
+def _written(choice: Mapping[str, Any]) -> str:
+    """``particle mu- and gamma, kind total``."""
+    values = {name: value if isinstance(value, str) else " and ".join(value) for name, value in choice.items()}
+    return ", ".join(f"{name} {value}" for name, value in values.items())
 
 
 def description_view(description: ProcessDescription) -> RenderableType:
@@ -53,9 +61,12 @@ def _description(description: ProcessDescription) -> Iterator[RenderableType]:
         yield _parameters(description.parameters)
     if description.masses:
         yield _masses(description.masses, (description.reaction or "").split())
-    lists = {
+    lists: dict[str, Iterable[str]] = {
+        "singular regions, and a cut that closes each where the masses leave it open": description.closing_cuts,
         "observables": tuple(_with_unit(text, description.reaction) for text in description.observables),
         "derived quantities": description.derived,
+        "claims": description.claims,
+        "alternatives (named sets of parameters)": tuple(map(str, description.alternatives)),
         "cautions": _cautions(description.cautions),
         "references": description.references,
     }
@@ -70,9 +81,13 @@ def _facts(description: ProcessDescription) -> Iterator[tuple[str, str]]:
     yield "summary", description.summary or ""
     yield "order", description.order or ""
     yield "from", f"{description.distribution} {description.version}"
+    yield "kinds", ", ".join(description.kinds)
     yield "laws", ", ".join(description.laws)
+    yield "polarised", ", ".join(description.polarised_beams) or "no beam: the laws have no helicities"
     if description.contributions:
-        yield "contributions", ", ".join(description.contributions)
+        signed = description.signed_contributions
+        names = (f"{name} (may be negative)" if name in signed else name for name in description.contributions)
+        yield "contributions", ", ".join(names)
     yield "singular", ", ".join(description.singular) or "nowhere"
     yield "validity", validity_text(description)
 
@@ -98,8 +113,10 @@ def _parameters(parameters: Iterable[ParameterDescription]) -> Table:
     table = titled("parameters", ("name", "default", "unit", "meaning", "source"), numbers=False)
     for entry in parameters:
         default = "required" if entry.required else str(entry.default)
-        choices = f" (one of {', '.join(entry.choices)})" if entry.choices else ""
-        table.add_row(*map(Text, (entry.name, default, entry.unit, f"{entry.meaning}{choices}", entry.source)))
+        meaning = entry.meaning + (f" (one of {', '.join(entry.choices)})" if entry.choices else "")
+        if entry.used_with:
+            meaning += f"; used with {' and '.join(map(str, entry.used_with))}"
+        table.add_row(*map(Text, (entry.name, default, entry.unit, meaning, entry.source)))
     return table
 
 

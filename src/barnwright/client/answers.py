@@ -49,6 +49,14 @@ def request_of(request: RequestLike | None, fields: Mapping[str, Any]) -> Reques
     return Request.accept(source, **fields)
 
 
+def list_message(
+    particle: str | Sequence[str] | None, plugin: str | None, kind: str | None
+) -> wire.ListProcessesRequest:
+    """The question which processes there are."""
+    particles = [particle] if isinstance(particle, str) else list(particle or ())
+    return wire.ListProcessesRequest(particles=particles, plugin=plugin, kind=kind)
+
+
 def predict_message(request: Request) -> wire.PredictRequest:
     """The question for a prediction; what was not given is left to the server's defaults."""
     return encode({"request": request.given()}, wire.PredictRequest)

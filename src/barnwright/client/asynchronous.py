@@ -81,9 +81,11 @@ class AsyncClient:
             return answers.Validation(None, None, error.violations)
         return answers.validation_of(await self._ask("ValidateRequest", message, timeout))
 
-    async def processes(self) -> list[ProcessSummary]:
-        """Every process of the server, sorted by name."""
-        return answers.summaries_of(await self._ask("ListProcesses", wire.ListProcessesRequest()))
+    async def processes(
+        self, *, particle: str | Sequence[str] | None = None, plugin: str | None = None, kind: str | None = None
+    ) -> list[ProcessSummary]:
+        """The processes of the server, sorted by name; the arguments are those of ``barnwright.processes``."""
+        return answers.summaries_of(await self._ask("ListProcesses", answers.list_message(particle, plugin, kind)))
 
     async def describe(self, name: str) -> ProcessDescription:
         """What a process of the server is."""

@@ -84,9 +84,11 @@ class Client:
             return answers.Validation(None, None, error.violations)
         return answers.validation_of(self._ask(self._stub.ValidateRequest, message, timeout))
 
-    def processes(self) -> list[ProcessSummary]:
-        """Every process of the server, sorted by name."""
-        return answers.summaries_of(self._ask(self._stub.ListProcesses, wire.ListProcessesRequest()))
+    def processes(
+        self, *, particle: str | Sequence[str] | None = None, plugin: str | None = None, kind: str | None = None
+    ) -> list[ProcessSummary]:
+        """The processes of the server, sorted by name; the arguments are those of ``barnwright.processes``."""
+        return answers.summaries_of(self._ask(self._stub.ListProcesses, answers.list_message(particle, plugin, kind)))
 
     def describe(self, name: str) -> ProcessDescription:
         """What a process of the server is."""

@@ -10,7 +10,13 @@ from barnwright.documents.by_name import ByName
 from barnwright.documents.curves import Curve, Curves
 from barnwright.documents.cuts import Cut, CutChange
 from barnwright.documents.derived import AsymmetryRequest, EnvelopeRequest, RatioRequest
-from barnwright.documents.description import ParameterDescription, ProcessDescription, ProcessSummary
+from barnwright.documents.description import (
+    Alternative,
+    Condition,
+    ParameterDescription,
+    ProcessDescription,
+    ProcessSummary,
+)
 from barnwright.documents.estimate import Estimate, Total
 from barnwright.documents.findings import violations_of
 from barnwright.documents.formula import Formula, FormulaPeak
@@ -27,11 +33,13 @@ from barnwright.documents.variations import BeamsChange, Variation
 
 __all__ = [
     "Accuracy",
+    "Alternative",
     "AsymmetryRequest",
     "BeamsChange",
     "Bins",
     "ByName",
     "ColliderBeams",
+    "Condition",
     "Covariance",
     "Curve",
     "Curves",

@@ -11,7 +11,10 @@ from barnwright.documents.by_name import ByName
 
 
 class ProcessSummary(Document):
-    """One process of a list. For a broken one ``broken`` is the cause, and what only its code knows is None."""
+    """One process of a list. For a broken one ``broken`` is the cause, and what only its code knows is None.
+
+    ``kinds`` are the words by which a list can be filtered: kinds of its reaction and of its laws.
+    """
 
     name: str
     plugin: str
@@ -21,6 +24,7 @@ class ProcessSummary(Document):
     summary: str | None = None
     order: str | None = None
     broken: str | None = None
+    kinds: tuple[str, ...] = ()
 
     def __str__(self) -> str:
         """Name, reaction and summary in one line."""
@@ -29,8 +33,33 @@ class ProcessSummary(Document):
         return "  ".join(text for text in (self.name, self.reaction, self.summary) if text)
 
 
+class Condition(Document):
+    """Values of a parameter with which another one is used."""
+
+    name: str
+    values: tuple[ParameterValue, ...]
+
+    def __str__(self) -> str:
+        """``scheme = alpha or fermi``."""
+        return f"{self.name} = {' or '.join(map(str, self.values))}"
+
+
+class Alternative(Document):
+    """A named set of parameter values that makes sense together."""
+
+    name: str
+    values: Annotated[dict[str, ParameterValue], Expects("a table of parameters and values")]
+
+    def __str__(self) -> str:
+        """``lep: z_mass = 91.1876, z_width = 2.4952``."""
+        return f"{self.name}: {', '.join(f'{name} = {value}' for name, value in self.values.items())}"
+
+
 class ParameterDescription(Document):
-    """One parameter: its type, unit, default, meaning and source; a ``word`` is one of ``choices``."""
+    """One parameter: its type, unit, default, meaning and source; a ``word`` is one of ``choices``.
+
+    It is used where all of ``used_with`` hold; a request that sets it elsewhere is refused.
+    """
 
     name: str
     type: Literal["float", "int", "bool", "word"]
@@ -40,6 +69,7 @@ class ParameterDescription(Document):
     meaning: str = ""
     source: str = ""
     required: bool = False
+    used_with: tuple[Condition, ...] = ()
 
 
 class ProcessDescription(ProcessSummary):
@@ -47,6 +77,8 @@ class ProcessDescription(ProcessSummary):
 
     ``laws`` are the kinds of its laws, the cheapest first; ``masses`` (GeV) and the range of sqrt_s (GeV, None: no
     limit) are numbers, ``observables`` the names that its requests may use, ``request`` a ready TOML text.
+    ``signed_contributions`` may be negative; ``polarised_beams`` are those that a request may polarise;
+    ``closing_cuts`` say for each singular region what keeps away from it; ``claims`` are symmetries and limits.
     """
 
     laws: tuple[str, ...] = ()
@@ -62,3 +94,8 @@ class ProcessDescription(ProcessSummary):
     references: tuple[str, ...] = ()
     observables: tuple[str, ...] = ()
     request: str = ""
+    signed_contributions: tuple[str, ...] = ()
+    polarised_beams: tuple[str, ...] = ()
+    closing_cuts: tuple[str, ...] = ()
+    claims: tuple[str, ...] = ()
+    alternatives: ByName[Alternative] = Field(default_factory=ByName[Alternative])

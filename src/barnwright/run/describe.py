@@ -2,23 +2,38 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from typing import Any
 
 from barnwright.documents import ByName
-from barnwright.documents.description import ParameterDescription, ProcessDescription, ProcessSummary
+from barnwright.documents.description import ProcessDescription, ProcessSummary
 from barnwright.errors import PluginError
-from barnwright.process import Law, Process, facts_of
+from barnwright.process import Process
 from barnwright.reaction import Reaction
 from barnwright.registry import LoadedProcess, ProcessIdentity, catalogue
+from barnwright.run import statements
+from barnwright.run.choice import Choice
+from barnwright.run.closing_cuts import closing_cuts
+from barnwright.run.kinds import kinds_of, polarised_beams
 from barnwright.run.ready_request import mass_in, ready_request
 from barnwright.run.useful_observables import useful_observables
 
 
-def summaries() -> list[ProcessSummary]:
-    """Every installed process by name; one that cannot be loaded is listed with its cause."""
-    known = catalogue()
-    return [summary(entry.name, entry.distribution, entry.version) for entry in known.entries()]
+def summaries(
+    particle: str | Sequence[str] | None = None, plugin: str | None = None, kind: str | None = None
+) -> list[ProcessSummary]:
+    """Every installed process by name, or those of a choice; one that cannot be loaded is listed with its cause.
+
+    Raises
+    ------
+    RequestError
+        For a particle, a plugin or a kind that does not exist, with the nearest that does.
+    """
+    entries = catalogue().entries()
+    choice = Choice.of(particle, plugin, kind, (entry.plugin for entry in entries))
+    asked = (entry for entry in entries if choice.plugin in ("", entry.plugin))
+    found = (summary(entry.name, entry.distribution, entry.version) for entry in asked)
+    return [one for one in found if choice.fits(one.model_dump())]
 
 
 def describe(name: str) -> ProcessDescription:
@@ -36,18 +51,23 @@ def describe(name: str) -> ProcessDescription:
     low, high = process.valid.sqrt_s if process.valid is not None and process.valid.sqrt_s is not None else (None, None)
     return ProcessDescription.build(
         **_common(loaded),
-        laws=tuple(_laws(process)),
-        parameters=ByName(_parameters(process)),
+        laws=tuple(statements.laws(process)),
+        parameters=ByName(statements.parameters(process)),
         masses=dict(_masses(process)),
         contributions=tuple(process.contributions),
+        signed_contributions=tuple(statements.signed_contributions(process)),
         derived=tuple(_derived_text(entry) for entry in process.derived),
         singular=process.singular,
+        closing_cuts=tuple(map(str, closing_cuts(process))),
         validity=process.valid.text if process.valid is not None else "",
         sqrt_s_min=low,
         sqrt_s_max=high,
+        claims=tuple(statements.claims(process)),
+        alternatives=ByName(statements.alternatives(process)),
         cautions=process.cautions,
         references=process.references,
-        observables=useful_observables(process.legs),
+        polarised_beams=polarised_beams(process),
+        observables=useful_observables(process),
         request=ready_request(name, process),
     )
 
@@ -74,41 +94,12 @@ def _common(loaded: LoadedProcess) -> dict[str, Any]:
         "reaction": process.legs.text,
         "summary": process.summary,
         "order": process.order,
+        "kinds": kinds_of(process),
     }
 
 
 def _plugin(identity: ProcessIdentity) -> str:
     return identity.name.partition("/")[0]
-
-
-def _laws(process: Process) -> Iterator[str]:
-    """The kinds of laws, the cheapest first, each with the masses that must be 0 for it."""
-    for form in process.closed_forms:
-        yield f"closed form in {form.observable}{_massless(form.massless)}"
-    for law in process.laws:
-        yield f"{_kind(law)}{_massless(law.massless)}"
-
-
-def _kind(law: Law) -> str:
-    return law.kind.replace("_", " ")
-
-
-def _massless(legs: tuple[str, ...]) -> str:
-    return f" (for massless {', '.join(legs)})" if legs else ""
-
-
-def _parameters(process: Process) -> Iterator[ParameterDescription]:
-    for fact in facts_of(process.parameters):
-        yield ParameterDescription.build(
-            name=fact.name,
-            type=fact.type,
-            choices=fact.choices,
-            unit=fact.unit,
-            default=fact.default,
-            meaning=fact.meaning,
-            source=fact.source,
-            required=fact.required,
-        )
 
 
 def _masses(process: Process) -> Iterator[tuple[str, float]]:

@@ -5,19 +5,22 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from barnwright.observables import ObservableError, Row, compile_observable, table
+from barnwright.process import Process
 from barnwright.reaction import Reaction
+from barnwright.run.ready_request import has_final_state
 
 #: What a two-body final state fixes by itself: back to back in the cm, with the mass and recoil of the whole.
 FIXED_BY_TWO_BODIES = frozenset({"acoplanarity", "delta_phi", "helicity_angle", "mass", "phi", "recoil_mass", "thrust"})
 
 
-def useful_observables(reaction: Reaction) -> tuple[str, ...]:
-    """One text or two (lab and cm) for every row of the table that says something about this reaction.
+def useful_observables(process: Process) -> tuple[str, ...]:
+    """One text or two (lab and cm) for every row of the table that says something about this process.
 
     Rows of one particle are written in the lab for every kind of outgoing particle, in the cm and with others for the
-    first; ``each(...)`` where there are several of a kind. An inclusive reaction has the energy of the collision alone.
+    first; ``each(...)`` where there are several of a kind. Where all that there is is σ(s), it is the energy alone.
     """
-    if reaction.inclusive:
+    reaction = process.legs
+    if not has_final_state(process):
         return ("sqrt_s",)
     rows = [row for row in table() if not (len(reaction.outgoing) == 2 and row.name in FIXED_BY_TWO_BODIES)]
     return tuple(text for row in rows for text in _texts(row, reaction) if _stands(text, reaction))

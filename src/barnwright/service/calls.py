@@ -13,6 +13,7 @@ from barnwright.engine import Answers, Plan, assemble
 from barnwright.engine.calculate import calculate
 from barnwright.errors import PluginError, RequestError, ServerError, Violation, show
 from barnwright.integrate.ledger import Ledger
+from barnwright.run.choice import Choice
 from barnwright.run.drive import Pace
 from barnwright.run.local import origin, run_record
 from barnwright.service.messages import EXECUTOR, prediction_message, scan_message, violations_message
@@ -28,16 +29,20 @@ Call = Callable[[bytes, Reply], Steps]
 
 
 def list_processes(message: bytes, reply: Reply) -> Steps:
-    """Every process."""
-    parse(message, wire.ListProcessesRequest)
+    """Every process, or those of the caller's choice."""
+    asked = parse(message, wire.ListProcessesRequest)
+    choice: Choice
+    choice, names = yield Light("choose", (tuple(asked.particles), asked.plugin, asked.kind))
     lines = []
-    for name, distribution, version in (yield Light("names", ())):
+    for name, distribution, version in names:
         try:
             line = yield Light("summary", (name, distribution, version), name)
         except (PluginError, ServerError) as error:  # it hangs, or takes its worker down: the others are listed
             broken = error.cause if isinstance(error, PluginError) else str(error)
             line = {"name": name, "distribution": distribution, "version": version, "broken": broken}
-        lines.append({"plugin": name.partition("/")[0], **line})
+        line = {"plugin": name.partition("/")[0], **line}
+        if choice.fits(line):
+            lines.append(line)
     reply(encode({"processes": lines}, wire.ListProcessesResponse).SerializeToString(), True)
 
 

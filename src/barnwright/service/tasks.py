@@ -14,6 +14,7 @@ from barnwright.integrate.block import Block
 from barnwright.integrate.ledger import Ledger
 from barnwright.integrate.tally import Tally
 from barnwright.registry import catalogue
+from barnwright.run.choice import Choice
 from barnwright.run.describe import describe, summary
 from barnwright.run.drive import Pace, drive
 from barnwright.run.local import origin, run_record
@@ -29,9 +30,17 @@ Tell = Callable[[Resolved], None]
 STAGES: Shelf[Stage] = Shelf()
 
 
-def names_task(_tell: Tell) -> list[tuple[str, str, str]]:
-    """Name, distribution and version of every installed process; imports none of them."""
-    return [(entry.name, entry.distribution, entry.version) for entry in catalogue().entries()]
+def choose_task(
+    _tell: Tell, particles: Sequence[str], plugin: str, kind: str
+) -> tuple[Choice, list[tuple[str, str, str]]]:
+    """A choice, and name, distribution and version of every process of its plugin, none of which is imported.
+
+    Raises ``RequestError`` for words that mean nothing.
+    """
+    entries = catalogue().entries()
+    choice = Choice.of(particles, plugin, kind, (entry.plugin for entry in entries))
+    asked = (entry for entry in entries if choice.plugin in ("", entry.plugin))
+    return choice, [(entry.name, entry.distribution, entry.version) for entry in asked]
 
 
 def summary_task(_tell: Tell, name: str, distribution: str, version: str) -> dict[str, Any]:
@@ -77,7 +86,7 @@ def tally_task(_tell: Tell, block: Block, name: str, stage: Stage | None) -> Tal
 
 
 TASKS: Mapping[str, Callable[..., Any]] = {
-    "names": names_task,
+    "choose": choose_task,
     "summary": summary_task,
     "describe": describe_task,
     "plan": plan_task,

@@ -34,6 +34,8 @@ PAIRS = [
     (prediction_pb2.Run, [documents.Run]),
     (process_pb2.ProcessSummary, [documents.ProcessSummary]),
     (process_pb2.ParameterDescription, [documents.ParameterDescription]),
+    (process_pb2.Condition, [documents.Condition]),
+    (process_pb2.Alternative, [documents.Alternative]),
     (process_pb2.ProcessDescription, [documents.ProcessDescription]),
 ]
 FILES = [values_pb2, request_pb2, prediction_pb2, process_pb2, service_pb2]

@@ -7,7 +7,7 @@ from typing import ClassVar as _ClassVar, Iterable as _Iterable, Mapping as _Map
 DESCRIPTOR: _descriptor.FileDescriptor
 
 class ProcessSummary(_message.Message):
-    __slots__ = ("name", "plugin", "distribution", "version", "reaction", "summary", "order", "broken")
+    __slots__ = ("name", "plugin", "distribution", "version", "reaction", "summary", "order", "broken", "kinds")
     NAME_FIELD_NUMBER: _ClassVar[int]
     PLUGIN_FIELD_NUMBER: _ClassVar[int]
     DISTRIBUTION_FIELD_NUMBER: _ClassVar[int]
@@ -16,6 +16,7 @@ class ProcessSummary(_message.Message):
     SUMMARY_FIELD_NUMBER: _ClassVar[int]
     ORDER_FIELD_NUMBER: _ClassVar[int]
     BROKEN_FIELD_NUMBER: _ClassVar[int]
+    KINDS_FIELD_NUMBER: _ClassVar[int]
     name: str
     plugin: str
     distribution: str
@@ -24,10 +25,34 @@ class ProcessSummary(_message.Message):
     summary: str
     order: str
     broken: str
-    def __init__(self, name: _Optional[str] = ..., plugin: _Optional[str] = ..., distribution: _Optional[str] = ..., version: _Optional[str] = ..., reaction: _Optional[str] = ..., summary: _Optional[str] = ..., order: _Optional[str] = ..., broken: _Optional[str] = ...) -> None: ...
+    kinds: _containers.RepeatedScalarFieldContainer[str]
+    def __init__(self, name: _Optional[str] = ..., plugin: _Optional[str] = ..., distribution: _Optional[str] = ..., version: _Optional[str] = ..., reaction: _Optional[str] = ..., summary: _Optional[str] = ..., order: _Optional[str] = ..., broken: _Optional[str] = ..., kinds: _Optional[_Iterable[str]] = ...) -> None: ...
+
+class Condition(_message.Message):
+    __slots__ = ("name", "values")
+    NAME_FIELD_NUMBER: _ClassVar[int]
+    VALUES_FIELD_NUMBER: _ClassVar[int]
+    name: str
+    values: _containers.RepeatedCompositeFieldContainer[_values_pb2.ParameterValue]
+    def __init__(self, name: _Optional[str] = ..., values: _Optional[_Iterable[_Union[_values_pb2.ParameterValue, _Mapping]]] = ...) -> None: ...
+
+class Alternative(_message.Message):
+    __slots__ = ("name", "values")
+    class ValuesEntry(_message.Message):
+        __slots__ = ("key", "value")
+        KEY_FIELD_NUMBER: _ClassVar[int]
+        VALUE_FIELD_NUMBER: _ClassVar[int]
+        key: str
+        value: _values_pb2.ParameterValue
+        def __init__(self, key: _Optional[str] = ..., value: _Optional[_Union[_values_pb2.ParameterValue, _Mapping]] = ...) -> None: ...
+    NAME_FIELD_NUMBER: _ClassVar[int]
+    VALUES_FIELD_NUMBER: _ClassVar[int]
+    name: str
+    values: _containers.MessageMap[str, _values_pb2.ParameterValue]
+    def __init__(self, name: _Optional[str] = ..., values: _Optional[_Mapping[str, _values_pb2.ParameterValue]] = ...) -> None: ...
 
 class ParameterDescription(_message.Message):
-    __slots__ = ("name", "type", "choices", "unit", "default", "meaning", "source", "required")
+    __slots__ = ("name", "type", "choices", "unit", "default", "meaning", "source", "required", "used_with")
     NAME_FIELD_NUMBER: _ClassVar[int]
     TYPE_FIELD_NUMBER: _ClassVar[int]
     CHOICES_FIELD_NUMBER: _ClassVar[int]
@@ -36,6 +61,7 @@ class ParameterDescription(_message.Message):
     MEANING_FIELD_NUMBER: _ClassVar[int]
     SOURCE_FIELD_NUMBER: _ClassVar[int]
     REQUIRED_FIELD_NUMBER: _ClassVar[int]
+    USED_WITH_FIELD_NUMBER: _ClassVar[int]
     name: str
     type: str
     choices: _containers.RepeatedScalarFieldContainer[str]
@@ -44,10 +70,11 @@ class ParameterDescription(_message.Message):
     meaning: str
     source: str
     required: bool
-    def __init__(self, name: _Optional[str] = ..., type: _Optional[str] = ..., choices: _Optional[_Iterable[str]] = ..., unit: _Optional[str] = ..., default: _Optional[_Union[_values_pb2.ParameterValue, _Mapping]] = ..., meaning: _Optional[str] = ..., source: _Optional[str] = ..., required: bool = ...) -> None: ...
+    used_with: _containers.RepeatedCompositeFieldContainer[Condition]
+    def __init__(self, name: _Optional[str] = ..., type: _Optional[str] = ..., choices: _Optional[_Iterable[str]] = ..., unit: _Optional[str] = ..., default: _Optional[_Union[_values_pb2.ParameterValue, _Mapping]] = ..., meaning: _Optional[str] = ..., source: _Optional[str] = ..., required: bool = ..., used_with: _Optional[_Iterable[_Union[Condition, _Mapping]]] = ...) -> None: ...
 
 class ProcessDescription(_message.Message):
-    __slots__ = ("name", "plugin", "distribution", "version", "reaction", "summary", "order", "broken", "laws", "parameters", "masses", "contributions", "derived", "singular", "validity", "sqrt_s_min", "sqrt_s_max", "cautions", "references", "observables", "request")
+    __slots__ = ("name", "plugin", "distribution", "version", "reaction", "summary", "order", "broken", "laws", "parameters", "masses", "contributions", "derived", "singular", "validity", "sqrt_s_min", "sqrt_s_max", "cautions", "references", "observables", "request", "kinds", "signed_contributions", "polarised_beams", "closing_cuts", "claims", "alternatives")
     class MassesEntry(_message.Message):
         __slots__ = ("key", "value")
         KEY_FIELD_NUMBER: _ClassVar[int]
@@ -76,6 +103,12 @@ class ProcessDescription(_message.Message):
     REFERENCES_FIELD_NUMBER: _ClassVar[int]
     OBSERVABLES_FIELD_NUMBER: _ClassVar[int]
     REQUEST_FIELD_NUMBER: _ClassVar[int]
+    KINDS_FIELD_NUMBER: _ClassVar[int]
+    SIGNED_CONTRIBUTIONS_FIELD_NUMBER: _ClassVar[int]
+    POLARISED_BEAMS_FIELD_NUMBER: _ClassVar[int]
+    CLOSING_CUTS_FIELD_NUMBER: _ClassVar[int]
+    CLAIMS_FIELD_NUMBER: _ClassVar[int]
+    ALTERNATIVES_FIELD_NUMBER: _ClassVar[int]
     name: str
     plugin: str
     distribution: str
@@ -97,4 +130,10 @@ class ProcessDescription(_message.Message):
     references: _containers.RepeatedScalarFieldContainer[str]
     observables: _containers.RepeatedScalarFieldContainer[str]
     request: str
-    def __init__(self, name: _Optional[str] = ..., plugin: _Optional[str] = ..., distribution: _Optional[str] = ..., version: _Optional[str] = ..., reaction: _Optional[str] = ..., summary: _Optional[str] = ..., order: _Optional[str] = ..., broken: _Optional[str] = ..., laws: _Optional[_Iterable[str]] = ..., parameters: _Optional[_Iterable[_Union[ParameterDescription, _Mapping]]] = ..., masses: _Optional[_Mapping[str, float]] = ..., contributions: _Optional[_Iterable[str]] = ..., derived: _Optional[_Iterable[str]] = ..., singular: _Optional[_Iterable[str]] = ..., validity: _Optional[str] = ..., sqrt_s_min: _Optional[float] = ..., sqrt_s_max: _Optional[float] = ..., cautions: _Optional[_Iterable[str]] = ..., references: _Optional[_Iterable[str]] = ..., observables: _Optional[_Iterable[str]] = ..., request: _Optional[str] = ...) -> None: ...
+    kinds: _containers.RepeatedScalarFieldContainer[str]
+    signed_contributions: _containers.RepeatedScalarFieldContainer[str]
+    polarised_beams: _containers.RepeatedScalarFieldContainer[str]
+    closing_cuts: _containers.RepeatedScalarFieldContainer[str]
+    claims: _containers.RepeatedScalarFieldContainer[str]
+    alternatives: _containers.RepeatedCompositeFieldContainer[Alternative]
+    def __init__(self, name: _Optional[str] = ..., plugin: _Optional[str] = ..., distribution: _Optional[str] = ..., version: _Optional[str] = ..., reaction: _Optional[str] = ..., summary: _Optional[str] = ..., order: _Optional[str] = ..., broken: _Optional[str] = ..., laws: _Optional[_Iterable[str]] = ..., parameters: _Optional[_Iterable[_Union[ParameterDescription, _Mapping]]] = ..., masses: _Optional[_Mapping[str, float]] = ..., contributions: _Optional[_Iterable[str]] = ..., derived: _Optional[_Iterable[str]] = ..., singular: _Optional[_Iterable[str]] = ..., validity: _Optional[str] = ..., sqrt_s_min: _Optional[float] = ..., sqrt_s_max: _Optional[float] = ..., cautions: _Optional[_Iterable[str]] = ..., references: _Optional[_Iterable[str]] = ..., observables: _Optional[_Iterable[str]] = ..., request: _Optional[str] = ..., kinds: _Optional[_Iterable[str]] = ..., signed_contributions: _Optional[_Iterable[str]] = ..., polarised_beams: _Optional[_Iterable[str]] = ..., closing_cuts: _Optional[_Iterable[str]] = ..., claims: _Optional[_Iterable[str]] = ..., alternatives: _Optional[_Iterable[_Union[Alternative, _Mapping]]] = ...) -> None: ...

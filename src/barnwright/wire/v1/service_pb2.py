@@ -18,7 +18,7 @@ from barnwright.wire.v1 import request_pb2 as barnwright_dot_wire_dot_v1_dot_req
 from barnwright.wire.v1 import values_pb2 as barnwright_dot_wire_dot_v1_dot_values__pb2
 
 
-DESCRIPTOR = _descriptor_pool.Default().AddSerializedFile(b'\n barnwright/wire/v1/service.proto\x12\x12\x62\x61rnwright.wire.v1\x1a#barnwright/wire/v1/prediction.proto\x1a barnwright/wire/v1/process.proto\x1a barnwright/wire/v1/request.proto\x1a\x1f\x62\x61rnwright/wire/v1/values.proto\"\x16\n\x14ListProcessesRequest\"N\n\x15ListProcessesResponse\x12\x35\n\tprocesses\x18\x01 \x03(\x0b\x32\".barnwright.wire.v1.ProcessSummary\"/\n\x11GetProcessRequest\x12\x11\n\x04name\x18\x01 \x01(\tH\x00\x88\x01\x01\x42\x07\n\x05_name\"^\n\x12GetProcessResponse\x12<\n\x07process\x18\x01 \x01(\x0b\x32&.barnwright.wire.v1.ProcessDescriptionH\x00\x88\x01\x01\x42\n\n\x08_process\"W\n\x16ValidateRequestRequest\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x42\n\n\x08_request\"\xc1\x01\n\x17ValidateRequestResponse\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x12+\n\x04\x63ost\x18\x02 \x01(\x0b\x32\x18.barnwright.wire.v1.CostH\x01\x88\x01\x01\x12\x31\n\nviolations\x18\x03 \x03(\x0b\x32\x1d.barnwright.wire.v1.ViolationB\n\n\x08_requestB\x07\n\x05_cost\"n\n\x04\x43ost\x12\x13\n\x06points\x18\x01 \x01(\x03H\x00\x88\x01\x01\x12\x17\n\ncomponents\x18\x02 \x01(\x03H\x01\x88\x01\x01\x12\x13\n\x06\x62locks\x18\x03 \x01(\x03H\x02\x88\x01\x01\x42\t\n\x07_pointsB\r\n\x0b_componentsB\t\n\x07_blocks\"\xb1\x01\n\tViolation\x12\x12\n\x05\x66ield\x18\x01 \x01(\tH\x00\x88\x01\x01\x12\x12\n\x05value\x18\x02 \x01(\tH\x01\x88\x01\x01\x12\x15\n\x08\x65xpected\x18\x03 \x01(\tH\x02\x88\x01\x01\x12\x14\n\x07nearest\x18\x04 \x01(\tH\x03\x88\x01\x01\x12\x15\n\x08position\x18\x05 \x01(\x03H\x04\x88\x01\x01\x42\x08\n\x06_fieldB\x08\n\x06_valueB\x0b\n\t_expectedB\n\n\x08_nearestB\x0b\n\t_position\"?\n\nViolations\x12\x31\n\nviolations\x18\x01 \x03(\x0b\x32\x1d.barnwright.wire.v1.Violation\"O\n\x0ePredictRequest\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x42\n\n\x08_request\"Y\n\x0fPredictResponse\x12\x37\n\nprediction\x18\x01 \x01(\x0b\x32\x1e.barnwright.wire.v1.PredictionH\x00\x88\x01\x01\x42\r\n\x0b_prediction\"x\n\x0bScanRequest\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x12*\n\x04over\x18\x02 \x03(\x0b\x32\x1c.barnwright.wire.v1.ScanAxisB\n\n\x08_request\"X\n\x08ScanAxis\x12\x10\n\x03key\x18\x01 \x01(\tH\x00\x88\x01\x01\x12\x32\n\x06values\x18\x02 \x03(\x0b\x32\".barnwright.wire.v1.ParameterValueB\x06\n\x04_key\"\x81\x01\n\x0cScanResponse\x12\x12\n\x05\x66irst\x18\x01 \x01(\x03H\x00\x88\x01\x01\x12\x13\n\x06points\x18\x02 \x01(\x03H\x01\x88\x01\x01\x12\x33\n\x0bpredictions\x18\x03 \x03(\x0b\x32\x1e.barnwright.wire.v1.PredictionB\x08\n\x06_firstB\t\n\x07_points2\xe5\x03\n\x13\x43rossSectionService\x12\x64\n\rListProcesses\x12(.barnwright.wire.v1.ListProcessesRequest\x1a).barnwright.wire.v1.ListProcessesResponse\x12[\n\nGetProcess\x12%.barnwright.wire.v1.GetProcessRequest\x1a&.barnwright.wire.v1.GetProcessResponse\x12j\n\x0fValidateRequest\x12*.barnwright.wire.v1.ValidateRequestRequest\x1a+.barnwright.wire.v1.ValidateRequestResponse\x12R\n\x07Predict\x12\".barnwright.wire.v1.PredictRequest\x1a#.barnwright.wire.v1.PredictResponse\x12K\n\x04Scan\x12\x1f.barnwright.wire.v1.ScanRequest\x1a .barnwright.wire.v1.ScanResponse0\x01\x62\x06proto3')
+DESCRIPTOR = _descriptor_pool.Default().AddSerializedFile(b'\n barnwright/wire/v1/service.proto\x12\x12\x62\x61rnwright.wire.v1\x1a#barnwright/wire/v1/prediction.proto\x1a barnwright/wire/v1/process.proto\x1a barnwright/wire/v1/request.proto\x1a\x1f\x62\x61rnwright/wire/v1/values.proto\"e\n\x14ListProcessesRequest\x12\x11\n\tparticles\x18\x01 \x03(\t\x12\x13\n\x06plugin\x18\x02 \x01(\tH\x00\x88\x01\x01\x12\x11\n\x04kind\x18\x03 \x01(\tH\x01\x88\x01\x01\x42\t\n\x07_pluginB\x07\n\x05_kind\"N\n\x15ListProcessesResponse\x12\x35\n\tprocesses\x18\x01 \x03(\x0b\x32\".barnwright.wire.v1.ProcessSummary\"/\n\x11GetProcessRequest\x12\x11\n\x04name\x18\x01 \x01(\tH\x00\x88\x01\x01\x42\x07\n\x05_name\"^\n\x12GetProcessResponse\x12<\n\x07process\x18\x01 \x01(\x0b\x32&.barnwright.wire.v1.ProcessDescriptionH\x00\x88\x01\x01\x42\n\n\x08_process\"W\n\x16ValidateRequestRequest\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x42\n\n\x08_request\"\xc1\x01\n\x17ValidateRequestResponse\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x12+\n\x04\x63ost\x18\x02 \x01(\x0b\x32\x18.barnwright.wire.v1.CostH\x01\x88\x01\x01\x12\x31\n\nviolations\x18\x03 \x03(\x0b\x32\x1d.barnwright.wire.v1.ViolationB\n\n\x08_requestB\x07\n\x05_cost\"n\n\x04\x43ost\x12\x13\n\x06points\x18\x01 \x01(\x03H\x00\x88\x01\x01\x12\x17\n\ncomponents\x18\x02 \x01(\x03H\x01\x88\x01\x01\x12\x13\n\x06\x62locks\x18\x03 \x01(\x03H\x02\x88\x01\x01\x42\t\n\x07_pointsB\r\n\x0b_componentsB\t\n\x07_blocks\"\xb1\x01\n\tViolation\x12\x12\n\x05\x66ield\x18\x01 \x01(\tH\x00\x88\x01\x01\x12\x12\n\x05value\x18\x02 \x01(\tH\x01\x88\x01\x01\x12\x15\n\x08\x65xpected\x18\x03 \x01(\tH\x02\x88\x01\x01\x12\x14\n\x07nearest\x18\x04 \x01(\tH\x03\x88\x01\x01\x12\x15\n\x08position\x18\x05 \x01(\x03H\x04\x88\x01\x01\x42\x08\n\x06_fieldB\x08\n\x06_valueB\x0b\n\t_expectedB\n\n\x08_nearestB\x0b\n\t_position\"?\n\nViolations\x12\x31\n\nviolations\x18\x01 \x03(\x0b\x32\x1d.barnwright.wire.v1.Violation\"O\n\x0ePredictRequest\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x42\n\n\x08_request\"Y\n\x0fPredictResponse\x12\x37\n\nprediction\x18\x01 \x01(\x0b\x32\x1e.barnwright.wire.v1.PredictionH\x00\x88\x01\x01\x42\r\n\x0b_prediction\"x\n\x0bScanRequest\x12\x31\n\x07request\x18\x01 \x01(\x0b\x32\x1b.barnwright.wire.v1.RequestH\x00\x88\x01\x01\x12*\n\x04over\x18\x02 \x03(\x0b\x32\x1c.barnwright.wire.v1.ScanAxisB\n\n\x08_request\"X\n\x08ScanAxis\x12\x10\n\x03key\x18\x01 \x01(\tH\x00\x88\x01\x01\x12\x32\n\x06values\x18\x02 \x03(\x0b\x32\".barnwright.wire.v1.ParameterValueB\x06\n\x04_key\"\x81\x01\n\x0cScanResponse\x12\x12\n\x05\x66irst\x18\x01 \x01(\x03H\x00\x88\x01\x01\x12\x13\n\x06points\x18\x02 \x01(\x03H\x01\x88\x01\x01\x12\x33\n\x0bpredictions\x18\x03 \x03(\x0b\x32\x1e.barnwright.wire.v1.PredictionB\x08\n\x06_firstB\t\n\x07_points2\xe5\x03\n\x13\x43rossSectionService\x12\x64\n\rListProcesses\x12(.barnwright.wire.v1.ListProcessesRequest\x1a).barnwright.wire.v1.ListProcessesResponse\x12[\n\nGetProcess\x12%.barnwright.wire.v1.GetProcessRequest\x1a&.barnwright.wire.v1.GetProcessResponse\x12j\n\x0fValidateRequest\x12*.barnwright.wire.v1.ValidateRequestRequest\x1a+.barnwright.wire.v1.ValidateRequestResponse\x12R\n\x07Predict\x12\".barnwright.wire.v1.PredictRequest\x1a#.barnwright.wire.v1.PredictResponse\x12K\n\x04Scan\x12\x1f.barnwright.wire.v1.ScanRequest\x1a .barnwright.wire.v1.ScanResponse0\x01\x62\x06proto3')
 
 _globals = globals()
 _builder.BuildMessageAndEnumDescriptors(DESCRIPTOR, _globals)
@@ -26,33 +26,33 @@ _builder.BuildTopDescriptorsAndMessages(DESCRIPTOR, 'barnwright.wire.v1.service_
 if _descriptor._USE_C_DESCRIPTORS == False:
   DESCRIPTOR._options = None
   _globals['_LISTPROCESSESREQUEST']._serialized_start=194
-  _globals['_LISTPROCESSESREQUEST']._serialized_end=216
-  _globals['_LISTPROCESSESRESPONSE']._serialized_start=218
-  _globals['_LISTPROCESSESRESPONSE']._serialized_end=296
-  _globals['_GETPROCESSREQUEST']._serialized_start=298
-  _globals['_GETPROCESSREQUEST']._serialized_end=345
-  _globals['_GETPROCESSRESPONSE']._serialized_start=347
-  _globals['_GETPROCESSRESPONSE']._serialized_end=441
-  _globals['_VALIDATEREQUESTREQUEST']._serialized_start=443
-  _globals['_VALIDATEREQUESTREQUEST']._serialized_end=530
-  _globals['_VALIDATEREQUESTRESPONSE']._serialized_start=533
-  _globals['_VALIDATEREQUESTRESPONSE']._serialized_end=726
-  _globals['_COST']._serialized_start=728
-  _globals['_COST']._serialized_end=838
-  _globals['_VIOLATION']._serialized_start=841
-  _globals['_VIOLATION']._serialized_end=1018
-  _globals['_VIOLATIONS']._serialized_start=1020
-  _globals['_VIOLATIONS']._serialized_end=1083
-  _globals['_PREDICTREQUEST']._serialized_start=1085
-  _globals['_PREDICTREQUEST']._serialized_end=1164
-  _globals['_PREDICTRESPONSE']._serialized_start=1166
-  _globals['_PREDICTRESPONSE']._serialized_end=1255
-  _globals['_SCANREQUEST']._serialized_start=1257
-  _globals['_SCANREQUEST']._serialized_end=1377
-  _globals['_SCANAXIS']._serialized_start=1379
-  _globals['_SCANAXIS']._serialized_end=1467
-  _globals['_SCANRESPONSE']._serialized_start=1470
-  _globals['_SCANRESPONSE']._serialized_end=1599
-  _globals['_CROSSSECTIONSERVICE']._serialized_start=1602
-  _globals['_CROSSSECTIONSERVICE']._serialized_end=2087
+  _globals['_LISTPROCESSESREQUEST']._serialized_end=295
+  _globals['_LISTPROCESSESRESPONSE']._serialized_start=297
+  _globals['_LISTPROCESSESRESPONSE']._serialized_end=375
+  _globals['_GETPROCESSREQUEST']._serialized_start=377
+  _globals['_GETPROCESSREQUEST']._serialized_end=424
+  _globals['_GETPROCESSRESPONSE']._serialized_start=426
+  _globals['_GETPROCESSRESPONSE']._serialized_end=520
+  _globals['_VALIDATEREQUESTREQUEST']._serialized_start=522
+  _globals['_VALIDATEREQUESTREQUEST']._serialized_end=609
+  _globals['_VALIDATEREQUESTRESPONSE']._serialized_start=612
+  _globals['_VALIDATEREQUESTRESPONSE']._serialized_end=805
+  _globals['_COST']._serialized_start=807
+  _globals['_COST']._serialized_end=917
+  _globals['_VIOLATION']._serialized_start=920
+  _globals['_VIOLATION']._serialized_end=1097
+  _globals['_VIOLATIONS']._serialized_start=1099
+  _globals['_VIOLATIONS']._serialized_end=1162
+  _globals['_PREDICTREQUEST']._serialized_start=1164
+  _globals['_PREDICTREQUEST']._serialized_end=1243
+  _globals['_PREDICTRESPONSE']._serialized_start=1245
+  _globals['_PREDICTRESPONSE']._serialized_end=1334
+  _globals['_SCANREQUEST']._serialized_start=1336
+  _globals['_SCANREQUEST']._serialized_end=1456
+  _globals['_SCANAXIS']._serialized_start=1458
+  _globals['_SCANAXIS']._serialized_end=1546
+  _globals['_SCANRESPONSE']._serialized_start=1549
+  _globals['_SCANRESPONSE']._serialized_end=1678
+  _globals['_CROSSSECTIONSERVICE']._serialized_start=1681
+  _globals['_CROSSSECTIONSERVICE']._serialized_end=2166
 # @@protoc_insertion_point(module_scope)

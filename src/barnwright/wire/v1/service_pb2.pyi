@@ -10,8 +10,14 @@ from typing import ClassVar as _ClassVar, Iterable as _Iterable, Mapping as _Map
 DESCRIPTOR: _descriptor.FileDescriptor
 
 class ListProcessesRequest(_message.Message):
-    __slots__ = ()
-    def __init__(self) -> None: ...
+    __slots__ = ("particles", "plugin", "kind")
+    PARTICLES_FIELD_NUMBER: _ClassVar[int]
+    PLUGIN_FIELD_NUMBER: _ClassVar[int]
+    KIND_FIELD_NUMBER: _ClassVar[int]
+    particles: _containers.RepeatedScalarFieldContainer[str]
+    plugin: str
+    kind: str
+    def __init__(self, particles: _Optional[_Iterable[str]] = ..., plugin: _Optional[str] = ..., kind: _Optional[str] = ...) -> None: ...
 
 class ListProcessesResponse(_message.Message):
     __slots__ = ("processes",)

@@ -47,7 +47,7 @@ class CrossSectionServiceServicer(object):
     """
 
     def ListProcesses(self, request, context):
-        """Every process that is installed, sorted by name, the broken ones with the cause.
+        """Every process that is installed, or those that are asked for, sorted by name, the broken ones with the cause.
         """
         context.set_code(grpc.StatusCode.UNIMPLEMENTED)
         context.set_details('Method not implemented!')
