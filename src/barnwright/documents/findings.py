@@ -141,7 +141,7 @@ def _expected(place: Place, details: Mapping[str, Any]) -> str:
         return place.expects
     if isinstance(place.core, type) and issubclass(place.core, BaseModel):
         return f"a table with {', '.join(keys_of(place.core))}"
-    return str(details["msg"])
+    return "a value, since there is no default" if details["type"] == "missing" else str(details["msg"])
 
 
 def _choices(choices: Sequence[Any]) -> str:
