@@ -76,8 +76,9 @@ def test_cells_of_a_map_lie_around_their_points() -> None:
         ("mass(mu-, mu+)", "GeV", r"$m(\mu^{-},\,\mu^{+})$ [GeV]"),
         ("sqrt_s", "GeV", r"$\sqrt{s}$ [GeV]"),
         ("theta(mu-)", "rad", r"$\theta(\mu^{-})$ [rad]"),
-        ("theta(mu-)/deg", "", r"$\theta(\mu^{-})$ [°]"),
-        ("energy(e-) / keV", "", "$E(e^{-})$ [keV]"),
+        ("theta(mu-)/deg", "deg", r"$\theta(\mu^{-})$ [°]"),
+        ("energy(e-) / keV", "keV", "$E(e^{-})$ [keV]"),
+        ("transfer(beam_a, mu-)/MeV", "GeV", "transfer(beam_a, mu-)/MeV [GeV]"),
         ("pt(mu-) + 2*pt(mu+)", "GeV", "pt(mu-) + 2*pt(mu+) [GeV]"),
         ("transfer(beam_a, mu-)", "GeV^2", r"$t(\mathrm{beam}_a,\,\mu^{-})$ [GeV²]"),
         ("pt(nothing)", "GeV", "pt(nothing) [GeV]"),
@@ -101,11 +102,10 @@ def test_density_labels_say_what_is_divided_by_what() -> None:
 
 
 def test_densities_in_degrees_are_per_degree() -> None:
-    """The unit that an observable is divided by stands below the line of the density's unit."""
-    angle, momentum = ("theta(mu-)/deg", ""), ("pt(mu-)", "GeV")
-    assert density_label([angle], "value", "pb", "sigma") == r"$\mathrm{d}\sigma/\mathrm{d}\theta(\mu^{-})$ [pb/°]"
-    assert density_label([momentum, angle], "value", "pb/GeV", "sigma").endswith("[pb/(GeV °)]")
-    assert density_label([angle, angle], "value", "pb", "sigma").endswith("[pb/°²]")
+    """An observable in degrees has its symbol, and the density is one per degree."""
+    angle = ("theta(mu-)/deg", "deg")
+    assert density_label([angle], "value", "pb/deg", "sigma") == r"$\mathrm{d}\sigma/\mathrm{d}\theta(\mu^{-})$ [pb/°]"
+    assert density_label([angle, angle], "value", "pb/deg^2", "sigma").endswith("[pb/°²]")
 
 
 def test_units_and_names_are_printed_as_in_papers() -> None:
@@ -191,6 +191,7 @@ def test_requests_that_are_no_picture(number: int, message: str) -> None:
     """Without a histogram there is nothing to draw, and too many of them are no picture."""
     with pytest.raises(RequestError, match=message):
         check_drawable([None] * number)
+    check_drawable(7)  # what is no list at all is for the check of the document to say
 
 
 def test_missing_matplotlib_names_the_extra(monkeypatch: pytest.MonkeyPatch) -> None:

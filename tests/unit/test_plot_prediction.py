@@ -56,8 +56,8 @@ def test_errors_that_are_not_known_draw_nothing() -> None:
 
 
 def test_variations_have_lines_and_a_panel_of_ratios() -> None:
-    """Below the lines stands each variation over the nominal values, whose relative error is the band around 1."""
-    shown = ByName([histogram([1.0, 2.0, 0.0, 4.0], errors=np.array([0.1, 0.1, 0.0, 0.4]))])
+    """Each variation stands over the nominal values (not over rounding), whose relative error is the band around 1."""
+    shown = ByName([histogram([1.0, 2.0, 1e-16, 4.0], errors=np.array([0.1, 0.1, 0.0, 0.4]))])
     varied = ByName([part("up", [2.0, 3.0, 1.0, 4.0]), part("down", [0.5, 1.0, 0.0, 2.0])])
     main, ratio = draw(prediction([1.0], histograms=shown, variations=varied)).axes
     assert legend(main) == ["nominal", "up", "down"]

@@ -14,6 +14,8 @@ from barnwright.plot.strokes import Stroke
 
 #: The share of a panel's height that a row of its legend takes, and what is free around all rows.
 ROW, AROUND = 0.068, 0.04
+#: How many characters a row of a legend may have, how many small ones, and how many of them the sample of a line takes.
+CHARACTERS, SMALL_CHARACTERS, HANDLE = 64, 76, 8
 #: No legend pushes the lines into less than this share of a panel.
 LEAST = 0.5
 #: Heights in inches of a main panel and of a lower one.
@@ -125,14 +127,21 @@ def _limits(axes: Any, panel: Panel, arrays: Sequence[Array]) -> None:
 
 
 def _legend(axes: Any, entries: Sequence[tuple[str, Any]]) -> None:
-    """A legend in rows at the top, above the lines."""
+    """A legend in rows at the top, above the lines; in smaller letters where there are many."""
     labels, artists = zip(*entries, strict=True)
-    longest = max(map(len, labels))
-    columns = min(len(labels), 3 if longest <= 16 else 2 if longest <= 30 else 1)
+    columns, size = _columns(labels, CHARACTERS), "medium"
+    if len(labels) > 3 * columns:
+        columns, size = _columns(labels, SMALL_CHARACTERS), "small"
     rows = -(-len(labels) // columns)
     _make_room(axes, min(ROW * rows + AROUND, LEAST))
-    size = "small" if rows > 3 else "medium"
     axes.legend(artists, labels, loc="upper left", ncols=columns, frameon=False, fontsize=size)
+
+
+def _columns(labels: Sequence[str], width: int) -> int:
+    """How many labels fit beside each other into so many characters."""
+    if sum(map(len, labels)) + HANDLE * len(labels) <= width:
+        return len(labels)
+    return max(1, min(len(labels), width // (max(map(len, labels)) + HANDLE)))
 
 
 def _make_room(axes: Any, share: float) -> None:

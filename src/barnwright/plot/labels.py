@@ -41,12 +41,11 @@ _NAME = re.compile(r"^([A-Za-z])(?:_([A-Za-z0-9]+))?$")
 def observable_label(text: str, unit: str) -> str:
     """An axis label: the observable in symbols where it is one known function, else its own text; unit in brackets.
 
-    A division by ``deg`` or by an energy, such as ``theta(mu-)/deg``, is shown as that unit.
+    ``theta(mu-)/deg``, whose unit is deg, is θ in degrees.
     """
-    body, own = _in_unit(text, unit)
-    symbols = observable_symbols(body)
-    label = f"${symbols}$" if symbols is not None else plain(body, 60)
-    return f"{label} [{unit_label(own)}]" if own else label
+    symbols = observable_symbols(_without_unit(text, unit))
+    label = f"${symbols}$" if symbols is not None else plain(text, 60)
+    return f"{label} [{unit_label(unit)}]" if unit else label
 
 
 def observable_symbols(text: str) -> str | None:
@@ -73,8 +72,6 @@ def density_label(axes: Sequence[tuple[str, str]], per: str, unit: str, letter: 
     """The label of what a histogram in ``axes``, observables and their units, holds, in ``unit``.
 
     The letter is "sigma" for a cross section, "Gamma" for a width.
-
-    An observable in a unit of its own, such as ``theta(mu-)/deg``, moves that unit below the line: pb/°.
     """
     quantity = rf"\{letter}"
     if per == "bin":
@@ -82,13 +79,11 @@ def density_label(axes: Sequence[tuple[str, str]], per: str, unit: str, letter: 
     if per == "solid_angle":
         return rf"$\mathrm{{d}}{quantity}/\mathrm{{d}}\Omega$ [{unit_label(unit)}]"
     power = "" if len(axes) == 1 else f"^{len(axes)}"
-    split = [_in_unit(*axis) for axis in axes]
-    below = [observable_symbols(text) for text, _ in split]
+    below = [observable_symbols(_without_unit(*axis)) for axis in axes]
     if any(symbols is None for symbols in below):
         below = ["x"] if len(below) == 1 else [f"x_{number}" for number in range(1, len(below) + 1)]
     inside = r"\,".join(rf"\mathrm{{d}}{_apart(str(symbols))}" for symbols in below)
-    divided = _divided(unit, [own for (_, given), (_, own) in zip(axes, split, strict=True) if not given])
-    return rf"$\mathrm{{d}}{power}{quantity}/{inside}$ [{unit_label(divided)}]"
+    return rf"$\mathrm{{d}}{power}{quantity}/{inside}$ [{unit_label(unit)}]"
 
 
 def unit_label(unit: str) -> str:
@@ -126,29 +121,15 @@ def plain(text: str, width: int) -> str:
     return short.replace("$", r"\$")
 
 
-def _in_unit(text: str, unit: str) -> tuple[str, str]:
-    """An observable without the unit that it is divided by, and that unit; only where none is left otherwise."""
+def _without_unit(text: str, unit: str) -> str:
+    """An observable without the unit that it is divided by, where that is its own: the label says it in brackets."""
     match = _IN_UNIT.match(text.strip())
-    if unit or match is None or observable_symbols(match[1]) is None:
-        return text, unit
-    return match[1], match[2]
+    return match[1] if match is not None and match[2] == unit else text
 
 
 def _apart(symbols: str) -> str:
     """Symbols that may follow an upright d: a function's name keeps its distance."""
     return rf"\,{symbols}" if symbols.startswith(r"\cos") else symbols
-
-
-def _divided(unit: str, below: list[str]) -> str:
-    """A unit divided by further ones: pb and deg give "pb/deg"."""
-    further = [part for part in below if part]
-    if not further:
-        return unit
-    above, _, known = unit.partition("/")
-    parts = [*([known.strip("()")] if known else []), *further]
-    if len(parts) == 2 and parts[0] == parts[1]:
-        parts = [f"{parts[0]}^2"]
-    return f"{above}/{parts[0]}" if len(parts) == 1 else f"{above}/({' '.join(parts)})"
 
 
 def _leg(name: str) -> str | None:

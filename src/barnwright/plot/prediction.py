@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sized
 from typing import TYPE_CHECKING
 
 from barnwright.documents import DecayBeams, EnvelopeRequest
@@ -15,7 +15,7 @@ from barnwright.plot.quantity import Derived, Numbers, Quantity, chart_of
 from barnwright.plot.strokes import Steps
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable, Sized
+    from collections.abc import Iterable
 
     from matplotlib.figure import Figure
 
@@ -45,12 +45,12 @@ def draw(prediction: Prediction) -> Figure:
     return compose(heading(prediction, f"{_total(prediction.total)} ({prediction.status})"), blocks)
 
 
-def check_drawable(histograms: Sized | None) -> None:
+def check_drawable(histograms: object) -> None:
     """Refuse a request whose histograms are none, or too many for a picture. Raises RequestError."""
     if not histograms:
         expected = "at least one histogram, since a picture is wanted"
         raise RequestError([Violation("histograms", "nothing", expected)])
-    if len(histograms) > MOST:
+    if isinstance(histograms, Sized) and len(histograms) > MOST:
         expected = f"at most {MOST} of them, since a picture is wanted"
         raise RequestError([Violation("histograms", f"{len(histograms)} histograms", expected)])
 

@@ -15,6 +15,8 @@ from barnwright.plot.strokes import Stroke
 
 #: More derived quantities than this share one panel.
 APART = 3
+#: Values below this share of the largest one are rounding: nothing is divided by them.
+NOTHING = 1e-12
 
 
 @dataclass(frozen=True, slots=True)
@@ -98,7 +100,8 @@ def _lines(named: Sequence[tuple[str, Numbers]], looks: Looks, with_bars: int) -
 
 def _ratios(nominal: Series, variations: Sequence[Series], bands: Sequence[Band]) -> list[Panel]:
     """Variations and envelopes over the nominal values, whose own error is the band around 1; none where all is 0."""
-    known = np.isfinite(nominal.values) & (nominal.values != 0)
+    sizes = np.abs(nominal.values)
+    known = sizes > NOTHING * np.nanmax(sizes, initial=0.0)
     if not known.any() or not (variations or bands):
         return []
     below = np.where(known, nominal.values, np.nan)
