@@ -145,7 +145,10 @@ def test_description_has_what_a_user_needs() -> None:
     assert alpha.source
     assert description.masses["mu-"] == pytest.approx(0.10566, abs=1e-5)
     assert (description.sqrt_s_min, description.sqrt_s_max) == (0.0, 30.0)
-    assert description.laws == ("closed form in cos_theta(1, frame=cm)", "squared amplitude", "helicity amplitudes")
+    form, squared, helicity = description.laws
+    assert (form, squared) == ("closed form in cos_theta(1, frame=cm)", "squared amplitude")
+    assert helicity == "helicity amplitudes (e- and e+ may be polarised)"
+    assert description.polarised_beams == ("e-", "e+")
     assert description.cautions
     assert description.references
 
