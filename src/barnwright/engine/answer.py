@@ -55,3 +55,12 @@ class Answer:
         """This answer with the chosen rows taken from another."""
         self.value[rows], self.error[rows], self.counts[rows] = found.value, found.error, found.counts
         return Answer(self.value, self.error, self.counts, self.worst or found.worst)
+
+    def placed(self, rows: slice, components: Integers, found: Answer) -> Answer:
+        """This answer with another in some of its rows and components; what both counted is added up."""
+        self.value[rows, components], self.error[rows, components] = found.value, found.error
+        counts = self.counts[rows]
+        undefined = np.maximum(counts[:, -1], found.counts[:, -1])
+        counts += found.counts
+        counts[:, -1] = undefined
+        return Answer(self.value, self.error, self.counts, self.worst or found.worst)

@@ -1,8 +1,9 @@
-"""The outer axis: the azimuth, integrated only where a cut or a histogram asks for it.
+"""The azimuth, integrated only where a cut or a histogram asks for it.
 
 Without transverse polarisation nothing depends on the azimuth but the observables themselves. Panels in the azimuth
 end where an observable of the azimuth alone crosses an edge; where azimuth and polar angle mix, panels are halved
-until the answer settles.
+until the answer settles. Where beams cross at an angle all of the lab depends on the azimuth of the cm, and then the
+polar angle is the outer axis (`over_circles`).
 """
 
 from __future__ import annotations
@@ -15,9 +16,12 @@ from numpy.typing import NDArray
 
 from barnwright.engine.answer import Answer
 from barnwright.engine.edges import levels_by_observable
+from barnwright.engine.integrand import Integrand
+from barnwright.engine.over_circles import over_circles
 from barnwright.engine.polar import over_polar_angle
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
+from barnwright.engine.turning import Split, split
 from barnwright.integrate.gauss import FIRST_ORDER, embedded_weights, gauss_legendre
 from barnwright.integrate.panels import panels_between
 from barnwright.integrate.polar_axis import Ends, Integers
@@ -33,21 +37,39 @@ DEEPEST = 10
 
 def over_azimuth(process: Process, setting: Setting, layout: Layout, rows: Rows) -> Answer:
     """Totals, bins and asymmetries of every row, averaged over the azimuth where something depends on it."""
-    if not needs_azimuth(setting, layout, rows):
+    crossed = rows.collision.crossed is not None
+    questions = split(setting, layout, crossed)
+    if questions is None:
         return over_polar_angle(process, setting, layout, rows)
+    if crossed:
+        return _crossed(process, setting, questions, rows)
     wanted = levels_by_observable(setting.cuts, layout)
     answer = Answer.empty(rows.count, layout.components)
     for point in range(rows.count):
-        one = Rows(rows.reaction, rows.collision.take(slice(point, point + 1)), rows.masses, rows.azimuth)
-        found = _one_point(process, setting, layout, one, wanted)
+        found = _one_point(process, setting, layout, rows.take(point), wanted)
         answer = answer.filled(np.array([point]), found)
     return answer
 
 
 def needs_azimuth(setting: Setting, layout: Layout, rows: Rows) -> bool:
-    """Whether a cut or a question depends on the azimuth."""
-    del rows
+    """Whether a cut or a question depends on the azimuth in a way for which parts of the law are done one by one."""
+    if rows.collision.crossed is not None:
+        return False
     return any(observable.azimuthal for observable in levels_by_observable(setting.cuts, layout))
+
+
+def _crossed(process: Process, setting: Setting, questions: Split, rows: Rows) -> Answer:
+    """Beams that cross at an angle, point by point; what does not turn is done for all points at once."""
+    whole = Answer.empty(rows.count * len(setting.parts), questions.components)
+    parameters = process.parameters_of(setting.parameters)
+    for point in range(rows.count):
+        integrand = Integrand(process, setting, rows.take(point), parameters)
+        found = over_circles(integrand, questions.turning)
+        whole = whole.placed(slice(point, None, rows.count), questions.turning_places, found)
+    if questions.still is None:
+        return whole
+    found = over_polar_angle(process, setting, questions.still, rows)
+    return whole.placed(slice(None), questions.still_places, found)
 
 
 def _one_point(

@@ -102,15 +102,16 @@ def axis_crossings(
         if is_polar(observable, collision.lab_is_cm):
             shared.append(polar_crossings(observable, collision.orientation, levels))
         else:
-            parts.extend(_searched(observable, levels, values, rows))
+            parts.extend(searched_crossings(observable, levels, values, rows))
     if not parts:
         return Crossings.join(shared), 1
     return Crossings.join([*(_for_every_row(s, rows) for s in shared), *parts]), rows
 
 
-def _searched(
+def searched_crossings(
     observable: Observable, levels: Array, values: Callable[[Observable, Integers, Ends], Array], rows: int
 ) -> Iterator[Crossings]:
+    """The crossings of an observable that has to be asked, one after another for each of its entries."""
     for entry in range(observable.entries):
 
         def one(row: Integers, ends: Ends, entry: int = entry) -> Array:

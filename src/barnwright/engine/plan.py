@@ -19,12 +19,15 @@ from typing import Any
 
 from barnwright.documents import Request
 from barnwright.engine.setting import Layout, Setting
+from barnwright.engine.turning import split
 from barnwright.integrate.block import Round, Strand
 from barnwright.integrate.estimate import Rule
 from barnwright.integrate.ledger import Frozen
 from barnwright.reaction import Reaction
 
 NODES_A_BLOCK = 100_000
+NODES_AROUND = 200
+"""How many times as many where something depends on the azimuth."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -172,10 +175,19 @@ class Plan:
     def ranges(self) -> Iterator[tuple[int, int]]:
         """Ranges of points of about `NODES_A_BLOCK` nodes each."""
         nodes = 5 * (self.components + 8)
-        step = max(1, NODES_A_BLOCK // nodes)
-        for start, stop in zip(self.starts, self.starts[1:], strict=False):
+        for group, start, stop in zip(self.groups, self.starts, self.starts[1:], strict=False):
+            around = NODES_AROUND if self._turns(group) else 1
+            step = max(1, NODES_A_BLOCK // (nodes * around))
             for first in range(start, stop, step):
                 yield first, min(first + step, stop)
+
+    def _turns(self, group: Group) -> bool:
+        """Whether a question of a group depends on the azimuth."""
+        return any(
+            split(setting, member.layout, bool(setting.beams.crossing_angle)) is not None
+            for member, share in zip(self.members, group.shares, strict=True)
+            for setting in share.settings
+        )
 
     @property
     def name(self) -> str:

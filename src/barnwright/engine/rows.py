@@ -37,6 +37,10 @@ class Rows:
         """How many rows there are."""
         return int(self.collision.sqrt_s.shape[0])
 
+    def take(self, row: int) -> Rows:
+        """One of the rows of a batch at azimuth 0."""
+        return Rows(self.reaction, self.collision.take(slice(row, row + 1)), self.masses, self.azimuth)
+
     def event(self, row: Integers | None, ends: Ends) -> Event:
         """The events at locations on the polar axis.
 
@@ -65,15 +69,7 @@ class Rows:
         return TwoBody(self.collision, self.masses, ends.one_minus, ends.one_plus, self.azimuth)
 
     def _reshaped(self, flat: Integers, shape: tuple[int, ...]) -> Collision:
-        whole = self.collision
-        return Collision(
-            whole.sqrt_s[flat, 0].reshape(shape),
-            whole.correction[flat, 0].reshape(shape),
-            whole.stretch[flat, 0].reshape(shape),
-            whole.orientation,
-            whole.target,
-            whole.lab_is_cm,
-        )
+        return self.collision.mapped(lambda array: array[flat, 0].reshape(shape))
 
     def values(self, observable: Observable, row: Integers | None, ends: Ends) -> Array:
         """An observable at locations on the polar axis, entries first where it has a quantifier."""

@@ -144,20 +144,21 @@ def _chandrupatla(function: AxisFunction, part: _Stretch, level: Array) -> Array
     fa, fb = part.at_high - level, part.at_low - level
     c, fc = a.copy(), fa.copy()
     t = np.full_like(a, 0.5)
-    best, done = a, np.zeros(a.shape, dtype=bool)
+    best, live = a.copy(), np.arange(a.size)
     for _ in range(120):
         xt = a + t * (b - a)
-        ft = function(part.row, ends_of(part.mode, xt)) - level
+        ft = function(part.row[live], ends_of(part.mode[live], xt)) - level[live]
         same = (ft >= 0) == (fa >= 0)
         c, fc = np.where(same, a, b), np.where(same, fa, fb)
         b, fb = np.where(same, b, a), np.where(same, fb, fa)
         a, fa = xt, ft
-        best = np.where(done, best, np.where(np.abs(fa) < np.abs(fb), a, b))
-        with np.errstate(divide="ignore", invalid="ignore"):
-            limit = 0.5 * (2 * EPSILON * np.abs(best) + 1e-300) / np.abs(b - a)
-            done |= (limit > 0.5) | (fa == 0) | (fb == 0)
-            if done.all():
+        best[live] = nearer = np.where(np.abs(fa) < np.abs(fb), a, b)
+        with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
+            limit = 0.5 * (2 * EPSILON * np.abs(nearer) + 1e-300) / np.abs(b - a)
+            open_ = ~((limit > 0.5) | (fa == 0) | (fb == 0))
+            if not open_.any():
                 break
+            a, b, c, fa, fb, fc, limit, live = (array[open_] for array in (a, b, c, fa, fb, fc, limit, live))
             t = np.clip(_next_step((a, fa), (b, fb), (c, fc)), np.minimum(limit, 0.5), np.maximum(1 - limit, 0.5))
     return best
 

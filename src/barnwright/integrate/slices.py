@@ -20,9 +20,9 @@ _TOWARDS_POLE = 1.37 * 10.0 ** np.arange(-14, 0, 2)
 """No round numbers: edges of requests are, and one within rounding of a slice could not be told from it in cos θ."""
 
 
-def slices(rows: int, even: bool) -> Crossings:
+def slices(rows: int, even: bool, steps: int = EVEN) -> Crossings:
     """The ends of the slices of both hemispheres, the same for every row; ``even`` for those in equal steps as well."""
-    inner = np.concatenate([_TOWARDS_POLE, np.arange(1, EVEN) / EVEN]) if even else _TOWARDS_POLE
+    inner = np.concatenate([_TOWARDS_POLE, np.arange(1, steps) / steps]) if even else _TOWARDS_POLE
     both: NDArray[np.float64] = np.tile(inner, 2)
     return Crossings(
         np.repeat(np.arange(rows), both.size),

@@ -45,7 +45,7 @@ def deviation(found: FourVector, expected: list[mpf]) -> float:
 
 @pytest.mark.parametrize("case", CASES)
 def test_s_keeps_its_digits(case: Crossing) -> None:
-    """√s − m_a − m_b is right to 4e-15 of itself however the beams lie, the flux (where m_a − m_b is rounded) to 1e-13."""
+    """√s − m_a − m_b is right to 4e-15 of itself however the beams lie; the flux (m_a − m_b is rounded) to 1e-13."""
     found, total = collision_of(case), sum(map(mpf, case.masses))
     above = mp.sqrt(square(case.system)) - total
     assert abs(float(mpf(float(found.above(sum(case.masses))[0, 0])) / above - 1)) < 4e-15

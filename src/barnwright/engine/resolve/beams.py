@@ -74,8 +74,6 @@ def _collider(beams: ColliderBeams, columns: Columns, context: BeamContext) -> B
     ahead = -1
     if beams.along_z is not None:
         ahead = beam_code(beams.along_z, context.reaction, "beams.along_z", findings) or -1
-    if beams.crossing_angle:
-        findings.add("beams.crossing_angle", beams.crossing_angle, "0: beams head on", "0")
     orientation = 1 if ahead == -1 else -1
     if beams.energies is None:
         values = _column("sqrt_s", beams.sqrt_s, columns, context)
@@ -91,14 +89,17 @@ def _collider(beams: ColliderBeams, columns: Columns, context: BeamContext) -> B
             continue
         values = _column(f"energies.{name}", energy, columns, context)
         mass = context.mass(code)
-        expected = f"a number not less than the mass of {context.name(code)}, {mass!r} (GeV)"
-        _check(where, values, mass, expected, findings, closed=True)
+        crossed = bool(beams.crossing_angle)
+        more = "greater than" if crossed else "not less than"
+        why = ": beams that cross at an angle both move" if crossed else ""
+        expected = f"a number {more} the mass of {context.name(code)}, {mass!r} (GeV){why}"
+        _check(where, values, mass, expected, findings, closed=not crossed)
         kinetic[code] = tuple(kinetic_from_energy(v, mass) for v in values)
     if set(kinetic) != {-1, -2}:
         return None
     if any(a + b == 0 for a, b in zip(kinetic[-1], kinetic[-2], strict=True)):
         findings.add("beams.energies", beams.energies, "at least one beam that moves")
-    return BeamSettings("kinetic", kinetic[-1], kinetic[-2], orientation)
+    return BeamSettings("kinetic", kinetic[-1], kinetic[-2], orientation, crossing_angle=beams.crossing_angle or 0.0)
 
 
 def _fixed_target(beams: FixedTargetBeams, columns: Columns, context: BeamContext) -> BeamSettings | None:

@@ -40,7 +40,8 @@ def _setting(setting: Setting) -> list[Any]:
     beams = setting.beams
     return [
         setting.name,
-        [beams.given, beams.first, beams.second, beams.orientation, beams.target, beams.polarisation],
+        [beams.given, beams.first, beams.second, beams.orientation, beams.target],
+        [beams.polarisation, beams.crossing_angle],
         setting.masses,
         setting.parameters,
         [_cut(cut) for cut in setting.cuts],

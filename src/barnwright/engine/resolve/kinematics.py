@@ -17,7 +17,8 @@ def check_kinematics(reaction: Reaction, layout: Layout, settings: tuple[Setting
     """Refuse leading(x, by="energy") where the lab is the cm, and rest frames of what has no mass."""
     nominal = settings[0]
     collision = collide(nominal.beams, nominal.masses[:2])
-    lab_is_cm = collision.lab_is_cm or bool(np.all(collision.stretch == 1.0))
+    head_on = collision.crossed is None
+    lab_is_cm = collision.lab_is_cm or (head_on and bool(np.all(collision.stretch == 1.0)))
     for where, observable in asked_observables(nominal.cuts, layout):
         if lab_is_cm and tied_selections(observable):
             expected = "each(...), any(...), min(...) or max(...): in the cm both particles have the same energy"
