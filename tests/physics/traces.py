@@ -45,10 +45,11 @@ def pair(momenta: tuple[Any, Any, Any, Any], light: Any, heavy: Any, alpha: Any)
     a, b, one, two = momenta
     s = (a[0] + b[0]) ** 2 - sum((a[i] + b[i]) ** 2 for i in range(1, 4))
     total = mpmath.mpf(0)
+    before = [(slash(b) - light * ONE) * gamma * (slash(a) + light * ONE) for gamma in GAMMA]
+    after = [(slash(one) + heavy * ONE) * gamma * (slash(two) - heavy * ONE) for gamma in GAMMA]
     for mu in range(4):
         for nu in range(4):
-            left = (slash(b) - light * ONE) * GAMMA[mu] * (slash(a) + light * ONE) * GAMMA[nu]
-            right = (slash(one) + heavy * ONE) * GAMMA[mu] * (slash(two) - heavy * ONE) * GAMMA[nu]
+            left, right = before[mu] * GAMMA[nu], after[mu] * GAMMA[nu]
             product = sum(left[i, i] for i in range(4)) * sum(right[i, i] for i in range(4))
             total += METRIC[mu] * METRIC[nu] * mpmath.re(product)
     return (4 * mpmath.pi * alpha) ** 2 * total / (4 * s**2)
