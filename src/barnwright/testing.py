@@ -20,9 +20,11 @@ __all__ = ["check_process", "findings_of_process"]
 def findings_of_process(process: Process) -> list[str]:
     """Every finding about a process, each a sentence with the offending values; an empty list when it conforms.
 
-    First what is checked when a plugin is loaded (signatures, shapes on three points, finite and positive numbers).
-    Then, when that holds: closed forms against the integral of the first law to 1e-8, and claimed exchanges of the two
-    outgoing particles.
+    First what is checked when a plugin is loaded (signatures, shapes on three points, finite and positive numbers, of
+    the whole and of each contribution alone). Then, when that holds, to 1e-8: laws with an angular distribution
+    against the first of them, closed forms against its integral, the sum of the contributions against the whole,
+    amplitudes asked for some helicities against the same among all, and claimed exchanges of the two outgoing
+    particles.
     """
     return findings_of(process) or second_road_findings(process)
 
