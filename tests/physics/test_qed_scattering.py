@@ -144,6 +144,19 @@ def test_open_poles_are_refused(name: str) -> None:
     assert caught.value.violations[0].nearest is not None
 
 
+@pytest.mark.parametrize("method", ["closed_form", "quadrature"])
+def test_compton_without_a_mass(method: str) -> None:
+    """Massless, with a cut on the electron: ∫ (πα²/s)(y + 1/y) dcos θ, y = (1 + cos θ)/2, to 1e-11; else refused."""
+    beams, masses = {"kind": "collider", "sqrt_s": 2.0}, {"e-": 0.0}
+    with pytest.raises(barnwright.RequestError, match="cuts: got 'none', expected a cut that keeps u"):
+        predict("compton", beams, masses)
+    cut = {"name": "seen", "observable": "cos_theta(e-, frame=cm)", "max": 0.9}
+    found = predict("compton", beams, masses, cuts=[cut], accuracy={"method": method}).total
+    low = 0.05
+    expected = np.pi * ALPHA**2 / 4 * (1 - low**2 - 2 * np.log(low)) * TO_BARN
+    assert found.value == pytest.approx(expected, rel=1e-11, abs=0)
+
+
 HEAVY = 2.0**30
 LIGHT = (ELECTRON + HEAVY) - HEAVY
 """GeV: a muon whose recoil is 1e-12 of the energy, and the electron's mass, rounded so that their sum is exact."""
