@@ -89,7 +89,7 @@ def z_width(used_with: UsedWith = None) -> Any:
 
 def w_mass(used_with: UsedWith = None) -> Any:
     """The mass of the W; type it `Positive`."""
-    meaning = "mass of the W, in the running-width form"
+    meaning = "mass of the W, in the same form as z_mass"
     return parameter(table.mass(table.W), unit="GeV", meaning=meaning, source=table.SOURCE, used_with=used_with)
 
 
@@ -97,10 +97,23 @@ def width_scheme(used_with: UsedWith = None) -> Any:
     """The form of the Z's propagator; type it `WidthScheme`."""
     return parameter(
         "running",
-        meaning="form of the Z's propagator: running (width grows with s), fixed or complex_mass",
+        meaning="form of the Z's propagator, to which its mass and width belong: running (width grows with s, none "
+        "below 0), fixed (a constant one) or complex_mass (the complex pole; couplings stay real, so it is fixed again)",
         source="the form that the published mass and width of the Z belong to",
         used_with=used_with,
     )
+
+
+def charm_mass() -> Any:
+    """The kinematic mass of the charm quark; type it `NotNegative`."""
+    meaning = "kinematic mass of the charm quark; the default is the running mass at itself"
+    return parameter(table.mass(table.CHARM), unit="GeV", meaning=meaning, source=table.SOURCE)
+
+
+def bottom_mass() -> Any:
+    """The kinematic mass of the bottom quark; type it `NotNegative`."""
+    meaning = "kinematic mass of the bottom quark; the default is the running mass at itself"
+    return parameter(table.mass(table.BOTTOM), unit="GeV", meaning=meaning, source=table.SOURCE)
 
 
 class ElectroweakInputs(Parameters):
