@@ -127,6 +127,10 @@ def add_panels(target: Array, component: Integers, amounts: Array) -> None:
     column by column, few rows all at once.
     """
     rows, components = target.shape
+    if rows == 1 and component.shape == amounts.shape:
+        kept = component[0] != OUTSIDE
+        target[0] += np.bincount(component[0][kept], weights=amounts[0][kept], minlength=components)
+        return
     if component.shape[0] == 1 and rows >= MANY_ROWS:
         panels, summed = amounts.shape[1], np.zeros((components, rows))
         places = np.broadcast_to(component, (1, panels))[0].tolist()
