@@ -54,6 +54,22 @@ def test_the_request_belongs_to_its_envelope() -> None:
     assert found.derived["coupling"].high == found.total.value
 
 
+def test_an_envelope_of_a_sum_is_that_of_its_total() -> None:
+    """Members are summed first."""
+    asked = {
+        **REQUEST,
+        "process": None,
+        "processes": ["qed/muon-pair", "qed/tau-pair"],
+        "cuts": [],
+        "histograms": [],
+        "variations": [{"name": "up", "parameters": {"alpha": ALPHAS["up"]}}],
+        "derived": [{"name": "coupling", "kind": "envelope", "of": ["up"]}],
+    }
+    found = barnwright.predict(asked)
+    assert found.derived["coupling"].value == found.total.value
+    assert found.derived["coupling"].high == found.variations["up"].total.value
+
+
 def part(name: str, total: float | None, values: list[float]) -> Part:
     """A part with one histogram per value, half a unit wide."""
     histogram = Histogram.build(

@@ -21,17 +21,18 @@ REQUEST: dict[str, Any] = {
     "variations": [
         {"name": "wide", "cuts": [{"name": "acceptance", "max": 0.9}]},
         {"name": "strong", "parameters": {"alpha": 0.0078}},
+        {"name": "open", "cuts": [{"name": "acceptance", "min": 0.5, "max": None}]},
         {"name": "nothing", "parameters": {"alpha": 0.0}},
     ],
     "derived": [
-        {"name": "spread", "kind": "envelope", "of": ["wide", "strong"]},
+        {"name": "spread", "kind": "envelope", "of": ["wide", "strong", "open"]},
         {"name": "R", "kind": "ratio", "between": ["wide", "nothing"]},
     ],
 }
 
 
 def test_all_faces_give_the_same_ends(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
-    """Ends of the total and of every bin, and the note on what cannot be divided."""
+    """Ends of the total and of every bin, a limit that is taken away, and the note on what cannot be divided."""
     file = tmp_path / "request.json"
     file.write_text(json.dumps(REQUEST))
     here = barnwright.predict(REQUEST)

@@ -6,9 +6,9 @@ from typing import Any, TypeVar
 
 from google.protobuf.message import DecodeError, Message
 
-from barnwright.errors import RequestError, Violation
+from barnwright.errors import RequestError, Violation, show
 from barnwright.wire.numbers import unpack
-from barnwright.wire.shapes import ENTRIES, VALUE, FieldShape, Form, Shape, shape_of
+from barnwright.wire.shapes import ABSENT, ENTRIES, VALUE, FieldShape, Form, Shape, shape_of
 from barnwright.wire.unknown import refuse_unknown
 
 M = TypeVar("M", bound=Message)
@@ -37,23 +37,32 @@ def decode(message: Message) -> dict[str, Any]:
     others what is not set is None, and an empty list or table is there.
 
     Raises:
-        RequestError: when an array's lengths do not agree, or a value has none of its kinds.
+        RequestError: when an array's lengths do not agree, a value has none of its kinds, or is null and set.
     """
     return _table(message, shape_of(message.DESCRIPTOR), "")
 
 
 def _table(message: Any, shape: Shape, path: str) -> dict[str, Any]:
     if shape.sparse:
-        return {
+        said = {
             set_field.name: _field(value, shape.fields[set_field.name], _join(path, set_field.name))
             for set_field, value in message.ListFields()
         }
+        return _with_nulls(said, path) if shape.nulls else said
     return {
         name: None
         if field.single and not message.HasField(name)
         else _field(getattr(message, name), field, _join(path, name))
         for name, field in shape.fields.items()
     }
+
+
+def _with_nulls(said: dict[str, Any], path: str) -> dict[str, Any]:
+    """The table with the keys that its message names as null."""
+    nulls = said.pop(ABSENT, ())
+    if twice := [name for name in nulls if name in said]:
+        raise RequestError([Violation(_join(path, ABSENT), show(twice[0]), "the name of a field that is not set")])
+    return {**said, **dict.fromkeys(nulls)}
 
 
 def _field(value: Any, field: FieldShape, path: str) -> Any:

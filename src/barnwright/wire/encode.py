@@ -8,13 +8,15 @@ from typing import Any, TypeVar
 from google.protobuf.message import Message
 
 from barnwright.wire.numbers import pack
-from barnwright.wire.shapes import ENTRIES, FieldShape, Form, Shape, shape_of
+from barnwright.wire.shapes import ABSENT, ENTRIES, FieldShape, Form, Shape, shape_of
 
 M = TypeVar("M", bound=Message)
 
 
 def encode(document: Mapping[str, Any], kind: type[M]) -> M:
     """The message of this kind that holds a document of plain values; None and what is left out are not set.
+
+    Where the difference matters, the message names the keys that are None.
 
     Raises:
         ValueError: when the document has a key that the message lacks, or a value that it cannot carry; the text
@@ -24,7 +26,9 @@ def encode(document: Mapping[str, Any], kind: type[M]) -> M:
 
 
 def _table(document: Mapping[str, Any], shape: Shape, path: str) -> dict[str, Any]:
-    fields = {}
+    fields: dict[str, Any] = {}
+    if shape.nulls and (nulls := [name for name, value in document.items() if value is None]):
+        fields[ABSENT] = nulls
     for name, value in document.items():
         if value is None:
             continue

@@ -16,6 +16,7 @@ REQUEST_FILE = "barnwright/wire/v1/request.proto"
 NUMBERS = "barnwright.wire.v1.Numbers"
 VALUE = "value"
 ENTRIES = "entries"
+ABSENT = "absent"
 
 _WHOLE = (
     FieldDescriptor.CPPTYPE_INT32,
@@ -50,7 +51,8 @@ class Shape:
     """One kind of message.
 
     ``kinds`` are, for a value, the fields of its oneof by the Python type that each carries. ``sparse`` messages belong
-    to the request: what they do not hold was not said, and is left to the defaults of the document.
+    to the request: what they do not hold was not said, and is left to the defaults of the document. ``nulls``: a field
+    of the message names the keys that are there and null.
     """
 
     form: Form
@@ -58,6 +60,7 @@ class Shape:
     fields: dict[str, FieldShape]
     kinds: dict[type, str]
     sparse: bool
+    nulls: bool
 
 
 @lru_cache(maxsize=256)
@@ -69,6 +72,7 @@ def shape_of(descriptor: Descriptor) -> Shape:
         fields={field.name: _field(field) for field in descriptor.fields},
         kinds={_python_type(field): field.name for field in descriptor.fields if field.containing_oneof is not None},
         sparse=descriptor.file.name == REQUEST_FILE,
+        nulls=ABSENT in descriptor.fields_by_name,
     )
 
 

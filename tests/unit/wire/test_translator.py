@@ -69,6 +69,22 @@ def test_a_request_comes_back_as_it_was(text: str, form: str) -> None:
     assert found.canonical_json() == request.canonical_json()
 
 
+def test_a_limit_that_a_variation_takes_away_is_taken_away() -> None:
+    """Null differs from not saying; an unknown name is refused like an unknown key, one that is set as well."""
+    varied = {"name": "wide", "cuts": [{"name": "cut-1", "max": None, "outside": None, "min": 0.5}]}
+    request = Request.model_validate({**Request.from_toml(REQUEST).given(), "variations": [varied]})
+    for document in (request.given(), request.canonical()):
+        sent = encode(document, request_pb2.Request).SerializeToString()
+        found = Request.model_validate(decode(parse(sent, request_pb2.Request)))
+        assert found.canonical_json() == request.canonical_json()
+        (cut,) = found.varied(found.variations[0]).cuts
+        assert (cut.min, cut.max, cut.outside) == (0.5, None, None)
+    odd = decode(request_pb2.Cut(name="c", absent=["colour"]))
+    assert odd == {"name": "c", "colour": None}
+    with pytest.raises(RequestError, match=r"^absent: got 'min', expected the name of a field that is not set$"):
+        decode(request_pb2.Cut(min=1.0, absent=["min"]))
+
+
 def test_kinds_of_parameter_values_are_kept() -> None:
     """A whole number stays one, a float with a whole value stays a float, and false is not 0."""
     values: dict[str, Any] = {"a": 1, "b": 1.0, "c": False, "d": "word"}

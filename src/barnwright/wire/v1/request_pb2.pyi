@@ -95,18 +95,20 @@ class Beams(_message.Message):
     def __init__(self, kind: _Optional[str] = ..., sqrt_s: _Optional[float] = ..., energies: _Optional[_Mapping[str, float]] = ..., crossing_angle: _Optional[float] = ..., along_z: _Optional[str] = ..., polarisation: _Optional[_Mapping[str, float]] = ..., energy: _Optional[float] = ..., kinetic_energy: _Optional[float] = ..., momentum: _Optional[float] = ..., target: _Optional[str] = ..., mass: _Optional[float] = ...) -> None: ...
 
 class Cut(_message.Message):
-    __slots__ = ("name", "observable", "min", "max", "outside")
+    __slots__ = ("name", "observable", "min", "max", "outside", "absent")
     NAME_FIELD_NUMBER: _ClassVar[int]
     OBSERVABLE_FIELD_NUMBER: _ClassVar[int]
     MIN_FIELD_NUMBER: _ClassVar[int]
     MAX_FIELD_NUMBER: _ClassVar[int]
     OUTSIDE_FIELD_NUMBER: _ClassVar[int]
+    ABSENT_FIELD_NUMBER: _ClassVar[int]
     name: str
     observable: str
     min: float
     max: float
     outside: _containers.RepeatedScalarFieldContainer[float]
-    def __init__(self, name: _Optional[str] = ..., observable: _Optional[str] = ..., min: _Optional[float] = ..., max: _Optional[float] = ..., outside: _Optional[_Iterable[float]] = ...) -> None: ...
+    absent: _containers.RepeatedScalarFieldContainer[str]
+    def __init__(self, name: _Optional[str] = ..., observable: _Optional[str] = ..., min: _Optional[float] = ..., max: _Optional[float] = ..., outside: _Optional[_Iterable[float]] = ..., absent: _Optional[_Iterable[str]] = ...) -> None: ...
 
 class HistogramRequest(_message.Message):
     __slots__ = ("name", "observables", "bins", "per")
