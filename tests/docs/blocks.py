@@ -1,7 +1,8 @@
 """Fenced blocks of a Markdown page, run in order as a reader would: one folder, one Python session, one shell.
 
 toml      the first line names a file (`# request.toml`): it is written
-python    executed; pycon: its outputs are compared too ("..." stands for anything)
+python    executed, or written where the first line names a file (`# package/module.py`)
+pycon     executed, and its outputs are compared ("..." stands for anything)
 console   `$ command` lines are run and their outputs compared; a command that ends in & runs until the page ends
 sh, text  only shown
 """
@@ -25,6 +26,15 @@ PORT = "50551"
 OPTIONS = doctest.ELLIPSIS | doctest.NORMALIZE_WHITESPACE
 NUMBER = re.compile(r"(?<!\w)[+-]?\d+(?:\.\d*)?(?:e[+-]?\d+)?(?:\(\d+\))?")
 CLOSE = 1e-10
+PLAIN = {"COLUMNS": "100", "NO_COLOR": "1"}
+# what a page installs goes into its folder, made of what is here already (pip reads "0" as: no isolation)
+INSTALLING = {
+    "PIP_NO_BUILD_ISOLATION": "0",
+    "PIP_NO_DEPS": "1",
+    "PIP_NO_INDEX": "1",
+    "PIP_ROOT_USER_ACTION": "ignore",
+    "PIP_DISABLE_PIP_VERSION_CHECK": "1",
+}
 
 
 class Checker(doctest.OutputChecker):
@@ -99,12 +109,20 @@ class Reader:
     _text = _sh
 
     def _toml(self, block: Block) -> None:
-        name = re.match(r"# (\S+\.toml)\n", block.text)
-        assert name, f"{self.page.name}:{block.line}: a toml block names its file in its first line"
-        (self.folder / name[1]).write_text(block.text, encoding="utf-8")
+        assert self._written(block), f"{self.page.name}:{block.line}: a toml block names its file in its first line"
+
+    def _written(self, block: Block) -> bool:
+        """Write the block into the file that its first line names; whether it names one."""
+        name = re.match(rf"# (\S+\.{'py' if block.language == 'python' else block.language})\n", block.text)
+        if name:
+            (self.folder / name[1]).parent.mkdir(parents=True, exist_ok=True)
+            (self.folder / name[1]).write_text(block.text, encoding="utf-8")
+        return bool(name)
 
     def _python(self, block: Block) -> None:
-        exec(compile("\n" * (block.line - 1) + block.text, self.page.name, "exec"), self.names)  # noqa: S102
+        if not self._written(block):
+            text = "\n" * (block.line - 1) + block.text
+            exec(compile(text, self.page.name, "exec", dont_inherit=True), self.names)  # noqa: S102
 
     def _pycon(self, block: Block) -> None:
         test = doctest.DocTestParser().get_doctest(block.text, self.names, self.page.name, None, block.line - 1)
@@ -125,7 +143,8 @@ class Reader:
 
     def _environment(self) -> dict[str, str]:
         path = f"{Path(sys.executable).parent}{os.pathsep}{os.environ['PATH']}"
-        return {**os.environ, "PATH": path, "COLUMNS": "100", "NO_COLOR": "1"}
+        site = str(self.folder / "site")
+        return {**os.environ, **INSTALLING, "PIP_TARGET": site, "PYTHONPATH": site, "PATH": path, **PLAIN}
 
     def _shell(self, command: str) -> str:
         shell = ["bash", "-c", command]
