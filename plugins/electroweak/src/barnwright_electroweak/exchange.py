@@ -48,10 +48,10 @@ class Strengths(NamedTuple):
     photon: float
     z: dict[Chiralities, float]
 
-    @property
-    def axial(self) -> float:
-        """g_Z² times the product of the couplings to γ^μγ⁵."""
-        return (self.z[LL] + self.z[RR] - self.z[LR] - self.z[RL]) / 4
+    def parity(self, axial: int, other_axial: int) -> float:
+        """g_Z² times the couplings of both lines, each to γ^μ (0) or to γ^μγ⁵ (1)."""
+        signs = {(tau, rho): (tau if axial else 1) * (rho if other_axial else 1) for tau, rho in self.z}
+        return sum(signs[chiralities] * strength for chiralities, strength in self.z.items()) / 4
 
 
 class Rates(NamedTuple):

@@ -29,15 +29,14 @@ from barnwright_electroweak.exchange import (
     EVERYTHING,
     LL,
     LR,
+    PHOTON,
     RL,
     RR,
-    Chiralities,
     Fermion,
     Parts,
     Rates,
     Strengths,
     Z,
-    amplitudes,
     products,
     rates,
     strengths,
@@ -61,15 +60,12 @@ class Coefficients(NamedTuple):
 
 
 class Angles(NamedTuple):
-    """1 + cos θ and 1 − cos θ, every digit kept at the poles; shape (point, node)."""
+    """1 + cos θ and 1 − cos θ with every digit kept at the poles, cos θ and sin θ; shape (point, node)."""
 
     plus: Array
     minus: Array
-
-    @property
-    def sine(self) -> Array:
-        """sin θ."""
-        return np.sqrt(self.plus * self.minus)
+    cosine: Array
+    sine: Array
 
 
 @dataclass(frozen=True, slots=True)
@@ -81,8 +77,11 @@ class FermionPair:
     def squared(self, event: Event, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
         """|M|², dimensionless."""
         known = self._coefficients(event.s, event.mass("beam_a"), event.mass(1), parameters, parts)
-        backward, forward = event.dot("beam_a", 2), event.dot("beam_a", 1)
-        return np.asarray(known.backward * np.square(backward) + known.forward * np.square(forward) + known.flat)
+        backward, forward = event.once(("squares", "beam_a"), lambda: _squares(event))
+        total = known.backward * backward
+        total += known.forward * forward
+        total += known.flat
+        return np.asarray(total)
 
     def cumulative(self, x: Array, point: Point, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
         """∫ dσ/dc from c = 0 to x in GeV⁻²; dσ/dc = |M|² q/(32π s p)."""
@@ -103,13 +102,11 @@ class FermionPair:
     ) -> Complex:
         """M of the wanted helicities of e-, e+, f, f~ in the cm, dimensionless; phases of rows left free."""
         lines = _Lines.of(event, strengths(ELECTRON, self.fermion, parameters), parameters, parts)
-        at, known = _angles(event), {}
+        at: Angles = event.once(("angles", "beam_a"), lambda: _angles(event))
         found = np.empty((len(helicities), 1, *event.shape), dtype=complex)
         for row, combination in zip(found, helicities, strict=True):
             kinds = _kinds(combination)
-            if kinds not in known:
-                known[kinds] = _angular(at, kinds)
-            np.multiply(lines.strength(kinds), known[kinds], out=row[0])
+            np.multiply(lines.strength(kinds), _angular(at, kinds), out=row[0])
             if kinds == (0, 0):
                 row[0] += combination[0] * combination[2] * lines.spin_zero
         return found
@@ -125,7 +122,7 @@ class FermionPair:
             flat = flat + light**2 * _light(s, heavy**2, known, at)
             if Z in parts:
                 contact = np.abs(z_propagator(0.0, parameters)) ** 2 - at.z
-                flat = flat + 4 * (light * heavy * known.axial) ** 2 * contact
+                flat = flat + 4 * (light * heavy * known.parity(1, 1)) ** 2 * contact
         backward, forward = products(known, ((LL, LL), (RR, RR)), at), products(known, ((LR, LR), (RL, RL)), at)
         colours = 4.0 * self.fermion.colours
         return Coefficients(colours * backward, colours * forward, colours * flat)
@@ -138,37 +135,46 @@ def _light(s: Array, heavy_squared: float, known: Strengths, at: Rates) -> Array
 
 
 class _Lines(NamedTuple):
-    """s G by chirality, the velocities of both lines, m/E and M/E, and the amplitude of spin 0; shape (point, 1)."""
+    """What the lines and the propagators make of s G, shape (point, 1).
 
-    by_chirality: dict[Chiralities, Complex]
-    velocities: tuple[Array, Array]
+    ``photon`` and ``z`` are s times the propagators, 0 where they are switched off; ``weak`` has the couplings to the Z
+    by (γ^μ, γ^μγ⁵) of both lines, an axial one with its velocity; ``shares`` are m/E and M/E.
+    """
+
+    photon: Array | float
+    z: Complex | float
+    weak: tuple[Array | float, ...]
     shares: tuple[Array, Array]
-    spin_zero: Complex
+    spin_zero: Complex | float
 
     @classmethod
     def of(cls, event: Event, known: Strengths, parameters: ElectroweakInputs, parts: Parts) -> _Lines:
         s, sqrt_s = event.s, event.sqrt_s
-        found = amplitudes(known, 1 / s, z_propagator(s, parameters), parts)
-        before, after = event.transfer("beam_a", "beam_b"), event.transfer(1, 2)
         shares = (2 * event.mass("beam_a") / sqrt_s, 2 * event.mass(1) / sqrt_s)
-        contact = z_propagator(0.0, parameters) if Z in parts else np.zeros((), dtype=complex)
-        return cls(
-            {chiralities: s * strength for chiralities, strength in found.items()},
-            (np.sqrt(-before) / sqrt_s, np.sqrt(-after) / sqrt_s),
-            shares,
-            np.asarray(s * shares[0] * shares[1] * known.axial * contact),
+        photon = known.photon if PHOTON in parts else 0.0
+        if Z not in parts:
+            return cls(photon, 0.0, (0.0,) * 4, shares, 0.0)
+        before = np.sqrt(-event.transfer("beam_a", "beam_b")) / sqrt_s
+        after = np.sqrt(-event.transfer(1, 2)) / sqrt_s
+        weak = (
+            known.parity(0, 0),
+            after * known.parity(0, 1),
+            before * known.parity(1, 0),
+            before * after * known.parity(1, 1),
         )
+        contact = z_propagator(0.0, parameters) * known.parity(1, 1)
+        return cls(photon, s * z_propagator(s, parameters), weak, shares, s * shares[0] * shares[1] * contact)
 
     def strength(self, kinds: tuple[int, int]) -> Complex:
         """s G of the two lines, each of helicities (1, −1), (−1, 1) or of equal ones: 1, −1 or 0."""
-        total: Complex = np.zeros((), dtype=complex)
-        for chiralities, strength in self.by_chirality.items():
-            weight: Array | float = 1.0
-            for kind, chirality, velocity in zip(kinds, chiralities, self.velocities, strict=True):
-                weight = weight * ((1 + kind * chirality * velocity) / 2)
-            total = total + weight * strength
+        one, other = kinds
+        vector, right, left, axial = self.weak
+        total = np.asarray(
+            self.photon + (vector + other * right + one * (left + other * axial)) * self.z, dtype=complex
+        )
         for kind, share in zip(kinds, self.shares, strict=True):
-            total = total if kind else total * share
+            if not kind:
+                total = total * share
         return total
 
 
@@ -181,12 +187,19 @@ def _kinds(combination: Combination) -> tuple[int, int]:
 def _angular(at: Angles, kinds: tuple[int, int]) -> Array:
     if 0 not in kinds:
         return at.plus if kinds[0] == kinds[1] else at.minus
-    return at.sine if any(kinds) else (at.plus - at.minus) / 2
+    return at.sine if any(kinds) else at.cosine
+
+
+def _squares(event: Event) -> tuple[Array, Array]:
+    """(a·2)² and (a·1)² in GeV⁴."""
+    return np.square(event.dot("beam_a", 2)), np.square(event.dot("beam_a", 1))
 
 
 def _angles(event: Event) -> Angles:
+    """1 ± cos θ and sin θ; at the threshold all are 0."""
     quarter, light, heavy = event.s / 4, event.mass("beam_a") ** 2, event.mass(1) ** 2
     step = np.sqrt(event.transfer("beam_a", "beam_b") * event.transfer(1, 2)) / 4
     floor = (quarter * (light + heavy) - light * heavy) / (quarter + step)
     step = np.maximum(step, TINY)
-    return Angles((event.dot("beam_a", 2) - floor) / step, (event.dot("beam_a", 1) - floor) / step)
+    plus, minus = ((event.dot("beam_a", leg) - floor) / step for leg in (2, 1))
+    return Angles(plus, minus, (plus - minus) / 2, np.sqrt(np.maximum(plus * minus, 0.0)))

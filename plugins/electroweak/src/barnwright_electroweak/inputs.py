@@ -98,7 +98,7 @@ def width_scheme(used_with: UsedWith = None) -> Any:
     return parameter(
         "running",
         meaning="form of the Z's propagator, to which its mass and width belong: running (width grows with s, none "
-        "below 0), fixed (a constant one) or complex_mass (the complex pole; couplings stay real, so it is fixed again)",
+        "below 0), fixed (a constant one) or complex_mass (the complex pole; couplings stay real: the same line)",
         source="the form that the published mass and width of the Z belong to",
         used_with=used_with,
     )
