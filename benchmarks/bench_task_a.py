@@ -1,4 +1,7 @@
-"""Task A: e- e+ -> mu- mu+, the total and 100 bins of cos theta, against what is written by hand in an afternoon.
+"""Task A: e- e+ -> mu- mu+ by photon and Z, total and 100 bins of cos theta, against what is written in an afternoon.
+
+By squared amplitude and by helicity amplitudes with the answer of the whole alone, as the comparators have it, and as
+the process is installed: with photon, Z and interference reported as well, which are four answers in the place of one.
 
 Every contender is timed in turn, again and again, and the medians are compared, so that a busy machine slows all of
 them. The answers are compared first: a ratio of two different numbers says nothing.
@@ -12,23 +15,28 @@ import sys
 import time
 from collections.abc import Callable, Iterator, Mapping
 from contextlib import contextmanager
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from statistics import median
 from typing import Any
 
 import numpy as np
-from comparators import ELECTRON, MUON, GaussLegendre, quad_bins
+from comparators import ALPHA, MIXING, MUON, Z_MASS, Z_WIDTH, GaussLegendre, quad_bins
 
 import barnwright
 from barnwright.engine import evaluate, resolve
 from barnwright.engine.calculate import calculate
 from barnwright.integrate.ledger import Ledger
+from barnwright.process import Process
 from barnwright.registry import catalogue
+from barnwright.run.objects import loaded_object
 
-BINS, POINTS, REPEATS, SCAN_REPEATS = 100, 1000, 101, 9
-SQRT_S = 10.0
+BINS, POINTS, REPEATS, SCAN_REPEATS = 100, 1000, 51, 7
+NAME = "electroweak/muon-pair"
+SQRT_S = 60.0
 EDGES = np.linspace(-1.0, 1.0, BINS + 1)
-ENERGIES = np.linspace(5.0, 25.0, POINTS)
+ENERGIES = np.linspace(20.0, 200.0, POINTS)
+KINDS = ("squared_amplitude", "helicity_amplitudes", "closed_form")
+WORDS = {"squared amplitude": KINDS[0], "helicity amplitudes": KINDS[1], "closed form": KINDS[2]}
 Contenders = Mapping[str, Callable[[], object]]
 
 
@@ -43,22 +51,26 @@ class Target:
 
 
 ONE_ENERGY = (
-    Target("kernel, quadrature", 100, 300),
-    Target("predict, quadrature", 7, 20),
-    Target("predict, closed form", 7, 20),
-    Target("gRPC, quadrature", 2, 5),
-    Target("gRPC, closed form", 2, 5),
+    Target("kernel, squared amplitude", 100, 300),
+    Target("kernel, helicity amplitudes", 100, 300),
+    Target("predict, quadrature, contributions", 7, 20),
+    Target("predict, closed form, contributions", 7, 20),
+    Target("gRPC, quadrature, contributions", 2, 5),
+    Target("gRPC, closed form, contributions", 2, 5),
 )
 SCAN = (
-    Target("scan, arrays, quadrature", 5, 3, slower=True),
-    Target("scan, arrays, closed form", 5, 3, slower=True),
-    Target("scan, every prediction, quadrature", 60, 20, slower=True),
-    Target("scan, every prediction, closed form", 60, 20, slower=True),
+    Target("arrays, squared amplitude", 5, 3, slower=True),
+    Target("arrays, helicity amplitudes", 5, 3, slower=True),
+    Target("arrays, closed form", 5, 3, slower=True),
+    Target("arrays, quadrature, contributions", 5, 3, slower=True),
+    Target("every prediction, squared amplitude", 60, 20, slower=True),
+    Target("every prediction, helicity amplitudes", 60, 20, slower=True),
+    Target("every prediction, quadrature, contributions", 60, 20, slower=True),
 )
 
 
-def request(method: str) -> barnwright.Request:
-    """The request of task A with the comparators' masses, bins as contents."""
+def request(method: str | None = None) -> barnwright.Request:
+    """The request of task A with the comparators' numbers, bins as contents."""
     histogram = {
         "name": "angle",
         "observables": ["cos_theta(mu-, frame=cm)"],
@@ -66,20 +78,28 @@ def request(method: str) -> barnwright.Request:
         "per": "bin",
     }
     return barnwright.Request.accept(
-        process="qed/muon-pair",
+        process=NAME,
         beams={"kind": "collider", "sqrt_s": SQRT_S},
-        masses={"e-": ELECTRON, "mu-": MUON},
+        parameters={"alpha": ALPHA, "sin2_theta_w": MIXING, "z_mass": Z_MASS, "z_width": Z_WIDTH},
+        masses={"mu-": MUON},
         histograms=[histogram],
-        accuracy={"method": method},
+        accuracy={} if method is None else {"method": method},
     )
 
 
-def kernel(method: str) -> Callable[[], object]:
+def alone(kind: str) -> Process:
+    """The process with one of its laws, or its closed form, and no contributions."""
+    whole = catalogue().load(NAME).process
+    laws = tuple(law for law in whole.laws if law.kind == kind)
+    forms = whole.closed_forms if kind == "closed_form" else ()
+    return replace(whole, laws=laws, closed_forms=forms, contributions={})
+
+
+def kernel(process: Process) -> Callable[[], object]:
     """Only the work on the block, as a worker does it."""
-    loaded = catalogue().load("qed/muon-pair")
-    plan = resolve(request(method), catalogue().load)
+    plan = resolve(request(), lambda _: loaded_object(process))
     stage, blocks = plan.stage(), list(next(calculate(plan, Ledger(plan.digest))))
-    return lambda: [evaluate(block, stage, loaded.process) for block in blocks]
+    return lambda: [evaluate(block, stage, process) for block in blocks]
 
 
 def one_energy(client: Any) -> Contenders:
@@ -87,35 +107,46 @@ def one_energy(client: Any) -> Contenders:
     by_quadrature, by_form = request("quadrature"), request("closed_form")
     return {
         "scipy quad, bin by bin": lambda: quad_bins(EDGES, SQRT_S**2),
-        "kernel, quadrature": kernel("quadrature"),
-        "predict, quadrature": lambda: barnwright.predict(by_quadrature),
-        "predict, closed form": lambda: barnwright.predict(by_form),
-        "gRPC, quadrature": lambda: client.predict(by_quadrature),
-        "gRPC, closed form": lambda: client.predict(by_form),
+        "kernel, squared amplitude": kernel(alone(KINDS[0])),
+        "kernel, helicity amplitudes": kernel(alone(KINDS[1])),
+        "predict, quadrature, contributions": lambda: barnwright.predict(by_quadrature),
+        "predict, closed form, contributions": lambda: barnwright.predict(by_form),
+        "gRPC, quadrature, contributions": lambda: client.predict(by_quadrature),
+        "gRPC, closed form, contributions": lambda: client.predict(by_form),
     }
 
 
 def many_energies() -> Contenders:
     """What is measured over a thousand energies."""
     bare = GaussLegendre(EDGES)
-    over = {"beams.sqrt_s": ENERGIES.tolist()}
+    scans = {word: scanned(request(), alone(kind)) for word, kind in WORDS.items()}
+    scans["quadrature, contributions"] = scanned(request("quadrature"), None)
     contenders: dict[str, Callable[[], object]] = {"bare Gauss-Legendre loop, 4 nodes a bin": lambda: bare(ENERGIES)}
-    for method, words in (("quadrature", "quadrature"), ("closed_form", "closed form")):
-        asked = request(method)
-        contenders[f"scan, arrays, {words}"] = lambda asked=asked: barnwright.scan(asked, over=over).values
-        contenders[f"scan, every prediction, {words}"] = lambda asked=asked: list(barnwright.scan(asked, over=over))
+    for words, scan in scans.items():
+        contenders[f"arrays, {words}"] = lambda scan=scan: scan().values
+        contenders[f"every prediction, {words}"] = lambda scan=scan: list(scan())
     return contenders
+
+
+def scanned(asked: barnwright.Request, process: Process | None) -> Callable[[], Any]:
+    """A scan of a request over the energies, with a process object or the one that it names."""
+    over = {"beams.sqrt_s": ENERGIES.tolist()}
+    given = {} if process is None else {"process": process}
+    return lambda: barnwright.scan(asked, over=over, **given)
 
 
 def check_answers(client: Any) -> None:
     """All of them give the same bins to 1e-10, or nothing is measured."""
-    by_hand = quad_bins(EDGES, SQRT_S**2)
-    loop = GaussLegendre(EDGES)(ENERGIES)
-    for method in ("quadrature", "closed_form"):
-        for answer in (barnwright.predict(request(method)), client.predict(request(method))):
-            np.testing.assert_allclose(answer.histograms["angle"].values, by_hand[1:], rtol=1e-9)
-            np.testing.assert_allclose(answer.total.value, by_hand[0], rtol=1e-9)
-        sweep = barnwright.scan(request(method), over={"beams.sqrt_s": ENERGIES.tolist()})
+    by_hand, loop = quad_bins(EDGES, SQRT_S**2), GaussLegendre(EDGES)(ENERGIES)
+    found = [barnwright.predict(request(), process=alone(kind)) for kind in KINDS]
+    found += [
+        face.predict(request(method)) for face in (barnwright, client) for method in ("quadrature", "closed_form")
+    ]
+    for answer in found:
+        np.testing.assert_allclose(answer.histograms["angle"].values, by_hand[1:], rtol=1e-9)
+        np.testing.assert_allclose(answer.total.value, by_hand[0], rtol=1e-9)
+    for kind in KINDS:
+        sweep = scanned(request(), alone(kind))()
         np.testing.assert_allclose(sweep.values, loop.sum(axis=1), rtol=1e-9)
         np.testing.assert_allclose(sweep[-1].histograms["angle"].values, loop[-1], rtol=1e-9)
 

@@ -72,8 +72,10 @@ class Integrand:
             count = self.rows.count
             if ends.one_plus.shape[0] == self.count:
                 ends = Ends(ends.one_minus[:count], ends.one_plus[:count])
-            at, shape = self._at(None, ends), (count, ends.one_plus.shape[1])
-            return np.concatenate([np.broadcast_to(at(parts), shape) for parts in self.parts])
+            at, found = self._at(None, ends), np.empty((len(self.parts), count, ends.one_plus.shape[1]))
+            for number, parts in enumerate(self.parts):
+                found[number] = at(parts)
+            return found.reshape(self.count, -1)
         number, own = np.divmod(row, self.rows.count)
         at = self._at(own, ends)
         chosen = number if row.ndim == ends.one_plus.ndim else number[:, None]

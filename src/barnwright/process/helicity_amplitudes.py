@@ -120,8 +120,15 @@ class HelicityAmplitudes:
         for i, line in enumerate(self.colour):
             for j, entry in enumerate(line):
                 if entry:
-                    total = total + np.real(entry * first[i] * np.conj(second[j]))
+                    total = total + _real_product(complex(entry), first[i], second[j])
         return np.asarray(total)
+
+
+def _real_product(entry: complex, first: Complex, second: Complex) -> Array:
+    """Re(entry · first · second*), in real numbers where the entry is one."""
+    if entry.imag:
+        return np.asarray(np.real(entry * first * np.conj(second)))
+    return np.asarray(entry.real * (first.real * second.real + first.imag * second.imag))
 
 
 def _is_whole(parts: Parts) -> bool:
