@@ -73,8 +73,8 @@ class Integrand:
             if ends.one_plus.shape[0] == self.count:
                 ends = Ends(ends.one_minus[:count], ends.one_plus[:count])
             at, found = self._at(None, ends), np.empty((len(self.parts), count, ends.one_plus.shape[1]))
-            for number, parts in enumerate(self.parts):
-                found[number] = at(parts)
+            for answer, parts in zip(found, self.parts, strict=True):
+                answer[:] = at(parts)
             return found.reshape(self.count, -1)
         number, own = np.divmod(row, self.rows.count)
         at = self._at(own, ends)
