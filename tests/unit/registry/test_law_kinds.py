@@ -132,7 +132,7 @@ FAULTS: dict[str, tuple[Any, dict[str, Any]]] = {
         HelicityAmplitudes(lambda event, parameters: event.t, helicities=ROWS),
         {},
     ),
-    "expected finite numbers, got nan at sqrt_s = 1.58489 GeV, cos_theta = -0.9; 12 of 12 points": (
+    "expected finite numbers, got inf at sqrt_s = 1.58489 GeV, cos_theta = -0.9; 12 of 12 points": (
         HelicityAmplitudes(lambda event, parameters: np.full((4, 1, 1, 1), np.inf), helicities=ROWS),
         {},
     ),
