@@ -108,7 +108,7 @@ class FermionPair:
             kinds = _kinds(combination)
             np.multiply(lines.strength(kinds), _angular(at, kinds), out=row[0])
             if kinds == (0, 0):
-                row[0] += combination[0] * combination[2] * lines.spin_zero
+                row[0] -= combination[0] * combination[2] * lines.spin_zero
         return found
 
     def _coefficients(

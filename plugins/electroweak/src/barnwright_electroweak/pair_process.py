@@ -27,7 +27,9 @@ ALTERNATIVES: dict[str, dict[str, float | str]] = {
 }
 ASYMMETRY = {"name": "A_FB", "kind": "asymmetry", "observable": "cos_theta(1, frame=cm)", "at": 0.0}
 
-OPPOSITE, EQUAL = ((-1, 1), (1, -1)), ((-1, -1), (1, 1))
+Line = tuple[tuple[int, int], ...]
+Choice = tuple[Line, Line, tuple[str, ...]]
+OPPOSITE, EQUAL, LEFT_HANDED = ((-1, 1), (1, -1)), ((-1, -1), (1, 1)), ((-1, 1),)
 
 
 class Kind(NamedTuple):
@@ -70,17 +72,19 @@ def pair(name: str, kind: Kind, masses: Mapping[str, float | str], notes: tuple[
 
 def _roads(laws: FermionPair, kind: Kind) -> tuple[HelicityAmplitudes, ...]:
     """The same amplitudes with fewer rows where masses are 0; a neutrino has one helicity."""
-    colour = ((float(kind.fermion.colours),),)
+    every, light = (*OPPOSITE, *EQUAL), kind.name
+    choices: tuple[Choice, ...] = (
+        (OPPOSITE, OPPOSITE, ("e-", light)),
+        (OPPOSITE, every, ("e-",)),
+        (every, every, ()),
+    )
     if kind.fermion.charge == 0:
-        rows = tuple((*before, -1, 1) for before in OPPOSITE)
-        return (HelicityAmplitudes(laws.amplitudes, helicities=rows, massless=("e-", kind.name)),)
-    every = (*OPPOSITE, *EQUAL)
-    choices = ((OPPOSITE, OPPOSITE, ("e-", kind.name)), (OPPOSITE, every, ("e-",)), (every, every, ()))
+        choices = ((OPPOSITE, LEFT_HANDED, ("e-", light)), (every, LEFT_HANDED, (light,)))
     return tuple(
         HelicityAmplitudes(
             laws.amplitudes,
             helicities=tuple((*one, *other) for one, other in product(before, after)),
-            colour=colour,
+            colour=((float(kind.fermion.colours),),),
             massless=massless,
         )
         for before, after, massless in choices
