@@ -16,7 +16,7 @@ import barnwright.plugin
 from docs import tables
 
 ROOT = Path(__file__).resolve().parents[2]
-PAGES = ("README.md", "DEVELOPERS.md", "docs/conventions.md", "docs/theorist.md")
+PAGES = ("README.md", "DEVELOPERS.md", "docs/analyst.md", "docs/conventions.md", "docs/theorist.md")
 
 
 @pytest.mark.parametrize("page", PAGES)

@@ -102,7 +102,7 @@ def derived_table(derived: Iterable[Derived]) -> Table:
 def histogram_table(histogram: Histogram) -> Table:
     """One row a bin, then underflow and overflow as contents; the last edge of an axis belongs to its last bin."""
     units = histogram.axis_units or ("",) * len(histogram.observables)
-    columns = [f"{text} [{unit}]" if unit else text for text, unit in zip(histogram.observables, units, strict=True)]
+    columns = [_with_unit(text, unit) for text, unit in zip(histogram.observables, units, strict=True)]
     per = {"value": "density", "bin": "content", "solid_angle": "density"}[histogram.per]
     table = titled(f"histogram {histogram.name}", (*columns, f"{per} [{histogram.unit}]"))
     ranges = [_ranges(edges) for edges in axes_of(histogram.edges)]
@@ -115,6 +115,11 @@ def histogram_table(histogram: Histogram) -> Table:
         if content:
             table.add_row(Text(name), *spare, Text(f"{bare(content, getattr(histogram, f'{name}_error'))} (content)"))
     return table
+
+
+def _with_unit(observable: str, unit: str) -> str:
+    """``pt(mu-) [GeV]``; what is divided by its unit is in that unit: ``kinetic_energy(e-) [keV]``."""
+    return f"{observable.removesuffix(f' / {unit}')} [{unit}]" if unit else observable
 
 
 def bare(value: float, error: float | None) -> str:
