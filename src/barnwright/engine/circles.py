@@ -18,7 +18,7 @@ from barnwright.engine.membership import memberships, passes
 from barnwright.engine.partition import snapped
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout
-from barnwright.engine.turning import tells_sides, turns
+from barnwright.engine.turning import tells_sides, turns, within_range
 from barnwright.event import Event
 from barnwright.integrate.panels import panels_between
 from barnwright.integrate.polar_axis import Ends, Integers
@@ -95,9 +95,9 @@ class Circles:
     def arcs(self, cuts: tuple[Cut, ...], layout: Layout) -> Arcs:
         """The arcs on which every answer is one and the same."""
         wanted, count = levels_by_observable(cuts, layout), self.side.size
-        turning = [o for o in wanted if turns(o, crossed=True)]
-        found = (c for o in turning for c in searched_crossings(o, wanted[o], self.values, count))
-        panels = panels_between(Crossings.join(list(found)), count)
+        turning = {o: within_range(o, levels) for o, levels in wanted.items() if turns(o, crossed=True)}
+        found = [c for o, levels in turning.items() for c in searched_crossings(o, levels, self.values, count)]
+        panels = panels_between(Crossings.join(found), count)
         middle = panels.middle()
 
         @cache

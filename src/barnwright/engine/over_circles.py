@@ -29,8 +29,10 @@ from barnwright.integrate.quadrature import ROUNDING, SETTLED
 
 Array = NDArray[np.float64]
 
-TOLERANCE, FLOOR = 1e-9, 1e-12
+TOLERANCE, FLOOR = 3e-10, 1e-12
 """What two rules may differ by on one piece, as a share of the component and of the total."""
+HALVED = 20
+"""By how much the error at a kink may be larger than the difference of two rules, which can be small by accident."""
 DEEPEST = 36
 MOST_EVALUATIONS = 1_000_000
 """Of one point."""
@@ -49,7 +51,7 @@ def over_circles(integrand: Integrand, layout: Layout) -> Answer:
         given_up = depth == DEEPEST or work.evaluations > MOST_EVALUATIONS
         done = spread if given_up else spread.take(~again[spread.piece])
         answer.value[:] += done.summed(done.fine, layout.components)
-        change = 2 * np.abs(done.fine - done.coarse)  # at a kink both rules may err on one side
+        change = (HALVED if depth else 2) * np.abs(done.fine - done.coarse)
         answer.error[:] += done.summed(change + done.slack, layout.components)
         if given_up or not again.any():
             break

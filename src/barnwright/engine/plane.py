@@ -11,7 +11,8 @@ from numpy.typing import NDArray
 from barnwright.engine.edges import axis_crossings, levels_by_observable, searched_crossings
 from barnwright.engine.rows import Rows
 from barnwright.engine.setting import Layout, Setting
-from barnwright.engine.turning import tells_sides, turns
+from barnwright.engine.summits import summit_crossings
+from barnwright.engine.turning import tells_sides, turns, within_range
 from barnwright.event import Event
 from barnwright.integrate.panels import Panels, panels_between
 from barnwright.integrate.polar_axis import Ends, Integers
@@ -33,7 +34,9 @@ def panels_of(setting: Setting, layout: Layout, rows: Rows) -> Panels:
     still = {o: levels for o, levels in wanted.items() if o not in turning}
     found = [axis_crossings(still, rows.collision, rows.values, 1)[0]]
     for observable in turning:
-        found.extend(_in_the_plane(observable, wanted[observable], rows))
+        levels = within_range(observable, wanted[observable])
+        found.extend(_in_the_plane(observable, levels, rows))
+        found.extend(summit_crossings(observable, levels, rows))
     if setting.rule == "quadrature":
         found.append(slices(1, True, STEPS))
     return panels_between(Crossings.join(found), 1)
@@ -45,8 +48,7 @@ def _in_the_plane(observable: Observable, levels: Array, rows: Rows) -> Iterator
         for cosine in (1.0, -1.0):
             turn = Turn(np.array([[cosine]]), np.array([[sine]]))
             for found in searched_crossings(observable, levels, _at(rows, turn), 1):
-                # What only touches a level here leaves it to either side of the plane, and has no share of a circle.
-                yield replace(found, uncertainty=np.where(found.grazing, 0.0, found.uncertainty))
+                yield replace(found, uncertainty=np.zeros_like(found.uncertainty))  # shares of circles begin at 0 here
 
 
 def _at(rows: Rows, turn: Turn) -> Callable[[Observable, Integers, Ends], Array]:

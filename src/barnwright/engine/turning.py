@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
+from numpy.typing import NDArray
 
 from barnwright.engine.edges import levels_by_observable
 from barnwright.engine.setting import Layout, Setting
@@ -13,6 +14,8 @@ from barnwright.kinematics import LAB
 from barnwright.observables import Observable
 from barnwright.observables.rows import ROWS
 from barnwright.observables.tree import Leading, Leaf, leaves
+
+Array = NDArray[np.float64]
 
 ONE_SIDED = frozenset({"phi", "delta_phi"})
 """Rows of the table that change their sign when left and right are exchanged."""
@@ -35,6 +38,12 @@ def _of_the_lab(leaf: Leaf) -> bool:
 def tells_sides(observable: Observable) -> bool:
     """Whether it changes when the event is reflected at the plane of the beams."""
     return any(leaf.function in ONE_SIDED for tree in observable.trees for leaf in leaves(tree))
+
+
+def within_range(observable: Observable, levels: Array) -> Array:
+    """The levels that some values lie below and others above: not the ends of the range, which values only touch."""
+    low, high = observable.range
+    return levels[(levels > low) & (levels < high)]
 
 
 @dataclass(frozen=True, slots=True)
