@@ -12,7 +12,7 @@ Rules of this file
   N colours. The last term is the Z's spin 0, through q^μq^ν/M_Z²: (1 − s/M_Z²) P(s) = P(0), without a pole.
 - Helicity amplitudes: s G (1 ± c), G by the helicities: a line of opposite helicities (λ, −λ) has (1 ± β)/2 of each
   chirality, one of equal helicities the mean of both, a factor m/E, and sin θ for 1 ± c (c where both lines are equal).
-- c comes from a·1 = (E² − pq) + pq(1 − c) and a·2, which keep their digits at both poles.
+- c comes from pq c = E² − a·1; |M|² is summed as a polynomial in it, with what depends on s alone worked out first.
 """
 
 from __future__ import annotations
@@ -52,15 +52,15 @@ TINY = np.finfo(float).tiny
 
 
 class Coefficients(NamedTuple):
-    """|M|² = backward (a·2)² + forward (a·1)² + flat; GeV⁻⁴ and a pure number, shape (point, 1)."""
+    """|M|² = constant + w (linear + quadratic w), w = pq c; shape (point, 1), from a pure number to GeV⁻⁴."""
 
-    backward: Array
-    forward: Array
-    flat: Array
+    constant: Array
+    linear: Array
+    quadratic: Array
 
 
 class Angles(NamedTuple):
-    """1 + cos θ and 1 − cos θ with every digit kept at the poles, cos θ and sin θ; shape (point, node)."""
+    """1 + cos θ, 1 − cos θ, cos θ and sin θ; shape (point, node)."""
 
     plus: Array
     minus: Array
@@ -77,21 +77,20 @@ class FermionPair:
     def squared(self, event: Event, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
         """|M|², dimensionless."""
         known = self._coefficients(event.s, event.mass("beam_a"), event.mass(1), parameters, parts)
-        backward, forward = event.once(("squares", "beam_a"), lambda: _squares(event))
-        total = known.backward * backward
-        total += known.forward * forward
-        total += known.flat
+        w = _along(event)
+        total = known.quadratic * w
+        total += known.linear
+        total *= w
+        total += known.constant
         return np.asarray(total)
 
     def cumulative(self, x: Array, point: Point, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
         """∫ dσ/dc from c = 0 to x in GeV⁻²; dσ/dc = |M|² q/(32π s p)."""
         known = self._coefficients(point.s, point.mass("beam_a"), point.mass(1), parameters, parts)
-        quarter, step = point.s / 4, point.momentum * point.final_momentum
-        even = known.backward + known.forward
-        constant = even * np.square(quarter) + known.flat
-        odd, curved = (known.backward - known.forward) * quarter * step, even * np.square(step) / 3
+        step = point.momentum * point.final_momentum
+        w = x * step
         scale = point.final_momentum / (32 * np.pi * point.s * point.momentum)
-        return np.asarray(scale * x * (constant + x * (odd + curved * x)))
+        return np.asarray(scale * x * (known.constant + w * (known.linear / 2 + w * (known.quadratic / 3))))
 
     def amplitudes(
         self,
@@ -124,8 +123,9 @@ class FermionPair:
                 contact = np.abs(z_propagator(0.0, parameters)) ** 2 - at.z
                 flat = flat + 4 * (light * heavy * known.parity(1, 1)) ** 2 * contact
         backward, forward = products(known, ((LL, LL), (RR, RR)), at), products(known, ((LR, LR), (RL, RL)), at)
-        colours = 4.0 * self.fermion.colours
-        return Coefficients(colours * backward, colours * forward, colours * flat)
+        colours, quarter, even = 4.0 * self.fermion.colours, s / 4, backward + forward
+        constant, linear = even * np.square(quarter) + flat, 2 * (backward - forward) * quarter
+        return Coefficients(colours * constant, colours * linear, colours * even)
 
 
 def _light(s: Array, heavy_squared: float, known: Strengths, at: Rates) -> Array:
@@ -162,8 +162,10 @@ class _Lines(NamedTuple):
             before * known.parity(1, 0),
             before * after * known.parity(1, 1),
         )
-        contact = z_propagator(0.0, parameters) * known.parity(1, 1)
-        return cls(photon, s * z_propagator(s, parameters), weak, shares, s * shares[0] * shares[1] * contact)
+        spin_zero: Complex | float = 0.0
+        if event.mass("beam_a"):
+            spin_zero = s * shares[0] * shares[1] * known.parity(1, 1) * z_propagator(0.0, parameters)
+        return cls(photon, s * z_propagator(s, parameters), weak, shares, spin_zero)
 
     def strength(self, kinds: tuple[int, int]) -> Complex:
         """s G of the two lines, each of helicities (1, −1), (−1, 1) or of equal ones: 1, −1 or 0."""
@@ -190,16 +192,14 @@ def _angular(at: Angles, kinds: tuple[int, int]) -> Array:
     return at.sine if any(kinds) else at.cosine
 
 
-def _squares(event: Event) -> tuple[Array, Array]:
-    """(a·2)² and (a·1)² in GeV⁴."""
-    return np.square(event.dot("beam_a", 2)), np.square(event.dot("beam_a", 1))
+def _along(event: Event) -> Array:
+    """pq cos θ in GeV², from the sum of a·1 and a·2, which is s/2."""
+    return np.asarray(event.once(("along", "beam_a"), lambda: event.s / 4 - event.dot("beam_a", 1)))
 
 
 def _angles(event: Event) -> Angles:
-    """1 ± cos θ and sin θ; at the threshold all are 0."""
-    quarter, light, heavy = event.s / 4, event.mass("beam_a") ** 2, event.mass(1) ** 2
+    """At the threshold, where there is no angle, the cosine is 0."""
     step = np.sqrt(event.transfer("beam_a", "beam_b") * event.transfer(1, 2)) / 4
-    floor = (quarter * (light + heavy) - light * heavy) / (quarter + step)
-    step = np.maximum(step, TINY)
-    plus, minus = ((event.dot("beam_a", leg) - floor) / step for leg in (2, 1))
-    return Angles(plus, minus, (plus - minus) / 2, np.sqrt(np.maximum(plus * minus, 0.0)))
+    cosine = _along(event) / np.maximum(step, TINY)
+    plus, minus = 1 + cosine, 1 - cosine
+    return Angles(plus, minus, cosine, np.sqrt(np.maximum(plus * minus, 0.0)))
