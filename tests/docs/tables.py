@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import math
+from pathlib import Path
 
 import barnwright
 from barnwright.observables import table
 
+PLUGINS = Path(__file__).resolve().parents[2] / "plugins"
 # how a range's ends are written
 _BOUNDS = {math.inf: "∞", -math.inf: "−∞", math.pi: "π", -math.pi: "−π"}
 
@@ -28,8 +30,12 @@ def observables() -> list[str]:
     ]
 
 
+def bundled() -> list[str]:
+    """The names of all processes that the bundled plugins offer."""
+    distributions = {f"barnwright-{path.name}" for path in PLUGINS.iterdir() if path.is_dir()}
+    return [row.name for row in barnwright.processes() if row.distribution in distributions]
+
+
 def processes() -> list[str]:
     """A row for each process that the bundled plugins offer: name, reaction, summary."""
-    bundled = [row for row in barnwright.processes() if row.distribution == "barnwright-qed"]
-    described = [barnwright.describe(row.name) for row in bundled]
-    return [f"| `{row.name}` | `{row.reaction}` | {row.summary} |" for row in described]
+    return [f"| `{row.name}` | `{row.reaction}` | {row.summary} |" for row in map(barnwright.describe, bundled())]

@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import re
+import unicodedata
 from collections.abc import Callable
 from pathlib import Path
 from types import ModuleType
 
 import pytest
-from docs.blocks import Reader
+from docs.blocks import FENCE, Reader
 
 import barnwright
 import barnwright.amplitudes
@@ -16,7 +17,8 @@ import barnwright.plugin
 from docs import tables
 
 ROOT = Path(__file__).resolve().parents[2]
-PAGES = ("README.md", "DEVELOPERS.md", "docs/analyst.md", "docs/conventions.md", "docs/theorist.md")
+GUIDE = ("docs/accuracy.md", "docs/analyst.md", "docs/conventions.md", "docs/theorist.md")
+PAGES = ("README.md", "DEVELOPERS.md", *GUIDE)
 
 
 @pytest.mark.parametrize("page", PAGES)
@@ -26,11 +28,26 @@ def test_the_blocks_of_a_page_run(page: str, tmp_path: Path, monkeypatch: pytest
     Reader(ROOT / page, tmp_path).read()
 
 
+def anchors(page: Path) -> set[str]:
+    """Where links into a page may lead: its headings, as forges write them."""
+    headings = re.findall(r"^#+ (.*)$", FENCE.sub("", page.read_text(encoding="utf-8")), flags=re.MULTILINE)
+    return {"".join(filter(_stays, heading.lower())).replace(" ", "-") for heading in headings}
+
+
+def _stays(character: str) -> bool:
+    return character in "-_ " or unicodedata.category(character)[0] in "LM" or character.isdecimal()
+
+
 @pytest.mark.parametrize("page", PAGES)
 def test_links_of_a_page_lead_somewhere(page: str) -> None:
-    """A link to a file of the project finds it."""
-    targets = re.findall(r"\]\((?!https?:|#)([^)#]+)", (ROOT / page).read_text(encoding="utf-8"))
-    assert [target for target in targets if not ((ROOT / page).parent / target).exists()] == []
+    """A link to a file of the project finds it, one to a heading finds the heading."""
+    here = ROOT / page
+    broken = []
+    for target, anchor in re.findall(r"\]\((?!https?:)([^)#]*)(?:#([^)]*))?\)", here.read_text(encoding="utf-8")):
+        there = here.parent / target if target else here
+        if not there.exists() or (anchor and anchor not in anchors(there)):
+            broken.append(f"{target}#{anchor}")
+    assert broken == []
 
 
 @pytest.mark.parametrize("example", sorted((ROOT / "examples").glob("*.toml")), ids=lambda path: path.stem)
@@ -52,3 +69,10 @@ def test_the_theorist_finds_every_name(room: ModuleType) -> None:
     """The theorist's page mentions every name of the contract and of the amplitude toolkit."""
     words = set(re.findall(r"\w+", (ROOT / "docs/theorist.md").read_text(encoding="utf-8")))
     assert [name for name in room.__all__ if name not in words] == []
+
+
+def test_every_process_is_bound_to_something_outside() -> None:
+    """The table of checks on the page about accuracy has every bundled process."""
+    page = (ROOT / "docs/accuracy.md").read_text(encoding="utf-8")
+    rows = [line for line in page.splitlines() if line.startswith("| `")]
+    assert [name for name in tables.bundled() if not any(f"`{name}`" in row for row in rows)] == []
