@@ -251,7 +251,8 @@ def test_questions_of_the_lab_change_no_other() -> None:
     beside = muons(histograms=[of_lab, of_cm], derived=[forward])
     assert beside.total == alone.total
     assert beside.histograms["cm"].values.tolist() == alone.histograms["cm"].values.tolist()
-    assert beside.derived["A_FB"] == alone.derived["A_FB"]
+    assert beside.derived["A_FB"].value == alone.derived["A_FB"].value
+    assert beside.derived["A_FB"].error == alone.derived["A_FB"].error
 
 
 def test_closed_form_and_quadrature_agree() -> None:

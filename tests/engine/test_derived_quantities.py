@@ -147,3 +147,24 @@ def test_a_division_by_nothing_is_told(
 def test_what_is_known_has_no_such_note() -> None:
     """An asymmetry that is 0 is known."""
     assert predicted([HALF], A_FB).notes == ()
+
+
+def test_an_asymmetry_about_a_value_is_known_bin_by_bin() -> None:
+    """In bins of another observable it is that of the two halves of a map of both; in its own bins it says nothing."""
+    beams = {"kind": "collider", "energies": {"e-": 7.0, "e+": 4.0}}
+    angle, momentum = "cos_theta(mu-)", "pt(mu-)"
+    bins = [{"count": 5, "low": 0.0, "high": 5.6}]
+    histograms = [
+        {"name": "pt", "observables": [momentum], "bins": bins},
+        {"name": "own", "observables": [angle], "bins": [{"count": 4, "low": -1.0, "high": 1.0}]},
+        {"name": "map", "observables": [momentum, angle], "bins": [*bins, {"edges": [-1.0, 0.2, 1.0]}], "per": "bin"},
+    ]
+    derived = [{"name": "A", "kind": "asymmetry", "observable": angle, "at": 0.2}]
+    found = barnwright.predict(process="qed/muon-pair", beams=beams, histograms=histograms, derived=derived)
+    below, above = found.histograms["map"].contents.T
+    assert [bins.name for bins in found.derived["A"].histograms] == ["pt"]
+    by_bin = found.derived["A"].histograms["pt"]
+    assert by_bin.values == pytest.approx((above - below) / (above + below), rel=1e-12, abs=1e-13)
+    assert (by_bin.errors < 1e-11).all()
+    whole = (above.sum() - below.sum()) / (above.sum() + below.sum())
+    assert found.derived["A"].value == pytest.approx(whole, rel=1e-11)

@@ -72,7 +72,8 @@ class Results(ArrayDocument):
     """What the whole and its parts have in common.
 
     ``replicates``, where there are any, has shape (replicate, component), in the unit of the total. Components: the
-    total; the bins (row-major), underflow and overflow of every histogram; below and above of every asymmetry.
+    total; the bins (row-major), underflow and overflow of every histogram; below and above of every
+    asymmetry, and of those in bins bin after bin.
     """
 
     if TYPE_CHECKING:

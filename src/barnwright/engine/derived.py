@@ -20,7 +20,7 @@ from barnwright.documents import (
     Total,
 )
 from barnwright.engine.envelope import envelope
-from barnwright.engine.setting import Layout
+from barnwright.engine.setting import AsymmetryPlan, Layout
 
 Array = NDArray[np.float64]
 Quotient = Callable[[Array, Array, Array, Array], tuple[Array, Array]]
@@ -44,14 +44,26 @@ def ratio(first: Array, second: Array, first_error: Array, second_error: Array) 
 
 
 def point_asymmetries(layout: Layout, value: Array, error: Array) -> list[Derived]:
-    """The asymmetries about a value of an observable, from their two components."""
+    """The asymmetries about a value of an observable, from their two components; in bins of other observables too."""
     found = []
     for index, plan in enumerate(layout.asymmetries):
         below = layout.asymmetry_start(index)
         above = below + 1
         numbers = asymmetry(value[above], value[below], error[above], error[below])
-        found.append(_derived(plan.name, *numbers, ByName()))
+        found.append(_derived(plan.name, *numbers, ByName(_binned(layout, plan, value, error))))
     return found
+
+
+def _binned(layout: Layout, plan: AsymmetryPlan, value: Array, error: Array) -> Iterator[DerivedBins]:
+    """An asymmetry bin by bin."""
+    for index, one in enumerate(layout.binned):
+        if one.asymmetry is plan:
+            first = layout.binned_start(index)
+            places = slice(first, first + one.components)
+            (below, above), errors = value[places].reshape(-1, 2).T, error[places].reshape(-1, 2).T
+            values, bounds = asymmetry(above, below, errors[1], errors[0])
+            shape = one.histogram.shape
+            yield DerivedBins.build(name=one.histogram.name, values=values.reshape(shape), errors=bounds.reshape(shape))
 
 
 def derived_quantities(

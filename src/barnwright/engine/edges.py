@@ -34,9 +34,10 @@ def levels_by_observable(cuts: tuple[Cut, ...], layout: Layout) -> Mapping[Obser
 def _all_levels(cuts: tuple[Cut, ...], layout: Layout) -> Iterator[tuple[Observable, tuple[float | None, ...]]]:
     for cut in cuts:
         yield cut.observable, (cut.min, cut.max, *(cut.outside or ()))
-    for histogram in layout.histograms:
+    binned = layout.binned
+    for histogram in (*layout.histograms, *(one.histogram for one in binned)):
         yield from zip(histogram.observables, histogram.edges, strict=True)
-    for asymmetry in layout.asymmetries:
+    for asymmetry in (*layout.asymmetries, *(one.asymmetry for one in binned)):
         yield asymmetry.observable, (asymmetry.at,)
 
 

@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.engine.setting import HistogramPlan, Layout
+from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout
 from barnwright.integrate.polar_axis import Integers
 from barnwright.observables import Cut, Observable
 
@@ -35,9 +35,21 @@ def memberships(layout: Layout, values: Valuation, passed: NDArray[np.bool_]) ->
             yield np.where(passed, start + bins, OUTSIDE)
     for index, asymmetry in enumerate(layout.asymmetries):
         start = layout.asymmetry_start(index)
-        found = values(asymmetry.observable)
-        for entry in found if asymmetry.observable.quantifier else (found,):
-            yield np.where(passed, start + (entry >= asymmetry.at), OUTSIDE)
+        for above in _above(asymmetry, values):
+            yield np.where(passed, start + above, OUTSIDE)
+    for index, binned in enumerate(layout.binned):
+        start, last = layout.binned_start(index), binned.components // 2
+        sides, places = list(_above(binned.asymmetry, values)), list(histogram_bins(binned.histogram, values))
+        for entry in range(max(len(sides), len(places))):
+            place, above = places[entry % len(places)], sides[entry % len(sides)]
+            yield np.where(passed & (place < last), start + 2 * place + above, OUTSIDE)
+
+
+def _above(asymmetry: AsymmetryPlan, values: Valuation) -> Iterator[NDArray[np.bool_]]:
+    """Whether panels lie above an asymmetry's value, one array an entry."""
+    found = values(asymmetry.observable)
+    for entry in found if asymmetry.observable.quantifier else (found,):
+        yield np.asarray(entry >= asymmetry.at)
 
 
 def histogram_bins(histogram: HistogramPlan, values: Valuation) -> Iterator[Integers]:

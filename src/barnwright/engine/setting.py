@@ -57,16 +57,34 @@ class AsymmetryPlan:
 
 
 @dataclass(frozen=True, slots=True)
+class BinnedAsymmetry:
+    """An asymmetry in every bin of a histogram: two components a bin, below and above."""
+
+    asymmetry: AsymmetryPlan
+    histogram: HistogramPlan
+
+    @property
+    def components(self) -> int:
+        """Two for each bin; what lies outside of the bins has none."""
+        return 2 * prod(self.histogram.shape)
+
+
+@dataclass(frozen=True, slots=True)
 class Layout:
-    """Which component is what: the total, each histogram's bins, underflow and overflow, then (below, above) pairs."""
+    """Which component is what.
+
+    The total; each histogram's bins, underflow and overflow; (below, above) of each asymmetry; and of each binned one
+    (below, above) bin after bin.
+    """
 
     histograms: tuple[HistogramPlan, ...]
     asymmetries: tuple[AsymmetryPlan, ...]
+    binned: tuple[BinnedAsymmetry, ...] = ()
 
     @property
     def components(self) -> int:
         """How many components there are."""
-        return 1 + sum(h.components for h in self.histograms) + 2 * len(self.asymmetries)
+        return self.binned_start(len(self.binned))
 
     def histogram_slice(self, index: int) -> slice:
         """The components of one histogram: bins, then underflow and overflow."""
@@ -76,6 +94,10 @@ class Layout:
     def asymmetry_start(self, index: int) -> int:
         """The component "below" of an asymmetry; "above" is the next."""
         return 1 + sum(h.components for h in self.histograms) + 2 * index
+
+    def binned_start(self, index: int) -> int:
+        """The component "below" in the first bin of a binned asymmetry."""
+        return self.asymmetry_start(len(self.asymmetries)) + sum(one.components for one in self.binned[:index])
 
 
 @dataclass(frozen=True, slots=True)

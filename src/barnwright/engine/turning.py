@@ -75,7 +75,7 @@ def split(setting: Setting, layout: Layout, crossed: bool) -> Split | None:
 
 def _part(layout: Layout, crossed: bool, wanted: bool) -> tuple[Layout, Integers]:
     """The histograms and asymmetries that do or do not turn, with the total, and where their components belong."""
-    histograms, asymmetries, places = [], [], [np.zeros(1, dtype=np.intp)]
+    histograms, asymmetries, binned, places = [], [], [], [np.zeros(1, dtype=np.intp)]
     for number, histogram in enumerate(layout.histograms):
         if any(turns(o, crossed) for o in histogram.observables) == wanted:
             histograms.append(histogram)
@@ -85,4 +85,9 @@ def _part(layout: Layout, crossed: bool, wanted: bool) -> tuple[Layout, Integers
         if turns(asymmetry.observable, crossed) == wanted:
             asymmetries.append(asymmetry)
             places.append(layout.asymmetry_start(number) + np.arange(2))
-    return Layout(tuple(histograms), tuple(asymmetries)), np.concatenate(places)
+    for number, one in enumerate(layout.binned):
+        asked = (one.asymmetry.observable, *one.histogram.observables)
+        if any(turns(o, crossed) for o in asked) == wanted:
+            binned.append(one)
+            places.append(layout.binned_start(number) + np.arange(one.components))
+    return Layout(tuple(histograms), tuple(asymmetries), tuple(binned)), np.concatenate(places)

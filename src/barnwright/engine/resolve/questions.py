@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 from functools import lru_cache
 from typing import Literal
 
 from barnwright.documents import AsymmetryRequest, Bins, HistogramRequest, Request
 from barnwright.engine.resolve.findings import Findings
-from barnwright.engine.setting import AsymmetryPlan, HistogramPlan, Layout, polar_kind
+from barnwright.engine.setting import AsymmetryPlan, BinnedAsymmetry, HistogramPlan, Layout, polar_kind
 from barnwright.observables import Cut, Observable, ObservableError, compile_observable, edges_of
 from barnwright.reaction import Reaction
 
@@ -35,10 +35,19 @@ def resolve_layout(request: Request, reaction: Reaction, findings: Findings) -> 
             observable = _observable(asked.observable, reaction, f"derived[{index}].observable", findings)
             if observable is not None:
                 asymmetries.append(AsymmetryPlan(asked.name, observable, asked.at))
-    layout = Layout(tuple(h for h in histograms if h is not None), tuple(asymmetries))
+    known = tuple(h for h in histograms if h is not None)
+    layout = Layout(known, tuple(asymmetries), tuple(_binned(known, asymmetries)))
     if layout.components > MOST_COMPONENTS:
         findings.add("histograms", f"{layout.components} components", f"at most {MOST_COMPONENTS} in one request")
     return layout
+
+
+def _binned(histograms: Iterable[HistogramPlan], asymmetries: Iterable[AsymmetryPlan]) -> Iterator[BinnedAsymmetry]:
+    """Every asymmetry in the bins of every histogram of other observables; in bins of its own it is 1 or −1."""
+    for asymmetry in asymmetries:
+        for histogram in histograms:
+            if asymmetry.observable not in histogram.observables:
+                yield BinnedAsymmetry(asymmetry, histogram)
 
 
 def asked_observables(cuts: tuple[Cut, ...], layout: Layout) -> Iterator[tuple[str, Observable]]:
