@@ -23,7 +23,8 @@ PAGES = ("README.md", "DEVELOPERS.md", *GUIDE)
 
 @pytest.mark.parametrize("page", PAGES)
 def test_the_blocks_of_a_page_run(page: str, tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
-    """Typed in order into an empty folder, the blocks do what the page shows."""
+    """Typed in order into a folder with nothing but the examples, the blocks do what the page shows."""
+    (tmp_path / "examples").symlink_to(ROOT / "examples")
     monkeypatch.chdir(tmp_path)
     Reader(ROOT / page, tmp_path).read()
 
@@ -76,3 +77,12 @@ def test_every_process_is_bound_to_something_outside() -> None:
     page = (ROOT / "docs/accuracy.md").read_text(encoding="utf-8")
     rows = [line for line in page.splitlines() if line.startswith("| `")]
     assert [name for name in tables.bundled() if not any(f"`{name}`" in row for row in rows)] == []
+
+
+def test_pictures_are_small_and_made_by_a_command_of_their_page() -> None:
+    """README shows every picture below docs, a block of it draws a file of that name, and none takes 200 kB."""
+    page = (ROOT / "README.md").read_text(encoding="utf-8")
+    for picture in (ROOT / "docs/pictures").iterdir():
+        assert f"]({picture.relative_to(ROOT)})" in page
+        assert re.search(rf"^\$ barnwright .* --plot {re.escape(picture.name)}$", page, flags=re.MULTILINE)
+        assert picture.stat().st_size < 200_000
