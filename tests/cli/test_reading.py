@@ -7,6 +7,7 @@ from pathlib import Path
 
 import pytest
 
+import barnwright
 from barnwright.cli.reading import parse_overrides, read_fields
 from barnwright.documents import Request
 from barnwright.errors import RequestError
@@ -64,3 +65,13 @@ def test_missing_file_names_the_nearest(tmp_path: Path) -> None:
     (tmp_path / "request.toml").write_text(TOML)
     with pytest.raises(RequestError, match=r"request: got .*expected a file that exists; nearest: request.toml"):
         read_fields(str(tmp_path / "reqest.toml"), [])
+
+
+def test_a_kept_prediction_is_asked_again(tmp_path: Path) -> None:
+    """A prediction's document stands for the request it holds: in Python, in a file, with an override."""
+    kept = barnwright.predict(process="electroweak/muon-pair", beams={"kind": "collider", "sqrt_s": 60.0})
+    file = tmp_path / "kept.json"
+    file.write_text(kept.model_dump_json(), encoding="utf-8")
+    assert barnwright.predict(kept).same_bits(kept)
+    assert barnwright.predict(file).same_bits(kept)
+    assert read_fields(str(file), ["beams.sqrt_s=70.0"])["beams"]["sqrt_s"] == 70.0

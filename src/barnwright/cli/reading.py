@@ -8,7 +8,7 @@ from collections.abc import Sequence
 from typing import Any
 
 from barnwright.documents import merge
-from barnwright.documents.formats import read_text
+from barnwright.documents.formats import asked_in, read_text
 from barnwright.errors import RequestError, Violation, show
 from barnwright.run.reading import read_request as read_file
 
@@ -21,7 +21,7 @@ def read_fields(source: str, overrides: Sequence[str]) -> dict[str, Any]:
     """
     if source == "-" and sys.stdin is None:
         raise RequestError([Violation("request", "a closed standard input", "TOML or JSON text on standard input")])
-    fields = read_text(sys.stdin.read()) if source == "-" else read_file(source)
+    fields = asked_in(read_text(sys.stdin.read())) if source == "-" else read_file(source)
     for key, value in parse_overrides(overrides):
         fields = merge(fields, {key: value})
     return fields

@@ -110,10 +110,15 @@ def _from_finding(finding: Finding, above: Path) -> Located:
     return Located(path, violation, of=tuple((*above, *part) for part in of))
 
 
+_OF_BEAMS = ("along_z", "crossing_angle", "energies", "energy", "kinetic_energy", "polarisation", "sqrt_s", "target")
+"""Keys that are easily put a level too high."""
+
+
 def _unknown_key(value: Any, place: Place) -> Located:
     known = keys_of(place.core)
     key = str(place.path[-1])
-    violation = Violation(written(place.path), show(value), f"one of the keys {', '.join(known)}", nearest(key, known))
+    near = f"beams.{key}" if len(place.path) == 1 and key in _OF_BEAMS else nearest(key, known)
+    violation = Violation(written(place.path), show(value), f"one of the keys {', '.join(known)}", near)
     return Located(place.path, violation)
 
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import json
 import tomllib
+from collections.abc import Mapping
 from typing import Any, NoReturn
 
 from barnwright.errors import RequestError, Violation, show
@@ -69,6 +70,13 @@ def read_toml(text: str) -> dict[str, Any]:
         _refuse(text, "TOML text that is not nested so deeply")
     except ValueError as error:
         _refuse(text, f"TOML text; {error}")
+
+
+def asked_in(document: Any) -> Any:
+    """The request that a prediction holds, or the document as it is: a prediction that was kept can be asked again."""
+    if isinstance(document, Mapping) and str(document.get("schema", "")).startswith("barnwright.prediction/"):
+        return document.get("request", document)
+    return document
 
 
 def read_text(text: str) -> Any:

@@ -23,7 +23,7 @@ from barnwright.documents.checks import refuse
 from barnwright.documents.cuts import Cut, named
 from barnwright.documents.derived import DerivedRequest
 from barnwright.documents.examine import examine, plain
-from barnwright.documents.formats import read_json, read_text, read_toml
+from barnwright.documents.formats import asked_in, read_json, read_text, read_toml
 from barnwright.documents.formula import Formula
 from barnwright.documents.histograms import HistogramRequest
 from barnwright.documents.merge import merge
@@ -113,16 +113,19 @@ class Request(Document):
 
     @classmethod
     def accept(cls, source: Request | Mapping[str, Any] | str | None = None, /, **fields: Any) -> Request:
-        """A request from whatever holds one: a request, a dictionary, a TOML or JSON text, fields, or both.
+        """A request from whatever holds one: a request, a prediction, a dictionary, TOML or JSON text, fields, or both.
 
         Fields are merged key by key into the source, as a variation is.
 
         Raises:
             RequestError: with every finding.
         """
+        kept = getattr(source, "request", None)
+        if isinstance(kept, Request):  # of a prediction
+            source = kept
         if isinstance(source, Request):
             return source.merged(fields) if fields else source
-        data = read_text(source) if isinstance(source, str) else source
+        data = asked_in(read_text(source) if isinstance(source, str) else source)
         if data is not None and not isinstance(data, Mapping):
             expected = "a request: a Request, a dictionary, TOML text or JSON text"
             raise RequestError([Violation("request", show(data), expected)])

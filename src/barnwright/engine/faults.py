@@ -33,8 +33,9 @@ def faults(answers: Answers, point: int) -> tuple[NoteDocument, ...]:
         found.append(NoteDocument.build(code="undefined_observable", text=text))
     if answers.status_of(point) == "evaluation_limit":
         text = (
-            "the error is larger than what was asked for: a cut or an asymmetry lies within rounding of an extremum "
-            "of its observable, where √ε is all that can be had; move it away"
+            "the error is larger than what was asked for, and all that floating-point numbers give here: a cut or an "
+            "asymmetry within rounding of an extremum of its observable (move it away), a line that is narrower than "
+            "the rounding of √s, or less than 1e-15 asked for"
         )
         found.append(NoteDocument.build(code="accuracy_not_reached", text=text))
     if unresolved:

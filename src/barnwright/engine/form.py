@@ -76,12 +76,14 @@ class Form:
         return {"total": _total(float(value[0]), float(error[0]), self.unit), "histograms": ByName(histograms)}
 
     def contributions(self, numbers: Numbers, point: int) -> Iterator[Part]:
-        """Every contribution that is reported: total and histograms; an asymmetry of a part alone means nothing."""
+        """Every contribution that is reported; what may be negative has no asymmetries."""
         signed = {note.text.split()[1]: note for note in self.share.notes if note.code == "signed"}
         for entry, (name, _) in enumerate(self.nominal.parts[1:], 1):
-            plain = self._plain(numbers.value[point, entry], numbers.error[point, entry])
-            notes = (_document(signed[name]),) if name in signed else ()
-            yield Part.build(name=name, notes=notes, **plain)
+            if name in signed:
+                plain = self._plain(numbers.value[point, entry], numbers.error[point, entry])
+                yield Part.build(name=name, notes=(_document(signed[name]),), **plain)
+            else:
+                yield Part.build(name=name, **self.results(numbers, point, entry))
 
     def variations(self, numbers: Numbers, point: int) -> Iterator[Part]:
         """Every variation."""

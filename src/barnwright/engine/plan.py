@@ -66,7 +66,8 @@ class ValidRange:
 class Member:
     """One of the processes that a request sums; most requests have one.
 
-    ``layout`` has as many components in every member, ``provided`` is what a prediction repeats of the process.
+    ``layout`` has as many components in every member, ``provided`` is what a prediction repeats of the process,
+    ``parameters`` are the names of all its parameters, read or not.
     """
 
     source: ProcessSource
@@ -75,6 +76,7 @@ class Member:
     provided: Mapping[str, Any]
     provided_sources: Mapping[str, str]
     valid: ValidRange | None = None
+    parameters: tuple[str, ...] = ()
 
     def masses_by_name(self, setting: Setting) -> dict[str, float]:
         """The mass in GeV of every particle of the reaction."""
@@ -160,10 +162,14 @@ class Plan:
     def sources(self, group: Group, member: int) -> dict[str, str]:
         """Where parameters, constants and (by ``masses.`` and the particle) masses come from."""
         own, share = self.members[member], group.shares[member]
-        asked = dict.fromkeys(group.request.parameters, "request")
+        read = dict(share.settings[0].parameters)
+        given = {
+            name: text for name, text in own.provided_sources.items() if name in read or name not in own.parameters
+        }
+        asked = {name: "request" for name in group.request.parameters if name in read}
         names = {code: own.reaction.name_of(code) for code in share.mass_sources}
         masses = {f"masses.{names[code]}": text for code, text in share.mass_sources.items()}
-        return {**own.provided_sources, **asked, **masses}
+        return {**given, **asked, **masses}
 
     def group_of(self, points: tuple[int, int]) -> tuple[Group, int, int]:
         """The group of a block's points, and their range within it; blocks never cross groups."""

@@ -16,6 +16,8 @@ WIDE = 50.0
 NEAR_ZERO = 0.1
 #: A symmetric axis is linear below this share of the largest value at least: rounding is no physics.
 DEEPEST = 1e-6
+#: What is smaller than this share of the largest value is rounding around 0, and shapes no axis.
+ROUNDING = 1e-9
 
 
 @dataclass(frozen=True, slots=True)
@@ -58,6 +60,7 @@ def value_scale(*values: Array) -> Scale:
     if seen.min() > 0:
         return Scale("log" if seen.max() / WIDE > seen.min() else "linear")
     sizes = np.abs(seen)
+    sizes = sizes[sizes > ROUNDING * sizes.max()]
     small, large = float(np.quantile(sizes, NEAR_ZERO)), float(sizes.max())
     if large / WIDE <= small:
         return Scale("linear")

@@ -6,12 +6,12 @@ from os import PathLike
 from pathlib import Path
 from typing import Any, NoReturn
 
-from barnwright.documents.formats import read_json, read_toml
+from barnwright.documents.formats import asked_in, read_json, read_toml
 from barnwright.errors import RequestError, Violation, nearest, show
 
 
 def read_request(path: str | PathLike[str]) -> dict[str, Any]:
-    """The fields of a request in a file whose name ends in .toml or .json, not yet checked.
+    """The fields of a request, or of one in a prediction, in a file that ends in .toml or .json, not yet checked.
 
     Raises RequestError when there is no such file, or when it is not what its name says.
     """
@@ -28,7 +28,8 @@ def read_request(path: str | PathLike[str]) -> dict[str, Any]:
         _refuse(file, "a text file in UTF-8")
     if not isinstance(fields, dict):
         _refuse(file, "a JSON object with the keys of a request")
-    return fields
+    found: dict[str, Any] = asked_in(fields)
+    return found
 
 
 def _refuse(file: Path, expected: str, near: str | None = None) -> NoReturn:

@@ -25,9 +25,15 @@ class Inputs:
 
 
 def resolve_inputs(
-    process: Process, parameters: Mapping[str, ParameterValue], masses: Mapping[str, float], findings: Findings
+    process: Process,
+    parameters: Mapping[str, ParameterValue],
+    masses: Mapping[str, float],
+    findings: Findings,
+    inherited: frozenset[str] = frozenset(),
 ) -> Inputs | None:
     """Parameters and masses, or None and findings.
+
+    ``inherited`` are parameters that a variation has from the request it varies: they may be idle in it.
 
     A mass belongs to a species: setting that of mu- sets that of mu+. Where the process ties a mass to a parameter,
     the two are names of one number.
@@ -56,7 +62,7 @@ def resolve_inputs(
         return None
     values: dict[str, ParameterValue] = model.model_dump()
     facts = facts_of(process.parameters)
-    _check_use(facts, wanted, values, findings)
+    _check_use(facts, {name: value for name, value in wanted.items() if name not in inherited}, values, findings)
     used = {fact.name: values[fact.name] for fact in facts if fact.required or fact.is_used(values)}
     return Inputs(used, *_all_masses(process, values, own))
 

@@ -106,7 +106,8 @@ def _refuse(process: Process, demand: Demand, inputs: Inputs, findings: Findings
         return
     if demand.polarised and not any(isinstance(law, HelicityAmplitudes) for law in process.laws):
         for where, value in demand.polarised.items():
-            expected = f"0: the laws of {process.name} have no helicities, so its beams are unpolarised"
+            laws = "a formula has" if process.name == "formula" else f"the laws of {process.name} have"
+            expected = f"0: {laws} no helicities, so its beams are unpolarised"
             findings.add(where, value, expected, "0")
         return
     heavy = ", ".join(f"{process.legs.name_of(code)} {mass:g} GeV" for code, mass in inputs.masses.items() if mass)

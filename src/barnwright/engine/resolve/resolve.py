@@ -8,6 +8,7 @@ from typing import Any, Protocol
 from barnwright.documents import Request
 from barnwright.engine.plan import Group, Member, Plan, ProcessSource, Share, ValidRange
 from barnwright.engine.resolve.digest import plan_digest
+from barnwright.engine.resolve.filled import filled
 from barnwright.engine.resolve.findings import Findings
 from barnwright.engine.resolve.formula import formula_process, formula_source
 from barnwright.engine.resolve.questions import resolve_layout
@@ -79,7 +80,7 @@ def resolve(request: Request, lookup: Lookup, over: Mapping[str, Sequence[Any]] 
     complete = [entry for entry in found if entry is not None]
     members = tuple(member for member, _ in complete)
     groups = tuple(
-        Group(part.points, part.request, tuple(shares[index] for _, shares in complete), part.columns)
+        Group(part.points, filled(part.request, offers), tuple(shares[index] for _, shares in complete), part.columns)
         for index, part in enumerate(parts)
     )
     return Plan(plan_digest(members, groups), members, groups, scan_shape(over) if over else ())
@@ -126,7 +127,10 @@ def _member(process: Process, source: ProcessSource, parts: Sequence[Part], find
     complete = tuple(share for share in shares if share is not None)
     if findings or len(complete) < len(shares):
         return None
-    return Member(source, process.legs, layout, provided_of(process), sources_of(process), range_of(process)), complete
+    provided, sources, valid = provided_of(process), sources_of(process), range_of(process)
+    return Member(
+        source, process.legs, layout, provided, sources, valid, tuple(process.parameters.model_fields)
+    ), complete
 
 
 def provided_of(process: Process) -> dict[str, Any]:

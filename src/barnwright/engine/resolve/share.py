@@ -34,7 +34,7 @@ class _Base(NamedTuple):
 def resolve_share(part: Part, process: Process, layout: Layout, findings: Findings) -> Share | None:
     """The settings of a group: the request as it stands, then each variation of it; None where one is wrong."""
     base = _Base(process, layout, findings, part)
-    nominal, inputs = _setting("", part.request, base, "")
+    nominal, inputs = _setting(Varied("", part.request, "", frozenset()), base)
     settings = [nominal]
     for index, variation in enumerate(part.request.variations):
         try:
@@ -42,7 +42,8 @@ def resolve_share(part: Part, process: Process, layout: Layout, findings: Findin
         except RequestError as error:
             findings.violations.extend(_below(f"variations[{index}]", v) for v in error.violations)
             continue
-        settings.append(_setting(variation.name, varied, base, f"variations[{index}].")[0])
+        inherited = frozenset(part.request.parameters) - frozenset(variation.parameters)
+        settings.append(_setting(Varied(variation.name, varied, f"variations[{index}].", inherited), base)[0])
     if any(s is None for s in settings) or inputs is None:
         return None
     whole = tuple(s for s in settings if s is not None)
@@ -52,15 +53,25 @@ def resolve_share(part: Part, process: Process, layout: Layout, findings: Findin
     return Share(whole, notes, dict(inputs.sources))
 
 
-def _setting(name: str, request: Request, base: _Base, where: str) -> tuple[Setting | None, Inputs | None]:
-    """The request as it stands, or varied; findings carry the path ``where`` of the variation before them."""
-    findings = Findings()
-    inputs = resolve_inputs(base.process, request.parameters, request.masses, findings)
+class Varied(NamedTuple):
+    """The request as it stands, or with a variation: its name, where it stands, the parameters that it did not set."""
+
+    name: str
+    request: Request
+    where: str
+    inherited: frozenset[str]
+
+
+def _setting(varied: Varied, base: _Base) -> tuple[Setting | None, Inputs | None]:
+    """The request as it stands, or varied; findings carry the path of the variation before them."""
+    findings, request = Findings(), varied.request
+    inputs = resolve_inputs(base.process, request.parameters, request.masses, findings, varied.inherited)
     cuts = resolve_cuts(request, base.process.legs, findings)
-    setting = None if inputs is None else _with_inputs(name, request, cuts, inputs, base._replace(findings=findings))
+    own = base._replace(findings=findings)
+    setting = None if inputs is None else _with_inputs(varied.name, request, cuts, inputs, own)
     known = {str(v) for v in base.findings.violations}
     new = (v for v in findings.violations if str(v) not in known)
-    base.findings.violations.extend(_below(where, v) for v in new)
+    base.findings.violations.extend(_below(varied.where, v) for v in new)
     return (None if findings else setting), inputs
 
 
