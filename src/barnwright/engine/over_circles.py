@@ -36,6 +36,8 @@ HALVED = 20
 DEEPEST = 36
 MOST_EVALUATIONS = 1_000_000
 """Of one point."""
+MOST_OPEN, LEVELS = 128, 4
+"""Open pieces that are never too many, and the levels of halving within which more than four times as many are."""
 
 
 def over_circles(integrand: Integrand, layout: Layout) -> Answer:
@@ -46,9 +48,11 @@ def over_circles(integrand: Integrand, layout: Layout) -> Answer:
     spread = work.spread(pieces)
     answer = Answer.empty(integrand.count, layout.components)
     answer.error[:] = _wobble(panels, pieces, spread, layout.components)
+    open_pieces: list[int] = []
     for depth in range(DEEPEST + 1):
         again = _unsettled(spread, answer, pieces.row.size)
-        given_up = depth == DEEPEST or work.evaluations > MOST_EVALUATIONS
+        open_pieces.append(int(np.count_nonzero(again)))
+        given_up = depth == DEEPEST or work.evaluations > MOST_EVALUATIONS or _multiply(open_pieces)
         done = spread if given_up else spread.take(~again[spread.piece])
         answer.value[:] += done.summed(done.fine, layout.components)
         change = (HALVED if depth else 2) * np.abs(done.fine - done.coarse)
@@ -78,6 +82,11 @@ def _unsettled(spread: Spread, answer: Answer, pieces: int) -> NDArray[np.bool_]
     allowed = np.maximum(TOLERANCE * size, FLOOR * size[:, :1])
     differs = np.abs(spread.fine - spread.coarse) > allowed[:, spread.component]
     return np.bincount(spread.piece, differs.any(axis=0), pieces) > 0
+
+
+def _multiply(open_pieces: list[int]) -> bool:
+    """Whether halves stay as open as wholes, level after level: an observable that is all rounding, say."""
+    return len(open_pieces) > LEVELS and open_pieces[-1] > max(MOST_OPEN, 4 * open_pieces[-1 - LEVELS])
 
 
 def _wobble(panels: Panels, pieces: Pieces, spread: Spread, components: int) -> Array:
