@@ -17,7 +17,7 @@ All candidates are judged at once by fast Fourier transforms (D. Nuyens, R. Cool
 sign, which ω does not see, the odd numbers modulo 2^n are the powers of 5, a cyclic group of 2^(n-2) elements. Sorted
 by that power, Σ over odd k of p(k/2^n) ω(k z/2^n) is a circular correlation, and a step from level to level a tiling.
 
-All 26 levels take about 10 minutes and 3 GB. --check compares with the committed file and writes nothing.
+All levels up to 26 take about 10 minutes and 2.2 GB. --check compares with the committed file and writes nothing.
 """
 
 from __future__ import annotations
@@ -38,6 +38,9 @@ TARGET = Path(__file__).resolve().parent.parent / "src" / "barnwright" / "integr
 
 AXES, FIRST_LEVEL, LAST_LEVEL = 32, 10, 26
 WEIGHTS = tuple(0.1 * 0.9**axis for axis in range(1, AXES + 1))
+"""Tried beside eight other choices, even and falling, 0.0005 to 0.1, on seven functions (smooth, ridges, bins, cuts) in 5
+to 20 axes with 2^11 to 2^16 points: the smallest errors on average, though all choices above 0.01 stay within 3 % of it.
+"""
 TOLD_AXES = (2, 4, 8, 16, 32)
 
 ALIKE = 1e-4
