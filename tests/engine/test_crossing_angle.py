@@ -149,7 +149,6 @@ MUON_MASSES = (ELECTRON, ELECTRON, MUON, MUON)
 GRID = grid_momenta((7.007, 4.0), MUON_MASSES, LAB_ANGLE)
 CUT = {"name": "cut", "observable": "energy(mu+)", "min": 4.0, "max": 7.0}
 MORE = {
-    "acoplanarity(mu-, mu+)": lambda lab, cm: np.pi - np.abs(wrapped(azimuth(lab["mu-"]) - azimuth(lab["mu+"]))),
     "delta_r(mu-, mu+)": lambda lab, cm: np.hypot(
         OBSERVABLES["delta_eta(mu-, mu+)"](lab, cm), wrapped(azimuth(lab["mu-"]) - azimuth(lab["mu+"]))
     ),
@@ -258,7 +257,7 @@ def test_questions_of_the_lab_change_no_other() -> None:
 def test_closed_form_and_quadrature_agree() -> None:
     """Both roads give the same bins with cuts of the lab, each within its errors; an asymmetry of the lab too."""
     asked = {
-        "histograms": [histogram("pt(mu-)", [0.5, 1.0, 3.0, 4.0, 5.1])],
+        "histograms": [histogram("pt(mu-)", [0.5, 3.0, 5.1])],
         "cuts": [CUT, {"name": "angle", "observable": "cos_theta(mu-)", "min": -0.7, "max": 0.9}],
         "derived": [{"name": "A", "kind": "asymmetry", "observable": "cos_theta(mu-)", "at": 0.1}],
     }
@@ -275,7 +274,7 @@ def test_scans() -> None:
     """Points of a scan of an energy or of the angle have the bits of predictions by themselves."""
     asked = [histogram("energy(mu-)", [3.0, 5.0, 7.0])]
     request = {"process": "qed/muon-pair", "beams": BEAMS, "histograms": asked}
-    for key, values in (("beams.energies.e+", [3.5, 4.0]), ("beams.crossing_angle", [0.0, 0.083, 0.2])):
+    for key, values in (("beams.energies.e+", [3.5, 4.0]), ("beams.crossing_angle", [0.0, 0.2])):
         sweep = barnwright.scan(request, over={key: values})
         for k, value in enumerate(values):
             energies = {"e-": 7.007, "e+": value} if "energies" in key else BEAMS["energies"]

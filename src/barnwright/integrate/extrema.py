@@ -69,13 +69,12 @@ def extrema(function: AxisFunction, on_grid: Array) -> Extrema:
     turn = (rising[:, :-1] & falling[:, 1:]) | (falling[:, :-1] & rising[:, 1:]) | (~flat[:, :-1] & flat[:, 1:])
     row, left = np.nonzero(turn)
     sign = np.where(step[row, left] > 0, 1.0, -1.0)
-    sides = [_on_one_side(function, on_grid, row, left + later, sign) for later in (0, 1)]
-    place, value = (np.concatenate([s[i] for s in sides]) for i in (0, 1))
-    mode_left = np.concatenate([left, left + 1])
-    return Extrema(np.tile(row, 2), mode_left, place, value, np.tile(sign, 2))
+    rows, intervals, signs = np.tile(row, 2), np.concatenate([left, left + 1]), np.tile(sign, 2)
+    place, value = _in_intervals(function, on_grid, rows, intervals, signs)
+    return Extrema(rows, intervals, place, value, signs)
 
 
-def _on_one_side(
+def _in_intervals(
     function: AxisFunction, on_grid: Array, row: Integers, interval: Integers, sign: Array
 ) -> tuple[Array, Array]:
     """The extremum of each interval: inside it, or at whichever of its ends is higher (for sign +1)."""
