@@ -27,7 +27,7 @@ WidthScheme = Literal["running", "fixed", "complex_mass"]
 WIDTH_SCHEMES: tuple[str, ...] = get_args(WidthScheme)
 
 
-def propagator(q2: Any, mass: Any, width: Any = 0.0, scheme: str = "fixed") -> Complex:
+def propagator(q2: Any, mass: Any, width: Any = 0.0, scheme: str = "fixed", energy: Any = None) -> Complex:
     """The scalar part of a propagator, 1/(q² − M² + i …) in GeV⁻², complex; the shape of the arguments together.
 
     Parameters
@@ -37,6 +37,8 @@ def propagator(q2: Any, mass: Any, width: Any = 0.0, scheme: str = "fixed") -> C
     mass, width : numbers or arrays, GeV
         In the scheme's own form; `converted_width` changes it.
     scheme : "running", "fixed" or "complex_mass"
+    energy : number or array, GeV, optional
+        √q² where that is what is known: close to the mass q² − M² then keeps its digits, as (√q² − M)(√q² + M).
 
     Raises
     ------
@@ -45,7 +47,8 @@ def propagator(q2: Any, mass: Any, width: Any = 0.0, scheme: str = "fixed") -> C
     """
     _check(scheme)
     imaginary = np.maximum(q2, 0.0) * (width / mass) if scheme == "running" and np.any(width) else mass * width
-    return np.asarray(1 / (q2 - mass * mass + 1j * imaginary))
+    real = q2 - mass * mass if energy is None else (energy - mass) * (energy + mass)
+    return np.asarray(1 / (real + 1j * imaginary))
 
 
 def converted_width(mass: Any, width: Any, from_scheme: str, to_scheme: str) -> tuple[Any, Any]:

@@ -83,13 +83,20 @@ def _facts(description: ProcessDescription) -> Iterator[tuple[str, str]]:
     yield "from", f"{description.distribution} {description.version}"
     yield "kinds", ", ".join(description.kinds)
     yield "laws", ", ".join(description.laws)
-    yield "polarised", ", ".join(description.polarised_beams) or "no beam: the laws have no helicities"
+    yield "polarised", _polarised(description.polarised_beams)
     if description.contributions:
         signed = description.signed_contributions
         names = (f"{name} (may be negative)" if name in signed else name for name in description.contributions)
         yield "contributions", ", ".join(names)
     yield "singular", ", ".join(description.singular) or "nowhere"
     yield "validity", validity_text(description)
+
+
+def _polarised(beams: tuple[str, ...]) -> str:
+    """Which beams may be, and what their sign means."""
+    if not beams:
+        return "no beam: the laws have no helicities"
+    return f"{', '.join(beams)}; +1 is positive helicity in the cm, for a target at rest its spin along -z"
 
 
 def _cautions(own: tuple[str, ...]) -> tuple[str, ...]:

@@ -137,7 +137,7 @@ class _Shared:
         )
         self.notes = tuple(dict.fromkeys(note for form in self.members for note in form.notes(len(plan.members) > 1)))
         self.fields: dict[str, Any] = {
-            "method": _common_method(group),
+            "method": _common_method(self.members),
             **_provided(plan),
             "parameters": _agreed(form.parameters for form in self.members),
             "masses": _agreed(form.masses for form in self.members),
@@ -210,9 +210,8 @@ class _Shared:
         return tuple(found)
 
 
-def _common_method(group: Group) -> str:
-    rules = {share.settings[0].rule for share in group.shares}
-    return "closed_form" if rules == {"closed_form"} else "quadrature"
+def _common_method(members: Iterable[Form]) -> str:
+    return "closed_form" if {form.nominal.rule for form in members} == {"closed_form"} else "quadrature"
 
 
 def _provided(plan: Plan) -> dict[str, Any]:

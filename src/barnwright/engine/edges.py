@@ -17,7 +17,7 @@ from barnwright.integrate.extrema import EPSILON
 from barnwright.integrate.polar_axis import BACKWARD, FORWARD, Ends, Integers
 from barnwright.integrate.roots import Crossings, crossings
 from barnwright.kinematics import Collision
-from barnwright.observables import Cut, Observable
+from barnwright.observables import AxisForm, Cut, Observable
 
 Array = NDArray[np.float64]
 
@@ -42,45 +42,49 @@ def _all_levels(cuts: tuple[Cut, ...], layout: Layout) -> Iterator[tuple[Observa
 
 
 def is_polar(observable: Observable, lab_is_cm: bool) -> bool:
-    """Whether the observable is the polar angle of the cm, or its cosine; of the lab, where that is the cm."""
-    if observable.axis is None or observable.quantifier is not None:
-        return False
-    return lab_is_cm or observable.axis.frame.kind == "cm"
+    """Whether all its values are polar angles of the cm, or their cosines; of the lab, where that is the cm."""
+    return bool(observable.axes) and (lab_is_cm or all(axis.frame.kind == "cm" for axis in observable.axes))
 
 
-def polar_sign(observable: Observable, orientation: int) -> int:
-    """+1 when the observable's polar angle is that of leg 1 to beam a, −1 when it is its supplement."""
-    assert observable.axis is not None
-    return orientation if observable.axis.leg == 1 else -orientation
+def polar_sign(axis: AxisForm, orientation: int) -> int:
+    """+1 when the polar angle is that of leg 1 to beam a, −1 when it is its supplement."""
+    return orientation if axis.leg == 1 else -orientation
 
 
 def polar_values(observable: Observable, orientation: int, ends: Ends) -> Array:
-    """The values of a polar observable at locations on the axis."""
-    assert observable.axis is not None
-    sign = polar_sign(observable, orientation)
-    minus, plus = (ends.one_minus, ends.one_plus) if sign > 0 else (ends.one_plus, ends.one_minus)
-    if observable.axis.kind == "angle":
+    """The values of a polar observable at locations on the axis, entries first where it has a quantifier."""
+    found = [_polar_values(axis, orientation, ends) for axis in observable.axes]
+    return found[0] if observable.quantifier is None else np.stack(found)
+
+
+def _polar_values(axis: AxisForm, orientation: int, ends: Ends) -> Array:
+    forward = polar_sign(axis, orientation) > 0
+    minus, plus = (ends.one_minus, ends.one_plus) if forward else (ends.one_plus, ends.one_minus)
+    if axis.kind == "angle":
         return 2 * np.arctan2(np.sqrt(minus), np.sqrt(plus))
     cosine = Ends(minus, plus).c
-    return np.abs(cosine) if observable.axis.folded else cosine
+    return np.abs(cosine) if axis.folded else cosine
 
 
 def polar_crossings(observable: Observable, orientation: int, levels: Array) -> Crossings:
     """The crossings of a polar observable, in closed form, as those of row 0."""
-    assert observable.axis is not None
-    sign = polar_sign(observable, orientation)
-    if observable.axis.kind == "angle":
+    return Crossings.join([_polar_crossings(axis, orientation, levels) for axis in observable.axes])
+
+
+def _polar_crossings(axis: AxisForm, orientation: int, levels: Array) -> Crossings:
+    if axis.kind == "angle":
         inside = levels[(levels > 0) & (levels < np.pi)]
         forward = inside <= 0.5 * np.pi
         x = np.where(forward, 2 * np.sin(0.5 * inside) ** 2, 2 * np.cos(0.5 * inside) ** 2)
         wobble = 4 * EPSILON * inside * np.sin(inside)
     else:
         inside = levels[np.abs(levels) <= 1.0]
-        if observable.axis.folded:
+        if axis.folded:
             inside = np.concatenate([inside[inside >= 0], -inside[inside > 0]])
         forward = inside >= 0
-        x, wobble = 1.0 - np.abs(inside), np.zeros_like(inside)  # an edge is a float, and 1 − |edge| is exact
-    side = np.where(forward == (sign > 0), FORWARD, BACKWARD)
+        x = 1.0 - np.abs(inside)
+        wobble = np.abs(np.abs(inside) - (1.0 - x))  # 1 − |edge| is exact from a half on; what is lost below is known
+    side = np.where(forward == (polar_sign(axis, orientation) > 0), FORWARD, BACKWARD)
     return Crossings(np.zeros(x.size, dtype=np.intp), side, x, wobble, np.zeros(x.size, dtype=bool))
 
 

@@ -39,7 +39,7 @@ def inclusive_answer(
         rows = slice(number * count, (number + 1) * count)
         points = (Point.of(reaction, one, setting.masses) for one in shaken)
         value, *others = (total(process, setting, point, parameters, parts) for point in points)
-        error = 4 * EPSILON * np.abs(value) + np.max([np.abs(other - value) for other in others], axis=0)
+        error = 16 * EPSILON * np.abs(value) + np.max([np.abs(other - value) for other in others], axis=0)
         for component in components:
             add_panels(answer.value[rows], component, value)
             add_panels(answer.error[rows], component, error)

@@ -71,8 +71,9 @@ def _pieces(panels: Panels, scale: Array) -> Pieces:
     """The panels that have a width, one a line."""
     wide = np.nonzero(panels.width[0] > 0)[0]
     side = panels.side[wide]
-    left, right = (to_map(ends[0, wide], scale[side]) for ends in (panels.left, panels.right))
-    return Pieces(np.zeros(wide.size, dtype=np.intp), wide, side, left, right, scale[side])
+    base = np.minimum(panels.left, panels.right)[0, wide]
+    left, right = (to_map(ends[0, wide], scale[side], base) for ends in (panels.left, panels.right))
+    return Pieces(np.zeros(wide.size, dtype=np.intp), wide, side, left, right, scale[side], base)
 
 
 def _unsettled(spread: Spread, answer: Answer, pieces: int) -> NDArray[np.bool_]:

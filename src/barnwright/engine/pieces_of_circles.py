@@ -86,7 +86,7 @@ class PieceWork:
     def _places(self, pieces: Pieces, share: Array) -> tuple[Ends, Array]:
         """Locations at shares of every piece, (piece, share), and dc/dv there."""
         span = (pieces.high - pieces.low)[:, None]
-        x, slope = from_map(pieces.low[:, None] + span * share, pieces.scale[:, None])
+        x, slope = from_map(pieces.low[:, None] + span * share, pieces.scale[:, None], pieces.base[:, None])
         return ends_of(np.broadcast_to(pieces.side[:, None], x.shape), x), slope * np.abs(span)
 
     def _densities(self, place: Ends, used: Flags) -> Array:

@@ -18,7 +18,7 @@ from barnwright.integrate.extrema import EPSILON
 from barnwright.integrate.panel_integrals import COUNTED, EVALUATIONS, NEGATIVE, NON_FINITE, PanelIntegrals
 from barnwright.integrate.panels import Panels
 from barnwright.integrate.polar_axis import Ends, ends_of
-from barnwright.integrate.quadrature import integrate_panels
+from barnwright.integrate.quadrature import ROUNDING, integrate_panels, known_heights
 from barnwright.integrate.tally import WorstPoint
 from barnwright.kinematics import CM
 from barnwright.observables import compile_observable
@@ -58,7 +58,7 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     x, heights = _heights(integrand, panels)
     direction = np.where(x[:, -1:] >= x[:, :1], 1.0, -1.0)
     value = direction * np.diff(heights, axis=1)
-    error = 4 * EPSILON * (np.abs(heights[:, 1:]) + np.abs(heights[:, :-1])) * (panels.width > 0)
+    error = ROUNDING * (np.abs(heights[:, 1:]) + np.abs(heights[:, :-1])) * (panels.width > 0)
     with np.errstate(divide="ignore", invalid="ignore"):  # the antiderivative gets its edges as floats, rounded to ε
         error += np.where(panels.width > 0, EPSILON * np.abs(value) / panels.width, 0.0)
     total = np.max(heights, axis=1, keepdims=True) - np.min(heights, axis=1, keepdims=True)
@@ -112,7 +112,7 @@ def natural_values(text: str, rows: Rows, ends: Ends) -> Array:
 def _collected(integrals: PanelIntegrals, partition: Partition, integrand: Integrand, layout: Layout) -> Answer:
     """Add the panels up into components; an edge of a histogram that is grazed says nothing about the uncut total."""
     panels, answer = partition.panels, Answer.empty(integrand.count, layout.components)
-    heights = _boundary_heights(integrals, panels)
+    heights = _boundary_heights(integrals, panels, integrand)
     for number, component in enumerate(partition.components):
         add_panels(answer.value, component, integrals.value)
         add_panels(answer.error, component, integrals.error)
@@ -127,14 +127,23 @@ def _collected(integrals: PanelIntegrals, partition: Partition, integrand: Integ
     return Answer(answer.value, answer.error, counts, worst_points(integrals, integrand))
 
 
-def _boundary_heights(integrals: PanelIntegrals, panels: Panels) -> Array | None:
-    """The integrand at each inner boundary, (row, panel − 1); None where no boundary is uncertain."""
+def _boundary_heights(integrals: PanelIntegrals, panels: Panels, integrand: Integrand) -> Array | None:
+    """The integrand at each inner boundary, (row, panel − 1); None where no boundary is uncertain.
+
+    The mean of the panels beside it is enough where an edge is known to the last digit; where it was searched for, the
+    law is asked as well, since it may be much steeper than a panel.
+    """
     if not (panels.wobble.any() or panels.graze.any()):
         return None
     width = panels.width
     with np.errstate(divide="ignore", invalid="ignore"):
         mean = np.where(width > 0, np.abs(integrals.value) / width, 0.0)
-    return np.maximum(mean[:, 1:], mean[:, :-1])
+    heights, known = np.maximum(mean[:, 1:], mean[:, :-1]), integrals.heights
+    if known is None and integrand.setting.law is not None and max(panels.wobble.max(), panels.graze.max()) > EPSILON:
+        ends = panels.boundaries()
+        inner = Ends(ends.one_minus[:, 1:-1], ends.one_plus[:, 1:-1])
+        known = known_heights(np.broadcast_to(integrand.density()(None, inner), heights.shape))
+    return heights if known is None else np.maximum(heights, known)
 
 
 def worst_points(integrals: PanelIntegrals, integrand: Integrand) -> tuple[WorstPoint, ...]:

@@ -32,12 +32,15 @@ class PanelIntegrals:
         finite, or below 0, and pieces that could not be refined to the tolerance.
     worst : tuple or None
         (row, 1 − c, 1 + c, value) of the first node that was not finite, or negative.
+    heights : array of shape (row, panel − 1), or None
+        The size of the density between each panel and the next, 0 where it is not finite; None where it was not asked.
     """
 
     value: Array
     error: Array
     counts: Array
     worst: tuple[int, float, float, float] | None = None
+    heights: Array | None = None
 
     @property
     def clean(self) -> bool:

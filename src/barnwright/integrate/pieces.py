@@ -21,7 +21,7 @@ AT_ONCE = 2048
 
 @dataclass(frozen=True, slots=True)
 class Pieces:
-    """Some panels or parts of them, one a line: row, hemisphere, ends in the map's variable, scale of the map."""
+    """Some panels or parts of them, one a line: row, hemisphere, ends in the map's variable, its scale and base."""
 
     row: Integers
     panel: Integers
@@ -29,10 +29,11 @@ class Pieces:
     low: Array
     high: Array
     scale: Array
+    base: Array
 
     def take(self, chosen: Integers | NDArray[np.bool_] | slice) -> Pieces:
         """The chosen pieces."""
-        return Pieces(*(getattr(self, f)[chosen] for f in ("row", "panel", "side", "low", "high", "scale")))
+        return Pieces(*(getattr(self, f)[chosen] for f in ("row", "panel", "side", "low", "high", "scale", "base")))
 
     def halved(self) -> Pieces:
         """Both halves of every piece: all lower ones, then all upper ones."""
@@ -63,7 +64,7 @@ def _evaluated_at_once(
 ) -> tuple[Rule, PanelIntegrals]:
     nodes, weights = gauss_legendre(order)
     span = (pieces.high - pieces.low)[:, None]
-    x, slope = from_map(pieces.low[:, None] + span * nodes, pieces.scale[:, None])
+    x, slope = from_map(pieces.low[:, None] + span * nodes, pieces.scale[:, None], pieces.base[:, None])
     ends = ends_of(np.broadcast_to(pieces.side[:, None], x.shape), x)
     values = np.broadcast_to(density(pieces.row, ends), x.shape) * (slope * np.abs(span))
     np.add.at(result.counts[:, EVALUATIONS], pieces.row, order + 2)
@@ -83,7 +84,7 @@ def _unseen(density: Density, pieces: Pieces, values: Array) -> Array:
     """What may hide between the outermost nodes and the ends: a jump shows as an end that no polynomial leads to."""
     order = values.shape[1]
     both = np.stack([pieces.low, pieces.high], axis=1)
-    x, slope = from_map(both, pieces.scale[:, None])
+    x, slope = from_map(both, pieces.scale[:, None], pieces.base[:, None])
     ends = ends_of(np.broadcast_to(pieces.side[:, None], x.shape), x)
     found = np.broadcast_to(density(pieces.row, ends), x.shape) * slope * np.abs(pieces.high - pieces.low)[:, None]
     led = np.stack([np.add.reduce(values * weights, axis=1) for weights in end_weights(order)], axis=1)

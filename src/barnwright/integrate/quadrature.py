@@ -32,7 +32,8 @@ from barnwright.integrate.polar_axis import Ends, Integers
 Array = NDArray[np.float64]
 
 TOLERANCE = 4e-14
-ROUNDING = 4 * EPSILON
+ROUNDING = 16 * EPSILON
+"""Of a sum of products, as a share of it: what arithmetic in a law and in adding up may leave."""
 DEEPEST = 60
 SETTLED = 1e-9
 """A panel that was left open has settled all the same when its error is a smaller share of the row's largest panel."""
@@ -58,8 +59,9 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
 
 
 def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> PanelIntegrals:
-    left, right = to_map(panels.left, scale), to_map(panels.right, scale)
-    ends, measure = _first_nodes(panels, scale, left, right)
+    base = np.minimum(panels.left, panels.right)
+    left, right = to_map(panels.left, scale, base), to_map(panels.right, scale, base)
+    ends, measure = _first_nodes(panels, (scale, base), left, right)
     count = panels.side.size
     found = np.broadcast_to(density(None, ends), (rows, 4 * count + 1))
     inner, edges = found[:, : 3 * count].reshape(rows, 3, count), found[:, 3 * count :]
@@ -69,7 +71,7 @@ def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> Pa
     fine, error = _weighted(values, weights), np.abs(_weighted(values, weights - embedded))
     counts = np.zeros((rows, len(COUNTED)))
     counts[:, EVALUATIONS] = 1 + 4 * np.count_nonzero(panels.width, axis=1)
-    result = PanelIntegrals(fine, error, counts)
+    result = PanelIntegrals(fine, error, counts, heights=known_heights(edges[:, 1:-1]))
 
     def located(bad: Integers) -> Located:
         row, node = bad
@@ -85,19 +87,25 @@ def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> Pa
     todo = np.nonzero(open_end | (error > TOLERANCE * size))
     if todo[0].size:
         shape = (rows, count)
-        low, high, width = (np.broadcast_to(a, shape)[todo] for a in (left, right, scale))
-        pieces = Pieces(todo[0], todo[1], panels.side[todo[1]], low, high, width)
+        numbers = (np.broadcast_to(array, shape)[todo] for array in (left, right, scale, base))
+        pieces = Pieces(todo[0], todo[1], panels.side[todo[1]], *numbers)
         result = _refined(density, pieces, result)
     return replace(result, error=result.error + ROUNDING * np.abs(result.value))
 
 
-def _first_nodes(panels: Panels, scale: Array, left: Array, right: Array) -> tuple[Ends, Array]:
-    """The nodes of the first rule, and dc, shape (row or 1, node or 1, panel)."""
+def known_heights(density: Array) -> Array:
+    """The size of a density where it is finite, 0 elsewhere."""
+    return np.asarray(np.where(np.isfinite(density), np.abs(density), 0.0))
+
+
+def _first_nodes(panels: Panels, form: tuple[Array, Array], left: Array, right: Array) -> tuple[Ends, Array]:
+    """The nodes of the first rule, and dc, (row or 1, node or 1, panel); ``form`` is scale and base of the map."""
+    scale, base = form
     if np.isinf(scale).all():
         return panels.first_nodes, panels.width[:, None, :]
     nodes = lobatto()[0]
     span = (right - left)[:, None, :]
-    x, slope = from_map(left[:, None, :] + span * nodes[:, None], scale[:, None, :])
+    x, slope = from_map(left[:, None, :] + span * nodes[:, None], scale[:, None, :], base[:, None, :])
     return panels.located(x[:, 1:-1]), np.broadcast_to(slope * np.abs(span), x.shape)
 
 

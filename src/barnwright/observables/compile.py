@@ -42,14 +42,16 @@ def compile_observable(text: str, reaction: Reaction, numbered: bool = False) ->
         expected = f"at most {MOST_NODES} numbers, operators and calls, counted for each of identical particles"
         raise ObservableError(text, (Finding(0, expected),))
     scaled = _scaled(tree)
+    trees = _entries(tree, legs.each)
+    axes = tuple(axis for axis in (_axis(entry, reaction) for entry in trees) if axis is not None)
     return Observable(
         text=" ".join(text.split()),
-        trees=_entries(tree, legs.each),
+        trees=trees,
         unit=unit if scaled is None else scaled[1],
         quantifier=legs.quantifier,
         range=_range(tree),
         azimuthal=any(ROWS[leaf.function].azimuthal for leaf in leaves(tree) if leaf.function in ROWS),
-        axis=_axis(tree, reaction),
+        axes=axes if len(axes) == len(trees) else (),
     )
 
 

@@ -44,8 +44,8 @@ class Observable:
         What values can occur, as far as the table tells.
     azimuthal : bool
         Whether it changes when everything is turned about the beam.
-    axis : AxisForm or None
-        Set where it is the polar axis of two bodies in closed form.
+    axes : tuple of AxisForm
+        One for every entry, where all of them are the polar axis of two bodies in closed form; else none.
     """
 
     text: str
@@ -54,7 +54,12 @@ class Observable:
     quantifier: Literal["each", "any"] | None
     range: tuple[float, float]
     azimuthal: bool
-    axis: AxisForm | None = None
+    axes: tuple[AxisForm, ...] = ()
+
+    @property
+    def axis(self) -> AxisForm | None:
+        """The polar axis that it is, where it has one value."""
+        return self.axes[0] if self.axes and self.quantifier is None else None
 
     @property
     def tree(self) -> Tree:

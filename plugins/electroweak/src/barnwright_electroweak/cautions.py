@@ -17,3 +17,8 @@ WEAK_CORRECTIONS = (
 GLUONS = "Gluons are left out: 1 + α_s/π, about 4 %, is missing from the total of light quarks."
 QUARK_MASS = "The kinematic mass of a quark is not measured; the default is the running mass of the PDG at itself."
 POLARISED_LEGS = "Polarisation is by helicity in the cm; that of a massive particle depends on the frame."
+
+HEAVY_BEAMS = (
+    "With a mass given to the electron, the part of the Z with spin 0 (q^mu q^nu/M^2) has no width; the part with "
+    "spin 1 has it."
+)

@@ -53,7 +53,7 @@ CHIRALITIES: tuple[Chiralities, ...] = (LL, RR, LR, RL, LR, RL)
 def squared(event: Event, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
     """|M|², dimensionless."""
     known, s, t, u = strengths(ELECTRON, ELECTRON, parameters), event.s, event.t, event.u
-    z_s, z_t = z_propagator(s, parameters), z_propagator(t, parameters)
+    z_s, z_t = z_propagator(s, parameters, event.sqrt_s), z_propagator(t, parameters)
     alike, unlike = ((LL, LL), (RR, RR)), ((LR, LR), (RL, RL))
     both = products(known, alike, rates(-u / (s * t), z_s + z_t, parts))
     annihilated = products(known, unlike, rates(1 / s, z_s, parts))
@@ -64,7 +64,7 @@ def squared(event: Event, parameters: ElectroweakInputs, parts: Parts = EVERYTHI
 def helicity_amplitudes(event: Event, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Complex:
     """M of the rows of `ROWS`, dimensionless; phases of rows left free."""
     known, s, t, u = strengths(ELECTRON, ELECTRON, parameters), event.s, event.t, event.u
-    z_s, z_t = z_propagator(s, parameters), z_propagator(t, parameters)
+    z_s, z_t = z_propagator(s, parameters, event.sqrt_s), z_propagator(t, parameters)
     roads = (
         (u, amplitudes(known, -u / (s * t), z_s + z_t, parts)),
         (t, amplitudes(known, 1 / s, z_s, parts)),
@@ -103,6 +103,7 @@ process = Process(
     ),
     cautions=(
         "The cross section diverges in the forward direction: a cut must keep the momentum transfer away from 0.",
+        "With a fixed width (and complex_mass) the Z of the t channel has the width too: t - M^2 + iM Gamma.",
         "One alpha serves all transfers; luminosities come from small angles and need the alpha of their own transfer.",
         cautions.BEAM_RADIATION,
         cautions.RADIATION,

@@ -70,9 +70,9 @@ def strengths(first: Fermion, second: Fermion, parameters: ElectroweakInputs) ->
     return Strengths(known.electric * first.charge * second.charge, z)
 
 
-def z_propagator(q2: Array | float, parameters: ElectroweakInputs) -> Complex:
-    """P(q²) in GeV⁻²; mass and width are those of the form that `width_scheme` names."""
-    return propagator(q2, parameters.z_mass, parameters.z_width, parameters.width_scheme)
+def z_propagator(q2: Array | float, parameters: ElectroweakInputs, energy: Array | None = None) -> Complex:
+    """P(q²) in GeV⁻², ``energy`` √q² where it is known; mass and width are of the form that `width_scheme` names."""
+    return propagator(q2, parameters.z_mass, parameters.z_width, parameters.width_scheme, energy)
 
 
 def rates(photon: Array, z: Complex, parts: Parts) -> Rates:

@@ -76,7 +76,7 @@ class FermionPair:
 
     def squared(self, event: Event, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
         """|M|², dimensionless."""
-        known = self._coefficients(event.s, event.mass("beam_a"), event.mass(1), parameters, parts)
+        known = self._coefficients(event, event.mass(1), parameters, parts)
         w = _along(event)
         total = known.quadratic * w
         total += known.linear
@@ -86,7 +86,7 @@ class FermionPair:
 
     def cumulative(self, x: Array, point: Point, parameters: ElectroweakInputs, parts: Parts = EVERYTHING) -> Array:
         """∫ dσ/dc from c = 0 to x in GeV⁻²; dσ/dc = |M|² q/(32π s p)."""
-        known = self._coefficients(point.s, point.mass("beam_a"), point.mass(1), parameters, parts)
+        known = self._coefficients(point, point.mass(1), parameters, parts)
         step = point.momentum * point.final_momentum
         w = x * step
         scale = point.final_momentum / (32 * np.pi * point.s * point.momentum)
@@ -111,10 +111,10 @@ class FermionPair:
         return found
 
     def _coefficients(
-        self, s: Array, light: float, heavy: float, parameters: ElectroweakInputs, parts: Parts
+        self, collision: Event | Point, heavy: float, parameters: ElectroweakInputs, parts: Parts
     ) -> Coefficients:
-        known = strengths(ELECTRON, self.fermion, parameters)
-        z = z_propagator(s, parameters)
+        known, s, light = strengths(ELECTRON, self.fermion, parameters), collision.s, collision.mass("beam_a")
+        z = z_propagator(s, parameters, collision.sqrt_s)
         at = rates(1 / s, z, parts)
         flat = heavy**2 * (s / 2 - light**2) * products(known, ((LL, LR), (RR, RL)), at)
         if light:
@@ -165,7 +165,7 @@ class _Lines(NamedTuple):
         spin_zero: Complex | float = 0.0
         if event.mass("beam_a"):
             spin_zero = s * shares[0] * shares[1] * known.parity(1, 1) * z_propagator(0.0, parameters)
-        return cls(photon, s * z_propagator(s, parameters), weak, shares, spin_zero)
+        return cls(photon, s * z_propagator(s, parameters, sqrt_s), weak, shares, spin_zero)
 
     def strength(self, kinds: tuple[int, int]) -> Complex:
         """s G of the two lines, each of helicities (1, −1), (−1, 1) or of equal ones: 1, −1 or 0."""

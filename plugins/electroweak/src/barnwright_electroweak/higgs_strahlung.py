@@ -46,7 +46,7 @@ TINY = np.finfo(float).tiny
 class HiggsStrahlungInputs(inputs.ElectroweakInputs):
     """Fermi's constant, the mixing angle and the masses; α is read by the scheme `alpha` alone."""
 
-    scheme: inputs.Scheme = inputs.scheme("fermi")
+    scheme: inputs.Scheme = inputs.scheme("fermi", photons=False)
     alpha: inputs.Positive = inputs.alpha({"scheme": ("alpha",)})
     higgs_mass: inputs.Positive = parameter(
         table.mass(table.HIGGS), unit="GeV", meaning="mass of the Higgs boson", source=table.SOURCE

@@ -34,12 +34,13 @@ Fraction = Annotated[float, Field(gt=0, lt=1)]
 UsedWith = dict[str, tuple[Any, ...]] | None
 
 
-def scheme(default: Scheme) -> Any:
-    """Which electroweak numbers are inputs; type it `Scheme`."""
+def scheme(default: Scheme, *, photons: bool = True) -> Any:
+    """Which electroweak numbers are inputs; type it `Scheme`. Without ``photons`` the fermi scheme reads no alpha."""
+    beside = "; alpha for photons only" if photons else ""
     return parameter(
         default,
-        meaning="inputs: alpha (alpha, sin2_theta_w, z_mass), fermi (fermi_constant, sin2_theta_w, z_mass; alpha for "
-        "photons only) or on_shell (fermi_constant, w_mass, z_mass)",
+        meaning=f"inputs: alpha (alpha, sin2_theta_w, z_mass), fermi (fermi_constant, sin2_theta_w, z_mass{beside}) "
+        "or on_shell (fermi_constant, w_mass, z_mass)",
         source="choice of this process",
     )
 

@@ -14,6 +14,7 @@ ELECTRON_NEUTRINOS = "Pairs of electron neutrinos have the exchange of a W besid
 class NeutrinoInputs(inputs.ElectroweakInputs):
     """The Z alone: the scheme `alpha` makes its coupling of alpha, the others do not read it."""
 
+    scheme: inputs.Scheme = inputs.scheme("alpha", photons=False)
     alpha: inputs.Positive = inputs.alpha({"scheme": ("alpha",)})
 
 

@@ -64,7 +64,7 @@ def pair(name: str, kind: Kind, masses: Mapping[str, float | str], notes: tuple[
             text="lowest order with couplings as at the Z: away from hadronic resonances, and below the energies where "
             "boxes of W and Z exceed several per cent",
         ),
-        cautions=(cautions.BEAM_RADIATION, cautions.WEAK_CORRECTIONS, *notes, cautions.RADIATION),
+        cautions=(cautions.BEAM_RADIATION, cautions.WEAK_CORRECTIONS, *notes, cautions.HEAVY_BEAMS, cautions.RADIATION),
         alternatives=ALTERNATIVES,
         **{"parameters": ElectroweakInputs, **more},
     )

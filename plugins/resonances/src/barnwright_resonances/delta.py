@@ -18,14 +18,15 @@ from typing import Annotated
 import numpy as np
 from numpy.typing import NDArray
 from pydantic import Field
+from scipy import constants
 
 from barnwright.plugin import AngularCrossSection, Claims, ClosedForm, Parameters, Point, Process, Validity, parameter
 from barnwright_resonances import inputs, table
 
 Array = NDArray[np.float64]
 
-FERMI = 1 / 0.1973269804
-"""One fm in GeV⁻¹: 1/(ħc), CODATA."""
+FERMI = 1e-15 * constants.electron_volt * 1e9 / (constants.hbar * constants.speed_of_light)
+"""One fm in GeV⁻¹: 1/(ħc), exact in the SI, through scipy.constants."""
 THRESHOLD = 1.08
 """GeV, just above m_π + m_p = 1.0778: below it there is no momentum at the peak."""
 

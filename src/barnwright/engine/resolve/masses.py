@@ -38,6 +38,21 @@ def resolve_inputs(
     A mass belongs to a species: setting that of mu- sets that of mu+. Where the process ties a mass to a parameter,
     the two are names of one number.
     """
+    wanted, own = _sorted_masses(process, parameters, masses, findings)
+    model = _validated(process, wanted, findings)
+    if model is None:
+        return None
+    values: dict[str, ParameterValue] = model.model_dump()
+    facts = facts_of(process.parameters)
+    _check_use(facts, {name: value for name, value in wanted.items() if name not in inherited}, values, findings)
+    used = {fact.name: values[fact.name] for fact in facts if fact.required or fact.is_used(values)}
+    return Inputs(used, *_all_masses(process, values, own))
+
+
+def _sorted_masses(
+    process: Process, parameters: Mapping[str, ParameterValue], masses: Mapping[str, float], findings: Findings
+) -> tuple[dict[str, ParameterValue], dict[int, float]]:
+    """The parameters with those that masses are other names of, and the other masses by leg."""
     wanted = dict(parameters)
     own: dict[int, float] = {}
     for name, mass in masses.items():
@@ -57,14 +72,7 @@ def resolve_inputs(
             findings.add(f"masses.{name}", mass, expected, f"{parameters[tied]!r}")
         else:
             wanted[tied] = mass
-    model = _validated(process, wanted, findings)
-    if model is None:
-        return None
-    values: dict[str, ParameterValue] = model.model_dump()
-    facts = facts_of(process.parameters)
-    _check_use(facts, {name: value for name, value in wanted.items() if name not in inherited}, values, findings)
-    used = {fact.name: values[fact.name] for fact in facts if fact.required or fact.is_used(values)}
-    return Inputs(used, *_all_masses(process, values, own))
+    return wanted, own
 
 
 def _check_use(

@@ -15,7 +15,7 @@ from barnwright.engine.resolve.questions import resolve_layout
 from barnwright.engine.resolve.scan import Part, parts_of, scan_shape
 from barnwright.engine.resolve.scope import check_scope
 from barnwright.engine.resolve.share import resolve_share
-from barnwright.engine.resolve.sums import alike, check_agreement, narrowed, united
+from barnwright.engine.resolve.sums import alike, check_agreement, narrowed, united, with_notes
 from barnwright.process import Process, facts_of
 from barnwright.units import HBARC2
 
@@ -108,7 +108,8 @@ def _offers(request: Request, lookup: Lookup) -> list[Offer]:
 def _summed(offers: Sequence[Offer], parts: Sequence[Part], findings: Findings) -> list[Resolved | None]:
     """The members of a sum, each of which sees of the request what it knows."""
     check_agreement(parts[0].request, [process for process, _ in offers], findings)
-    found, own = [], []
+    found: list[Resolved | None] = []
+    own = []
     for process, source in offers:
         theirs = Findings()
         narrow = [part._replace(request=narrowed(part.request, process)) for part in parts]
@@ -116,7 +117,7 @@ def _summed(offers: Sequence[Offer], parts: Sequence[Part], findings: Findings) 
         own.append((source.name, theirs))
     united(own, findings)
     complete = [entry for entry in found if entry is not None]
-    return alike(complete) if len(complete) == len(found) else list(found)
+    return with_notes(alike(complete), [process for process, _ in offers]) if len(complete) == len(found) else found
 
 
 def _member(process: Process, source: ProcessSource, parts: Sequence[Part], findings: Findings) -> Resolved | None:

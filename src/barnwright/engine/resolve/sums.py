@@ -7,7 +7,7 @@ from dataclasses import replace
 from typing import Any
 
 from barnwright.documents import Request
-from barnwright.engine.plan import Member, Share
+from barnwright.engine.plan import Member, Note, Share
 from barnwright.engine.resolve.findings import Findings
 from barnwright.errors import Violation, nearest
 from barnwright.process import Process
@@ -72,7 +72,24 @@ def united(found: Sequence[tuple[str, Findings]], findings: Findings) -> None:
         findings.violations.append(violation)
 
 
-def alike(found: Sequence[tuple[Member, tuple[Share, ...]]]) -> list[tuple[Member, tuple[Share, ...]] | None]:
+Resolved = tuple[Member, tuple[Share, ...]]
+
+
+def with_notes(found: Sequence[Resolved], processes: Sequence[Process]) -> list[Resolved | None]:
+    """The members, each with a note where an earlier one has the same reaction: amplitudes are not added, or twice."""
+    noted: list[Resolved | None] = []
+    for index, (member, shares) in enumerate(found):
+        earlier = [p.name for p in processes[:index] if p.legs.text == processes[index].legs.text]
+        if earlier:
+            text = (
+                f"same reaction as {', '.join(earlier)}: cross sections are added, what both contain is counted twice"
+            )
+            shares = tuple(replace(share, notes=(*share.notes, Note("same_reaction", text))) for share in shares)  # noqa: PLW2901
+        noted.append((member, shares))
+    return noted
+
+
+def alike(found: Sequence[Resolved]) -> list[Resolved]:
     """The members with one list of contributions: that of all of them, or none where they differ."""
     names = {tuple(name for name, _ in share.settings[0].parts) for _, shares in found for share in shares}
     if len(names) == 1:
