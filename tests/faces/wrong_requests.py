@@ -174,7 +174,12 @@ PHYSICS = [
         "-0.8",
         "0",
     ),
-    one("angle of beams without energies", collider(sqrt_s=10.0, crossing_angle=0.083), "beams.crossing_angle", "0.083"),
+    one(
+        "angle of beams without energies",
+        collider(sqrt_s=10.0, crossing_angle=0.083),
+        "beams.crossing_angle",
+        "0.083",
+    ),
     one(
         "angle to a beam at rest",
         {"masses": {"e-": 0.25}, **collider(energies={"e-": 7.0, "e+": 0.25}, crossing_angle=0.083)},
