@@ -23,8 +23,9 @@ from barnwright.phase_space.incoming import Surroundings
 from barnwright.phase_space.maps import azimuth
 from barnwright.phase_space.mother import Mother
 from barnwright.phase_space.parts import Splitting
-from barnwright.phase_space.steps import Made, make, tell
+from barnwright.phase_space.steps import Made, make
 from barnwright.phase_space.systems import Systems
+from barnwright.phase_space.tell import tell
 
 Array = NDArray[np.float64]
 
