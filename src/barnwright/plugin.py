@@ -15,6 +15,7 @@ from typing import TYPE_CHECKING, Any
 if TYPE_CHECKING:
     from barnwright.errors import PluginError
     from barnwright.event import Event, Point
+    from barnwright.particles import mass_of, table_source, width_of
     from barnwright.peaks import Peak
     from barnwright.process import (
         AngularCrossSection,
@@ -45,7 +46,10 @@ _PLACES = {
     "SquaredAmplitude": "barnwright.process",
     "TotalCrossSection": "barnwright.process",
     "Validity": "barnwright.process",
+    "mass_of": "barnwright.particles",
     "parameter": "barnwright.process",
+    "table_source": "barnwright.particles",
+    "width_of": "barnwright.particles",
 }
 
 __all__ = [
@@ -63,7 +67,10 @@ __all__ = [
     "SquaredAmplitude",
     "TotalCrossSection",
     "Validity",
+    "mass_of",
     "parameter",
+    "table_source",
+    "width_of",
 ]
 
 

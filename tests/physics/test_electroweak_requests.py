@@ -6,10 +6,11 @@ from typing import Any
 
 import numpy as np
 import pytest
-from barnwright_electroweak import electron_pair, lepton_pairs, quark_pairs, table
+from barnwright_electroweak import electron_pair, lepton_pairs, quark_pairs
 
 import barnwright
 from barnwright.errors import RequestError
+from barnwright.particles import mass_of, width_of
 from barnwright.process import Process
 from barnwright.testing import check_process
 
@@ -178,10 +179,10 @@ def test_every_process_conforms_and_says_what_a_user_must_know(process: Process)
 def test_defaults_come_from_the_tables() -> None:
     """Masses and widths are the particle table's, the other defaults those that the parameters' sources name."""
     given = quark_pairs.bottom_pair.parameters()
-    assert (given.z_mass, given.z_width) == (table.mass(table.Z), table.width(table.Z))
-    assert given.bottom_mass == table.mass(table.BOTTOM)
+    assert (given.z_mass, given.z_width) == (mass_of("Z0"), width_of("Z0"))
+    assert given.bottom_mass == mass_of("b")
     assert (given.scheme, given.width_scheme, given.alpha) == ("alpha", "running", 1 / 128)
     assert lepton_pairs.muon_pair.parameters().z_mass == pytest.approx(91.1876, abs=3e-3)
-    with pytest.raises(ValueError, match=r"^the particle table has no width of particle 5$"):
-        table.width(table.BOTTOM)
+    with pytest.raises(LookupError, match=r"^the particle table has no width of b$"):
+        width_of("b")
     assert np.isfinite(given.w_mass)

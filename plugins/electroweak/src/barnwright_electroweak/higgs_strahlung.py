@@ -26,9 +26,11 @@ from barnwright.plugin import (
     Process,
     SquaredAmplitude,
     Validity,
+    mass_of,
     parameter,
+    table_source,
 )
-from barnwright_electroweak import inputs, table
+from barnwright_electroweak import inputs
 from barnwright_electroweak.cautions import RADIATION
 
 Array = NDArray[np.float64]
@@ -49,7 +51,7 @@ class HiggsStrahlungInputs(inputs.ElectroweakInputs):
     scheme: inputs.Scheme = inputs.scheme("fermi", photons=False)
     alpha: inputs.Positive = inputs.alpha({"scheme": ("alpha",)})
     higgs_mass: inputs.Positive = parameter(
-        table.mass(table.HIGGS), unit="GeV", meaning="mass of the Higgs boson", source=table.SOURCE
+        mass_of("H0"), unit="GeV", meaning="mass of the Higgs boson", source=table_source()
     )
 
 

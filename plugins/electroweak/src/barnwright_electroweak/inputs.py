@@ -22,8 +22,13 @@ from pydantic import Field, ValidationInfo, field_validator
 from pydantic_core import PydanticCustomError
 from scipy import constants
 
-from barnwright.plugin import Parameters, parameter
-from barnwright_electroweak import table
+from barnwright.plugin import (
+    Parameters,
+    mass_of,
+    parameter,
+    table_source,
+    width_of,
+)
 
 Scheme = Literal["alpha", "fermi", "on_shell"]
 WidthScheme = Literal["running", "fixed", "complex_mass"]
@@ -79,19 +84,19 @@ def fermi_constant(used_with: UsedWith = None) -> Any:
 def z_mass(used_with: UsedWith = None) -> Any:
     """The mass of the Z; type it `Positive`."""
     meaning = "mass of the Z, in the form that width_scheme names; the published one belongs to the running form"
-    return parameter(table.mass(table.Z), unit="GeV", meaning=meaning, source=table.SOURCE, used_with=used_with)
+    return parameter(mass_of("Z0"), unit="GeV", meaning=meaning, source=table_source(), used_with=used_with)
 
 
 def z_width(used_with: UsedWith = None) -> Any:
     """The width of the Z; type it `NotNegative`."""
     meaning = "total width of the Z, in the form that width_scheme names; the published one belongs to the running form"
-    return parameter(table.width(table.Z), unit="GeV", meaning=meaning, source=table.SOURCE, used_with=used_with)
+    return parameter(width_of("Z0"), unit="GeV", meaning=meaning, source=table_source(), used_with=used_with)
 
 
 def w_mass(used_with: UsedWith = None) -> Any:
     """The mass of the W; type it `Positive`."""
     meaning = "mass of the W, in the same form as z_mass"
-    return parameter(table.mass(table.W), unit="GeV", meaning=meaning, source=table.SOURCE, used_with=used_with)
+    return parameter(mass_of("W+"), unit="GeV", meaning=meaning, source=table_source(), used_with=used_with)
 
 
 def width_scheme(used_with: UsedWith = None) -> Any:
@@ -108,13 +113,13 @@ def width_scheme(used_with: UsedWith = None) -> Any:
 def charm_mass() -> Any:
     """The kinematic mass of the charm quark; type it `NotNegative`."""
     meaning = "kinematic mass of the charm quark; the default is the running mass at itself"
-    return parameter(table.mass(table.CHARM), unit="GeV", meaning=meaning, source=table.SOURCE)
+    return parameter(mass_of("c"), unit="GeV", meaning=meaning, source=table_source())
 
 
 def bottom_mass() -> Any:
     """The kinematic mass of the bottom quark; type it `NotNegative`."""
     meaning = "kinematic mass of the bottom quark; the default is the running mass at itself"
-    return parameter(table.mass(table.BOTTOM), unit="GeV", meaning=meaning, source=table.SOURCE)
+    return parameter(mass_of("b"), unit="GeV", meaning=meaning, source=table_source())
 
 
 class ElectroweakInputs(Parameters):

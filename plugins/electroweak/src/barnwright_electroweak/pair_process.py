@@ -7,8 +7,18 @@ from itertools import product
 from typing import Any, NamedTuple
 
 from barnwright.amplitudes import converted_width
-from barnwright.plugin import Claims, ClosedForm, HelicityAmplitudes, Peak, Process, SquaredAmplitude, Validity
-from barnwright_electroweak import cautions, table
+from barnwright.plugin import (
+    Claims,
+    ClosedForm,
+    HelicityAmplitudes,
+    Peak,
+    Process,
+    SquaredAmplitude,
+    Validity,
+    mass_of,
+    width_of,
+)
+from barnwright_electroweak import cautions
 from barnwright_electroweak.exchange import CONTRIBUTIONS, Fermion
 from barnwright_electroweak.fermion_pairs import FermionPair
 from barnwright_electroweak.inputs import ElectroweakInputs
@@ -18,7 +28,7 @@ REFERENCES = (
     "F. A. Berends, R. Kleiss, S. Jadach, Nucl. Phys. B 202 (1982) 63",
     "D. Bardin, A. Leike, T. Riemann, M. Sachwitz, Phys. Lett. B 206 (1988) 539 (forms of the width)",
 )
-FIXED_MASS, FIXED_WIDTH = map(float, converted_width(table.mass(table.Z), table.width(table.Z), "running", "fixed"))
+FIXED_MASS, FIXED_WIDTH = map(float, converted_width(mass_of("Z0"), width_of("Z0"), "running", "fixed"))
 """GeV; the same line of the Z in the form of a fixed width has a mass 34 MeV lower."""
 ALTERNATIVES: dict[str, dict[str, float | str]] = {
     "fermi": {"scheme": "fermi"},

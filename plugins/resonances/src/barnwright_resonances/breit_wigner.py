@@ -9,8 +9,18 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.plugin import Claims, Parameters, Point, Process, TotalCrossSection, Validity, parameter
-from barnwright_resonances import inputs, table
+from barnwright.plugin import (
+    Claims,
+    Parameters,
+    Point,
+    Process,
+    TotalCrossSection,
+    Validity,
+    mass_of,
+    parameter,
+    width_of,
+)
+from barnwright_resonances import inputs
 from barnwright_resonances.lineshape import flux_factor, interfering, line, root
 
 Array = NDArray[np.float64]
@@ -58,17 +68,17 @@ def cross_section(point: Point, parameters: BreitWigner, parts: frozenset[str]) 
     return np.asarray(sum(terms[part] for part in sorted(parts)))
 
 
-def _vector(pdg_id: int, electron_width: float, final_width: float) -> dict[str, float]:
+def _vector(name: str, electron_width: float, final_width: float) -> dict[str, float]:
     """A vector meson of the table; its widths into electrons and into the final state in GeV as in the PDG of 2024."""
     return {
-        "mass": table.mass(pdg_id),
-        "width": table.width(pdg_id),
+        "mass": mass_of(name),
+        "width": width_of(name),
         "initial_width": electron_width,
         "final_width": final_width,
     }
 
 
-J_PSI = _vector(table.J_PSI, 5.53e-6, 0.877 * table.width(table.J_PSI))
+J_PSI = _vector("J/psi(1S)", 5.53e-6, 0.877 * width_of("J/psi(1S)"))
 
 process = Process(
     name="breit-wigner",
@@ -80,10 +90,10 @@ process = Process(
     contributions={"resonance": "resonance", "background": "background", "interference": CROSS},
     example=J_PSI,
     alternatives={
-        "phi-to-kaons": _vector(table.PHI, 1.27e-6, 0.491 * table.width(table.PHI)),
+        "phi-to-kaons": _vector("phi(1020)", 1.27e-6, 0.491 * width_of("phi(1020)")),
         "j-psi": J_PSI,
-        "psi-2s": _vector(table.PSI_2S, 2.33e-6, 0.9785 * table.width(table.PSI_2S)),
-        "upsilon-1s": _vector(table.UPSILON, 1.34e-6, 0.926 * table.width(table.UPSILON)),
+        "psi-2s": _vector("psi(2S)", 2.33e-6, 0.9785 * width_of("psi(2S)")),
+        "upsilon-1s": _vector("Upsilon(1S)", 1.34e-6, 0.926 * width_of("Upsilon(1S)")),
         "incoherent-background": {**J_PSI, "background": 6e-5, "coherent": False},
         "fixed-width": {**J_PSI, "width_scheme": "fixed"},
     },

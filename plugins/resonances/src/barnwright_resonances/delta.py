@@ -20,8 +20,20 @@ from numpy.typing import NDArray
 from pydantic import Field
 from scipy import constants
 
-from barnwright.plugin import AngularCrossSection, Claims, ClosedForm, Parameters, Point, Process, Validity, parameter
-from barnwright_resonances import inputs, table
+from barnwright.plugin import (
+    AngularCrossSection,
+    Claims,
+    ClosedForm,
+    Parameters,
+    Point,
+    Process,
+    Validity,
+    mass_of,
+    parameter,
+    table_source,
+    width_of,
+)
+from barnwright_resonances import inputs
 
 Array = NDArray[np.float64]
 
@@ -35,16 +47,16 @@ class DeltaResonance(Parameters):
     """The Delta(1232)++ in one channel."""
 
     mass: Annotated[float, Field(gt=THRESHOLD)] = parameter(
-        table.mass(table.DELTA),
+        mass_of("Delta(1232)++"),
         unit="GeV",
         meaning="Breit-Wigner mass of the Delta(1232)++, where the phase of the wave is π/2",
-        source=table.SOURCE,
+        source=table_source(),
     )
     width: inputs.Positive = parameter(
-        table.width(table.DELTA),
+        width_of("Delta(1232)++"),
         unit="GeV",
         meaning="Breit-Wigner width of the Delta(1232)++ at its mass",
-        source=table.SOURCE,
+        source=table_source(),
     )
     range: inputs.NotNegative = parameter(
         FERMI,

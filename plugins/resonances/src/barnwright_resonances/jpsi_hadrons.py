@@ -16,8 +16,19 @@ import numpy as np
 from numpy.typing import NDArray
 from pydantic import Field
 
-from barnwright.plugin import Claims, Parameters, Point, Process, TotalCrossSection, Validity, parameter
-from barnwright_resonances import inputs, table
+from barnwright.plugin import (
+    Claims,
+    Parameters,
+    Point,
+    Process,
+    TotalCrossSection,
+    Validity,
+    mass_of,
+    parameter,
+    table_source,
+    width_of,
+)
+from barnwright_resonances import inputs
 from barnwright_resonances.lineshape import flux_factor
 
 Array = NDArray[np.float64]
@@ -27,10 +38,10 @@ class JpsiLine(Parameters):
     """The J/psi: mass, total width, width into electrons, share of hadrons."""
 
     mass: inputs.Positive = parameter(
-        table.mass(table.J_PSI), unit="GeV", meaning="mass of the J/psi", source=table.SOURCE
+        mass_of("J/psi(1S)"), unit="GeV", meaning="mass of the J/psi", source=table_source()
     )
     width: inputs.Positive = parameter(
-        table.width(table.J_PSI), unit="GeV", meaning="total width of the J/psi", source=table.SOURCE
+        width_of("J/psi(1S)"), unit="GeV", meaning="total width of the J/psi", source=table_source()
     )
     electron_width: inputs.NotNegative = parameter(
         5.53e-6, unit="GeV", meaning="width of the J/psi into e- e+", source="PDG 2024, J/psi(1S)"
@@ -61,8 +72,8 @@ process = Process(
     parameters=JpsiLine,
     alternatives={
         "psi-2s": {
-            "mass": table.mass(table.PSI_2S),
-            "width": table.width(table.PSI_2S),
+            "mass": mass_of("psi(2S)"),
+            "width": width_of("psi(2S)"),
             "electron_width": 2.33e-6,
             "branching": 0.9785,
         },

@@ -8,8 +8,18 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from barnwright.plugin import Claims, Parameters, Point, Process, TotalCrossSection, Validity, parameter
-from barnwright_resonances import inputs, table
+from barnwright.plugin import (
+    Claims,
+    Parameters,
+    Point,
+    Process,
+    TotalCrossSection,
+    Validity,
+    mass_of,
+    parameter,
+    width_of,
+)
+from barnwright_resonances import inputs
 from barnwright_resonances.lineshape import flux_factor, interfering, line, root
 
 Array = NDArray[np.float64]
@@ -47,14 +57,14 @@ def cross_section(point: Point, parameters: TwoResonances, parts: frozenset[str]
 
 
 RHO_OMEGA = {
-    "first_mass": table.mass(table.RHO),
-    "first_width": table.width(table.RHO),
+    "first_mass": mass_of("rho(770)0"),
+    "first_width": width_of("rho(770)0"),
     "first_initial_width": 7.04e-6,
-    "first_final_width": table.width(table.RHO),
-    "second_mass": table.mass(table.OMEGA),
-    "second_width": table.width(table.OMEGA),
+    "first_final_width": width_of("rho(770)0"),
+    "second_mass": mass_of("omega(782)"),
+    "second_width": width_of("omega(782)"),
     "second_initial_width": 0.63e-6,
-    "second_final_width": 0.0153 * table.width(table.OMEGA),
+    "second_final_width": 0.0153 * width_of("omega(782)"),
     "relative_phase": 1.8,
 }
 """GeV and rad; partial widths of the PDG 2024, the phase about that of e- e+ -> pi+ pi- (from memory)."""

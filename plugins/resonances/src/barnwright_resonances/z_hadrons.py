@@ -12,8 +12,19 @@ import numpy as np
 from numpy.typing import NDArray
 
 from barnwright.amplitudes import converted_width
-from barnwright.plugin import Claims, Parameters, Point, Process, TotalCrossSection, Validity, parameter
-from barnwright_resonances import inputs, table
+from barnwright.plugin import (
+    Claims,
+    Parameters,
+    Point,
+    Process,
+    TotalCrossSection,
+    Validity,
+    mass_of,
+    parameter,
+    table_source,
+    width_of,
+)
+from barnwright_resonances import inputs
 from barnwright_resonances.lineshape import flux_factor, line, root
 
 Array = NDArray[np.float64]
@@ -27,16 +38,16 @@ class ZLine(Parameters):
     """The pseudo-observables of the Z in hadrons."""
 
     z_mass: inputs.Positive = parameter(
-        table.mass(table.Z),
+        mass_of("Z0"),
         unit="GeV",
         meaning=f"mass of the Z, {inputs.OWN_FORM}; the published one, the default, belongs to the running form",
-        source=table.SOURCE,
+        source=table_source(),
     )
     z_width: inputs.Positive = parameter(
-        table.width(table.Z),
+        width_of("Z0"),
         unit="GeV",
         meaning=f"total width of the Z, {inputs.OWN_FORM}",
-        source=table.SOURCE,
+        source=table_source(),
     )
     electron_width: inputs.NotNegative = parameter(
         LEP["electron_width"], unit="GeV", meaning="width of the Z into e- e+", source=LEP_SOURCE
