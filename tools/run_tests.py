@@ -22,7 +22,7 @@ BUDGETS = {
     "engine": 150,
     "physics": 90,
     "cli": 30,
-    "faces": 30,
+    "faces": 45,
     "service": 180,
     "docs": 60,
     "plugin": 45,
