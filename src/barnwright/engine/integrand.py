@@ -22,6 +22,7 @@ from barnwright.engine.setting import Setting
 from barnwright.integrate.polar_axis import Ends, Integers, ends_of
 from barnwright.phase_space import peak_scale, two_body_density
 from barnwright.process import AngularCrossSection, Parameters, Parts, Process, is_interference
+from barnwright.process.contributions import plain
 
 Array = NDArray[np.float64]
 PartDensity = Callable[[Parts | None], Array]
@@ -54,6 +55,26 @@ class Integrand:
         """Which rows of the integral may be negative: those with an interference, and all where the process says so."""
         found = [self.process.signed or (p is not None and any(map(is_interference, p))) for p in self.parts]
         return np.repeat(np.array(found), self.rows.count)
+
+    @property
+    def interferes(self) -> bool:
+        """Whether a part is, or contains, the interference of others."""
+        return any(parts is not None and any(map(is_interference, parts)) for parts in self.parts)
+
+    def made_of(self, found: Array, ends: Ends) -> Array:
+        """The sizes of a density, (row, node); of an interference the sum of the two parts that interfere."""
+        count = self.rows.count
+        sizes = np.abs(found).reshape(len(self.parts), count, -1)
+        known = {parts: sizes[number].copy() for number, parts in enumerate(self.parts)}
+        own = ends if ends.one_plus.shape[0] == 1 else Ends(ends.one_minus[:count], ends.one_plus[:count])
+        at = self._at(None, own)
+        for size, parts in zip(sizes, self.parts, strict=True):
+            if parts is None or not any(map(is_interference, parts)):
+                continue
+            for keyword in plain(parts):
+                alone = frozenset((keyword,))
+                np.add(size, known[alone] if alone in known else np.abs(at(alone)), out=size)
+        return sizes.reshape(found.shape)
 
     def tiled(self, array: NDArray[np.generic]) -> NDArray[np.generic]:
         """An array of rows of the block, or of one row for all, as one of rows of the integral."""

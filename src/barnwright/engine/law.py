@@ -92,7 +92,10 @@ def law_of(process: Process, setting: Setting) -> Law:
 def _asked(process: Process, ask: Callable[[], ArrayLike], shape: tuple[int, ...], what: str) -> Array:
     try:
         with np.errstate(all="ignore"):
-            found = np.asarray(ask(), dtype=float)
+            found = np.asarray(ask())
+            if found.dtype.kind == "c":
+                raise TypeError("it returned complex numbers, expected real ones: |M|² is abs(...)**2")
+            found = found.astype(float, copy=False)
     except ArithmeticError:  # plain floats of extreme parameters: no number, as numpy would have it
         return np.full(shape, np.nan)
     except (Exception, SystemExit) as cause:

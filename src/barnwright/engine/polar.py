@@ -37,7 +37,7 @@ def over_polar_angle(process: Process, setting: Setting, layout: Layout, rows: R
     if setting.rule == "closed_form":
         integrals = _closed_form(integrand, partition.inside_cuts())
     else:
-        integrals = integrate_panels(integrand.density(), partition.inside_cuts(), integrand.scales(), integrand.count)
+        integrals = _quadrature(integrand, partition.inside_cuts())
     if setting.beams.given == "kinetic":
         rounding = np.asarray(integrand.tiled(threshold_rounding(rows)))
         integrals = replace(integrals, error=integrals.error + rounding * np.abs(integrals.value))
@@ -51,6 +51,12 @@ def threshold_rounding(rows: Rows) -> Array:
     before, after = masses[0] + masses[1], masses[2] + masses[3]
     excess = collision.above(before) * (collision.sqrt_s + before)
     return 2 * EPSILON * excess / (collision.sqrt_s * collision.above(after))
+
+
+def _quadrature(integrand: Integrand, panels: Panels) -> PanelIntegrals:
+    """The integrals over panels by quadrature; those that may be negative settle as well as what they are made of."""
+    beside = integrand.made_of if integrand.interferes else None
+    return integrate_panels(integrand.density(), panels, integrand.scales(), integrand.count, beside)
 
 
 def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
@@ -90,7 +96,7 @@ def _with_quadrature(
     integrand: Integrand, panels: Panels, result: PanelIntegrals, small: NDArray[np.bool_]
 ) -> PanelIntegrals:
     """The same integrals with the small ones done by quadrature."""
-    fine = integrate_panels(integrand.density(), panels.only(small), integrand.scales(), integrand.count)
+    fine = _quadrature(integrand, panels.only(small))
     result.value[small], result.error[small] = fine.value[small], fine.error[small]
     return PanelIntegrals(result.value, result.error, result.counts + fine.counts, fine.worst)
 

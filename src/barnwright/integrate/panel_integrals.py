@@ -16,6 +16,9 @@ Located = tuple[int, float, float]
 Density = Callable[[Integers | None, Ends], Array]
 """``density(rows, ends)``: rows None means all of them, ends (row or 1, node); else one row number a line of ends."""
 
+Beside = Callable[[Array, Ends], Array]
+"""From values at (row, node) and their locations to the size of what they are made of."""
+
 COUNTED = ("evaluations", "non_finite", "negative", "unresolved")
 EVALUATIONS, NON_FINITE, NEGATIVE, UNRESOLVED = range(len(COUNTED))
 
@@ -34,6 +37,8 @@ class PanelIntegrals:
         (row, 1 − c, 1 + c, value) of the first node that was not finite, or negative.
     heights : array of shape (row, panel − 1), or None
         The size of the density between each panel and the next, 0 where it is not finite; None where it was not asked.
+    floor : array of shape (row, panel), or None
+        The integral of what the density is made of, where it is a difference of that.
     """
 
     value: Array
@@ -41,6 +46,11 @@ class PanelIntegrals:
     counts: Array
     worst: tuple[int, float, float, float] | None = None
     heights: Array | None = None
+    floor: Array | None = None
+
+    def floor_of(self, row: Integers, panel: Integers) -> Array | float:
+        """The floor of some panels."""
+        return 0.0 if self.floor is None else self.floor[row, panel]
 
     @property
     def clean(self) -> bool:

@@ -20,6 +20,7 @@ from barnwright.integrate.panel_integrals import (
     COUNTED,
     EVALUATIONS,
     UNRESOLVED,
+    Beside,
     Density,
     Located,
     PanelIntegrals,
@@ -43,7 +44,9 @@ MOST_EVALUATIONS = 4_000_000
 """Of one row."""
 
 
-def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int) -> PanelIntegrals:
+def integrate_panels(
+    density: Density, panels: Panels, scales: Array, rows: int, beside: Beside | None = None
+) -> PanelIntegrals:
     """Integrate a density over every panel of every row.
 
     Parameters
@@ -53,25 +56,30 @@ def integrate_panels(density: Density, panels: Panels, scales: Array, rows: int)
     scales : array, shape (row or 1, 2)
         δ of the backward and the forward pole (∞: no peak there).
     rows : int
+    beside : callable, optional
+        From the density at the first nodes and their locations, (row, node), to the size of what it is made of: an
+        interference need not settle better than its parts do, of which it may be the rounding.
     """
     with np.errstate(divide="ignore", invalid="ignore", over="ignore"):  # what is not finite is counted instead
-        return _integrated(density, panels, scales[:, panels.side], rows)
+        return _integrated(density, panels, (scales[:, panels.side], rows), beside)
 
 
-def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> PanelIntegrals:
+def _integrated(density: Density, panels: Panels, form: tuple[Array, int], beside: Beside | None) -> PanelIntegrals:
+    scale, rows = form
     base = np.minimum(panels.left, panels.right)
     left, right = to_map(panels.left, scale, base), to_map(panels.right, scale, base)
     ends, measure = _first_nodes(panels, (scale, base), left, right)
     count = panels.side.size
     found = np.broadcast_to(density(None, ends), (rows, 4 * count + 1))
-    inner, edges = found[:, : 3 * count].reshape(rows, 3, count), found[:, 3 * count :]
-    values = [edges[:, :-1], inner[:, 0], inner[:, 1], inner[:, 2], edges[:, 1:]]
-    values = [value * measure[:, k % measure.shape[1]] for k, value in enumerate(values)]
+    values, edges = _by_panel(found, measure), found[:, 3 * count :]
     _, weights, embedded = lobatto()
     fine, error = _weighted(values, weights), np.abs(_weighted(values, weights - embedded))
     counts = np.zeros((rows, len(COUNTED)))
     counts[:, EVALUATIONS] = 1 + 4 * np.count_nonzero(panels.width, axis=1)
-    result = PanelIntegrals(fine, error, counts, heights=known_heights(edges[:, 1:-1]))
+    floor = np.zeros_like(fine)
+    if beside is not None:
+        floor = np.nan_to_num(_weighted(_by_panel(beside(found, ends), measure), weights), posinf=0.0)
+    result = PanelIntegrals(fine, error, counts, heights=known_heights(edges[:, 1:-1]), floor=floor)
 
     def located(bad: Integers) -> Located:
         row, node = bad
@@ -84,13 +92,21 @@ def _integrated(density: Density, panels: Panels, scale: Array, rows: int) -> Pa
     open_end = ~(error < np.inf)
     if open_end.any():  # not finite at an end, as at a pole: rules without ends decide
         fine[open_end], error[open_end] = 0.0, np.inf
-    todo = np.nonzero(open_end | (error > TOLERANCE * size))
+    todo = np.nonzero(open_end | (error > TOLERANCE * np.maximum(size, floor)))
     if todo[0].size:
         shape = (rows, count)
         numbers = (np.broadcast_to(array, shape)[todo] for array in (left, right, scale, base))
         pieces = Pieces(todo[0], todo[1], panels.side[todo[1]], *numbers)
         result = _refined(density, pieces, result)
-    return replace(result, error=result.error + ROUNDING * np.abs(result.value))
+    return replace(result, error=result.error + ROUNDING * np.maximum(np.abs(result.value), floor))
+
+
+def _by_panel(found: Array, measure: Array) -> list[Array]:
+    """Values at the five nodes of every panel, times dc: five arrays of (row, panel)."""
+    rows, count = found.shape[0], measure.shape[-1]
+    inner, edges = found[:, : 3 * count].reshape(rows, 3, count), found[:, 3 * count :]
+    values = (edges[:, :-1], inner[:, 0], inner[:, 1], inner[:, 2], edges[:, 1:])
+    return [value * measure[:, k % measure.shape[1]] for k, value in enumerate(values)]
 
 
 def known_heights(density: Array) -> Array:
@@ -125,7 +141,7 @@ def _refined(density: Density, pieces: Pieces, result: PanelIntegrals) -> PanelI
         now, result = evaluated(density, pieces, order, result)
         change = np.abs(now.integral - before) + now.unseen
         value[pieces.row, pieces.panel], error[pieces.row, pieces.panel] = now.integral, change
-        again = change > TOLERANCE * now.size
+        again = change > TOLERANCE * np.maximum(now.size, result.floor_of(pieces.row, pieces.panel))
         pieces, before = pieces.take(again), now.integral[again]
         if pieces.row.size == 0:
             return result
@@ -145,6 +161,7 @@ def _halved(density: Density, pieces: Pieces, result: PanelIntegrals) -> PanelIn
         fine, result = evaluated(density, pieces, ORDERS[-1], result)
         change = np.abs(fine.integral - coarse.integral) + fine.unseen
         whole = np.abs(result.value[pieces.row, pieces.panel])
+        whole = np.maximum(whole, result.floor_of(pieces.row, pieces.panel))
         settled = ~(change > TOLERANCE * np.maximum(fine.size, whole))
         given_up = ~settled & (_hopeless(pieces.take(~settled), pieces, result) | (depth == DEEPEST - 1))
         done = settled | given_up
@@ -155,7 +172,8 @@ def _halved(density: Density, pieces: Pieces, result: PanelIntegrals) -> PanelIn
         pieces = pieces.take(~done)
         if pieces.row.size == 0:
             break
-    matters = left_open & (result.error > SETTLED * np.abs(result.value).max(axis=1, keepdims=True))
+    size = np.abs(result.value) if result.floor is None else np.maximum(np.abs(result.value), result.floor)
+    matters = left_open & (result.error > SETTLED * size.max(axis=1, keepdims=True))
     result.counts[:, UNRESOLVED] += np.count_nonzero(matters, axis=1)
     return result
 
