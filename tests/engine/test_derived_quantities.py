@@ -168,3 +168,39 @@ def test_an_asymmetry_about_a_value_is_known_bin_by_bin() -> None:
     assert (by_bin.errors < 1e-11).all()
     whole = (above.sum() - below.sum()) / (above.sum() + below.sum())
     assert found.derived["A"].value == pytest.approx(whole, rel=1e-11)
+
+
+def test_a_quotient_may_name_the_request_itself() -> None:
+    """``nominal`` is the request without its variations: a share of all events, in every bin too."""
+    cut = {"name": "hard", "observable": "pt(mu-)", "min": 2.0}
+    bins = [{"count": 3, "low": -1.0, "high": 1.0}]
+    found = barnwright.predict(
+        process="qed/muon-pair",
+        beams={"kind": "collider", "sqrt_s": 10.0},
+        cuts=[cut],
+        histograms=[{"name": "angle", "observables": ["cos_theta(mu-)"], "bins": bins}],
+        variations=[{"name": "all", "cuts": [{"name": "hard", "min": 0.0}]}],
+        derived=[{"name": "share", "kind": "ratio", "between": ["nominal", "all"]}],
+    )
+    share = found.derived["share"]
+    assert share.value == pytest.approx(found.total.value / found.variations["all"].total.value, rel=1e-14)
+    assert share.histograms["angle"].values[1] == pytest.approx(1.0, rel=1e-13)
+
+
+def test_numbers_in_another_unit_are_noted() -> None:
+    """Edges in degrees on an axis in rad, an asymmetry at 90 rad, bins in keV on an axis in GeV."""
+    found = barnwright.predict(
+        process="qed/muon-pair",
+        beams={"kind": "collider", "sqrt_s": 10.0},
+        histograms=[
+            {"name": "degrees", "observables": ["theta(mu-)"], "bins": [{"count": 4, "low": 0.0, "high": 180.0}]},
+            {"name": "keV", "observables": ["pt(mu-)"], "bins": [{"count": 4, "low": 100.0, "high": 1100.0}]},
+        ],
+        derived=[{"name": "A", "kind": "asymmetry", "observable": "theta(mu-)", "at": 90.0}],
+    )
+    notes = [note.text for note in found.notes]
+    assert any(
+        text.startswith("the last edge, 180, of histogram degrees lies outside 0 to 3.14159 rad") for text in notes
+    )
+    assert any(text.startswith("at = 90 of A lies outside 0 to 3.14159 rad") for text in notes)
+    assert "all events lie below the bins of histogram keV" in notes

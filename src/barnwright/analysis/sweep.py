@@ -17,7 +17,7 @@ from barnwright.run.local import answers
 Array = NDArray[np.float64]
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, repr=False)
 class Sweep(Scanned):
     """The answers of a scan.
 

@@ -14,7 +14,7 @@ from barnwright.documents import Prediction, Scanned
 Array = NDArray[np.float64]
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, repr=False)
 class RemoteSweep(Scanned):
     """The answers of a scan; ``over`` are the values by key, the first key varies slowest."""
 

@@ -8,6 +8,7 @@ from pydantic import TypeAdapter, ValidationError
 
 from barnwright.documents.checks import Finding, Path, Shown, exactly_one, repeated
 from barnwright.documents.cuts import Cut
+from barnwright.documents.derived import NOMINAL
 from barnwright.documents.findings import located
 from barnwright.documents.merge import merge
 from barnwright.errors import Violation, nearest
@@ -103,14 +104,17 @@ def _moved(path: Path, violation: Violation, above: Path) -> Finding:
 def _derived(request: Request) -> list[Finding]:
     found = repeated([entry.name for entry in request.derived], ("derived",))
     names = [variation.name for variation in request.variations]
-    expected = f"the name of a variation ({', '.join(names) or 'there is none'})"
     of = tuple(("variations", index, "name") for index in range(len(names)))
     for index, entry in enumerate(request.derived):
         field, compared = entry.compared
+        known = [*names, NOMINAL] if field == "between" else names
+        expected = f"the name of a variation ({', '.join(names) or 'there is none'})"
+        if known != names:
+            expected += f", or {NOMINAL}, the request itself"
         for place, name in enumerate(compared):
-            if name not in names:
+            if name not in known:
                 where = ("derived", index, field, place)
-                found.append(Finding(where, name, expected, nearest(name, names), of=(where, *of)))
+                found.append(Finding(where, name, expected, nearest(name, known), of=(where, *of)))
     return found
 
 

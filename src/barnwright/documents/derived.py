@@ -9,7 +9,10 @@ from pydantic import Field, model_validator
 from barnwright.documents.base import MAX_ITEMS, Document, Expects, Name, Number, Observable
 from barnwright.documents.checks import NOTHING, Finding, refuse, repeated
 
-Between = Annotated[tuple[Name, Name], Expects("a list of two names of variations")]
+NOMINAL = "nominal"
+"""What a derived quantity calls the request itself, beside its variations."""
+
+Between = Annotated[tuple[Name, Name], Expects("a list of two names of variations, or of one and nominal")]
 Members = Annotated[
     tuple[Name, ...],
     Field(min_length=1, max_length=MAX_ITEMS),

@@ -18,6 +18,9 @@ if TYPE_CHECKING:
 
     from matplotlib.figure import Figure
 
+MOST_LINES = 30
+"""Of a scan that is printed."""
+
 
 class Scanned(Sequence[Prediction]):
     """The predictions of a grid in the order of its points, and arrays of their numbers.
@@ -76,3 +79,20 @@ class Scanned(Sequence[Prediction]):
 
     def __len__(self) -> int:
         return prod(self.shape)
+
+    def __repr__(self) -> str:
+        """The keys with how many values each has."""
+        keys = ", ".join(f"{key}: {len(values)} values" for key, values in self.over.items())
+        return f"<{type(self).__name__} of {len(self)} predictions over {keys}>"
+
+    def __str__(self) -> str:
+        """A line for each of the first points: the keys, the total, derived quantities and the status."""
+        lines = [repr(self)]
+        for number, (place, prediction) in enumerate(zip(self.points, self, strict=True)):
+            if number == MOST_LINES:
+                lines.append(f"  … and {len(self) - MOST_LINES} more")
+                break
+            keys = ", ".join(f"{key} = {value}" for key, value in place.items())
+            derived = "".join(f", {quantity}" for quantity in prediction.derived)
+            lines.append(f"  {keys}: {prediction.total}{derived}, {prediction.status}")
+        return "\n".join(lines)

@@ -19,6 +19,7 @@ from barnwright.documents import (
     RatioRequest,
     Total,
 )
+from barnwright.documents.derived import NOMINAL
 from barnwright.engine.envelope import envelope
 from barnwright.engine.setting import AsymmetryPlan, Layout
 
@@ -82,9 +83,16 @@ def derived_quantities(
         elif request.between is None:
             found.append(nominal["derived"][request.name])
         else:
-            first, second = (variations[name] for name in request.between)
+            first, second = (_compared(name, nominal, variations) for name in request.between)
             found.append(_between(request, first, second))
     return ByName(found)
+
+
+def _compared(name: str, nominal: Mapping[str, Any], variations: ByName[Part]) -> Part:
+    """A variation, or the request itself."""
+    if name == NOMINAL and name not in variations.keys():  # noqa: SIM118  (a list of parts, found by name)
+        return Part.build(name=name, **nominal)
+    return variations[name]
 
 
 def _between(request: AsymmetryRequest | RatioRequest, first: Part, second: Part) -> Derived:

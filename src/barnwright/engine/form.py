@@ -118,6 +118,17 @@ class Form:
             code = "cuts_exclude_everything" if names else "law_is_zero"
             text = f"no event can pass the cuts ({names})" if names else "the law was 0 at every point that was asked"
             yield NoteDocument.build(code=code, text=f"{text}, so σ = 0")
+        else:
+            yield from self._empty_histograms(numbers.value[point, 0])
+
+    def _empty_histograms(self, value: Array) -> Iterator[NoteDocument]:
+        """A note for each histogram all of which lies outside of its bins: another unit, most of the time."""
+        for index, plan in enumerate(self.member.layout.histograms):
+            content = value[self.member.layout.histogram_slice(index)]
+            if not content[:-2].any():
+                side = "below" if content[-2] else "above"
+                text = f"all events lie {side} the bins of histogram {plan.name}"
+                yield NoteDocument.build(code="empty_histogram", text=text)
 
 
 def _document(note: Note) -> NoteDocument:

@@ -33,13 +33,6 @@ def check_scope(request: Request, process: Process, findings: Findings) -> None:
     if request.accuracy.method == "monte_carlo":
         expected = "closed_form or quadrature, the methods for two-body final states"
         findings.add("accuracy.method", "monte_carlo", expected, "quadrature")
-    names = {variation.name for variation in request.variations}
-    for index, derived in enumerate(request.derived):
-        field, compared = derived.compared
-        for k, name in enumerate(compared):
-            if name not in names:
-                expected = f"the name of a variation: {', '.join(sorted(names)) or 'there is none'}"
-                findings.add(f"derived[{index}].{field}[{k}]", name, expected, nearest(name, names))
 
 
 def _observables(request: Request) -> Iterator[str]:

@@ -49,7 +49,7 @@ def resolve_share(part: Part, process: Process, layout: Layout, findings: Findin
     whole = tuple(s for s in settings if s is not None)
     if not process.legs.inclusive:
         check_kinematics(process.legs, layout, whole, findings)
-    notes: tuple[Note, ...] = (*notes_of(process, whole[0].cuts), *signed_notes(whole[0].parts))
+    notes: tuple[Note, ...] = (*notes_of(process, whole[0].cuts, layout), *signed_notes(whole[0].parts))
     return Share(whole, notes, dict(inputs.sources))
 
 
