@@ -162,7 +162,7 @@ class _Shared:
                 *self.notes,
                 *self._notes_of_point(answers, point, place),
                 *faults(answers, point),
-                *undefined_ratios(derived, variations, whole["total"]),
+                *undefined_ratios(request, derived, variations, whole["total"]),
             ),
             contributions=ByName(first.contributions(numbers, point)),
             processes=ByName(self._processes(answers, point)),

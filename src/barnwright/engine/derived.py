@@ -17,6 +17,7 @@ from barnwright.documents import (
     Note,
     Part,
     RatioRequest,
+    Request,
     Total,
 )
 from barnwright.documents.derived import NOMINAL
@@ -105,22 +106,30 @@ def _between(request: AsymmetryRequest | RatioRequest, first: Part, second: Part
     return _derived(request.name, *quotient(*totals), ByName(bins))
 
 
-def undefined_ratios(derived: ByName[Derived], variations: ByName[Part], total: Total) -> tuple[Note, ...]:
-    """A note that names what is not known because it would be divided by 0; none where the totals are not known."""
+def undefined_ratios(
+    request: Request, derived: ByName[Derived], variations: ByName[Part], total: Total
+) -> tuple[Note, ...]:
+    """A note that names what is not known because it would be divided by 0; none where the totals are not known.
+
+    Of an asymmetry about a value, which comes in the bins of all histograms unasked, empty bins are no news.
+    """
     if total.value is None or any(part.total.value is None for part in variations):
         return ()
-    found = [text for entry in derived for text in _undefined(entry)]
-    found += [f"{text} in variation {part.name}" for part in variations for e in part.derived for text in _undefined(e)]
+    found: list[str] = []
+    for asked in request.derived:
+        between = isinstance(asked, RatioRequest) or getattr(asked, "between", None) is not None
+        found += _undefined(derived[asked.name], between)
+    found += [f"{text} in variation {p.name}" for p in variations for e in p.derived for text in _undefined(e, False)]
     if not found:
         return ()
     text = f"not known, since what it is divided by is 0: {'; '.join(found)}"
     return (Note.build(code="undefined_ratio", text=text),)
 
 
-def _undefined(derived: Derived) -> Iterator[str]:
+def _undefined(derived: Derived, bin_by_bin: bool) -> Iterator[str]:
     if derived.value is None:
         yield derived.name
-    for bins in derived.histograms:
+    for bins in derived.histograms if bin_by_bin else ():
         unknown = int(np.count_nonzero(~np.isfinite(bins.values)))
         if unknown:
             yield f"{derived.name} in {unknown} of {bins.values.size} bins of {bins.name}"

@@ -81,7 +81,8 @@ process = Process(
     claims=Claims(limits=("∫ σ d√s = 6π² Γ_ee B/M² over the line (Boyarski et al. 1975)",)),
     valid=Validity(
         sqrt_s=(3.08, 3.12),
-        text="the J/psi alone: the continuum of hadrons and its interference with the line are not in it",
+        text="a non-relativistic Breit-Wigner line, the J/psi alone: the continuum of hadrons and its interference "
+        "with the line are not in it",
     ),
     cautions=(
         "The line is 0.093 MeV wide, the energy spread of beams about 1 MeV: only the area of the line is seen.",
