@@ -123,7 +123,7 @@ def _collected(integrals: PanelIntegrals, partition: Partition, integrand: Integ
         add_panels(answer.value, component, integrals.value)
         add_panels(answer.error, component, integrals.error)
         if heights is not None:
-            whole = np.broadcast_to(component, (component.shape[0], panels.side.size))
+            whole = panels.without_spares(component)
             grazed = panels.graze if number > 0 or integrand.setting.cuts else 0.0
             slack = np.where(whole[:, 1:] != whole[:, :-1], panels.wobble, grazed) * heights
             add_panels(answer.error, whole[:, 1:], slack)
@@ -141,14 +141,15 @@ def _boundary_heights(integrals: PanelIntegrals, panels: Panels, integrand: Inte
     """
     if not (panels.wobble.any() or panels.graze.any()):
         return None
-    width = panels.width
     with np.errstate(divide="ignore", invalid="ignore"):
-        mean = np.where(width > 0, np.abs(integrals.value) / width, 0.0)
+        mean = np.where(panels.width > 0, np.abs(integrals.value) / panels.width, 0.0)
+    mean = panels.without_spares(mean)
     heights, known = np.maximum(mean[:, 1:], mean[:, :-1]), integrals.heights
-    if known is None and integrand.setting.law is not None and max(panels.wobble.max(), panels.graze.max()) > EPSILON:
+    searched = np.maximum(panels.wobble, panels.graze).max(axis=1, keepdims=True) > EPSILON
+    if known is None and integrand.setting.law is not None and searched.any():
         ends = panels.boundaries()
         inner = Ends(ends.one_minus[:, 1:-1], ends.one_plus[:, 1:-1])
-        known = known_heights(np.broadcast_to(integrand.density()(None, inner), heights.shape))
+        known = np.where(searched, known_heights(np.broadcast_to(integrand.density()(None, inner), heights.shape)), 0.0)
     return heights if known is None else np.maximum(heights, known)
 
 

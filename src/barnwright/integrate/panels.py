@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -50,6 +51,21 @@ class Panels:
         left, right = (np.where(chosen, x, end) for x in (self.left, self.right))
         return Panels(self.side, left, right, self.wobble, self.graze)
 
+    def without_spares(self, array: NDArray[Any]) -> NDArray[Any]:
+        """Something about panels, (row or 1, panel), with that of the next one towards the pole where one has no width.
+
+        The spare panels that rows of a batch have in the middle of the axis must not hide what a row by itself would
+        see.
+        """
+        shape = np.broadcast_shapes(array.shape, self.width.shape)
+        wide, filled = np.broadcast_to(self.width > 0, shape), np.array(np.broadcast_to(array, shape))
+        backward = int(np.count_nonzero(self.side == BACKWARD))
+        for half in (slice(None, backward), slice(None, backward - shape[1] - 1, -1)):  # seen from either pole
+            number = np.where(wide[:, half], np.arange(wide[:, half].shape[1]), 0)
+            nearest = np.maximum.accumulate(number, axis=1)
+            filled[:, half] = np.take_along_axis(filled[:, half], nearest, axis=1)
+        return filled
+
     def shared_ends(self) -> tuple[Integers, Array]:
         """Hemisphere and x of the ends that neighbours share, (panel + 1,) and (row or 1, panel + 1), as c rises.
 
@@ -73,7 +89,8 @@ class Panels:
         """The locations x of inner nodes, (row or 1, node, panel), and of the shared ends after them."""
         side, x = self.shared_ends()
         sides = np.concatenate([np.tile(self.side, inner.shape[1]), side])
-        return ends_of(sides[None], np.concatenate([inner.reshape(inner.shape[0], -1), x], axis=1))
+        ends = np.broadcast_to(x, (inner.shape[0], x.shape[1]))  # a peak may have another width in every row
+        return ends_of(sides[None], np.concatenate([inner.reshape(inner.shape[0], -1), ends], axis=1))
 
     def middle(self) -> Ends:
         """A location inside each panel, shape (row or 1, panel): the geometric mean where the ends lie far apart."""

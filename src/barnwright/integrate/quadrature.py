@@ -75,7 +75,8 @@ def _integrated(density: Density, panels: Panels, form: tuple[Array, int], besid
     _, weights, embedded = lobatto()
     fine, error = _weighted(values, weights), np.abs(_weighted(values, weights - embedded))
     counts = np.zeros((rows, len(COUNTED)))
-    counts[:, EVALUATIONS] = 1 + 4 * np.count_nonzero(panels.width, axis=1)
+    wide = np.count_nonzero(panels.width, axis=1)
+    counts[:, EVALUATIONS] = np.where(wide > 0, 1 + 4 * wide, 0)
     floor = np.zeros_like(fine)
     if beside is not None:
         floor = np.nan_to_num(_weighted(_by_panel(beside(found, ends), measure), weights), posinf=0.0)
@@ -86,8 +87,8 @@ def _integrated(density: Density, panels: Panels, form: tuple[Array, int], besid
         place = (min(int(row), ends.one_plus.shape[0] - 1), node)
         return int(row), float(ends.one_minus[place]), float(ends.one_plus[place])
 
-    wide = np.broadcast_to(np.tile(panels.width > 0, 3), (rows, 3 * count))
-    result = inspected(result, np.where(wide, found[:, : 3 * count], 0.0), np.arange(rows), located)
+    seen = np.broadcast_to(np.tile(panels.width > 0, 3), (rows, 3 * count))
+    result = inspected(result, np.where(seen, found[:, : 3 * count], 0.0), np.arange(rows), located)
     size = fine if result.clean else _weighted([np.abs(value) for value in values], weights)
     open_end = ~(error < np.inf)
     if open_end.any():  # not finite at an end, as at a pole: rules without ends decide
