@@ -64,3 +64,22 @@ def test_variations_report_the_whole_only() -> None:
     totals = [found.variations[name].total.value for name in ("left", "right")]
     assert sum(totals) / 2 == pytest.approx(found.total.value, rel=1e-13)
     assert found.derived["A_LR"].value == pytest.approx((totals[0] - totals[1]) / sum(totals), rel=1e-13)
+
+
+def test_small_panels_of_one_part_are_those_of_all() -> None:
+    """Bins far forward are small for some parts and not for others; all still add up, in closed form and by quadrature."""
+    forward = {
+        "name": "forward",
+        "observables": ["pseudorapidity(c)"],
+        "bins": [{"edges": [-6.0, -4.9, -4.7, 0.0, 4.86, 5.3, 6.0]}],
+    }
+    for method in ("closed_form", "quadrature"):
+        found = barnwright.predict(
+            process="electroweak/charm-pair",
+            beams={"kind": "collider", "sqrt_s": 26.9},
+            histograms=[forward],
+            accuracy={"method": method},
+        )
+        assert sum(part.total.value for part in found.contributions) == pytest.approx(found.total.value, rel=1e-14)
+        added = np.sum([part.histograms[0].contents for part in found.contributions], axis=0)
+        assert added == pytest.approx(found.histograms[0].contents, rel=1e-11)

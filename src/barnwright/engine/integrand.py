@@ -56,6 +56,13 @@ class Integrand:
         found = [self.process.signed or (p is not None and any(map(is_interference, p))) for p in self.parts]
         return np.repeat(np.array(found), self.rows.count)
 
+    def alike(self, chosen: NDArray[np.bool_]) -> NDArray[np.bool_]:
+        """What is chosen for any part, for all of them: they share their events, and so their panels."""
+        parts = len(self.parts)
+        if parts == 1:
+            return chosen
+        return np.tile(chosen.reshape(parts, -1, chosen.shape[1]).any(axis=0), (parts, 1))
+
     @property
     def interferes(self) -> bool:
         """Whether a part is, or contains, the interference of others."""

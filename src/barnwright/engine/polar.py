@@ -72,7 +72,7 @@ def _closed_form(integrand: Integrand, panels: Panels) -> PanelIntegrals:
     counts[:, EVALUATIONS] = 1 + np.count_nonzero(panels.width, axis=1)
     counts[:, NON_FINITE] = np.count_nonzero(~np.isfinite(heights), axis=1)
     result = PanelIntegrals(np.where(panels.width > 0, value, 0.0), error, counts)
-    small = (panels.width > 0) & (np.abs(value) < SMALL_SHARE * total)
+    small = integrand.alike((panels.width > 0) & (np.abs(value) < SMALL_SHARE * total))
     if integrand.setting.law is None or not small.any():
         return result
     return _with_quadrature(integrand, panels, result, small)
