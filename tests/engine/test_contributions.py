@@ -67,7 +67,7 @@ def test_variations_report_the_whole_only() -> None:
 
 
 def test_small_panels_of_one_part_are_those_of_all() -> None:
-    """Bins far forward are small for some parts and not for others; all still add up, in closed form and by quadrature."""
+    """Bins far forward are small for some parts and not for others; all still add up, by either road."""
     forward = {
         "name": "forward",
         "observables": ["pseudorapidity(c)"],
