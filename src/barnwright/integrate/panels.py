@@ -95,7 +95,7 @@ class Panels:
     def middle(self) -> Ends:
         """A location inside each panel, shape (row or 1, panel): the geometric mean where the ends lie far apart."""
         low, high = np.minimum(self.left, self.right), np.maximum(self.left, self.right)
-        far = high > 100 * low
+        far = (high > 100 * low) & (low > 1e-15)  # what is closer to the pole may be the rounding of a crossing
         inside = np.where(far & (low > 0), np.sqrt(low * high), 0.5 * (low + high))
         return ends_of(np.broadcast_to(self.side, inside.shape), inside)
 

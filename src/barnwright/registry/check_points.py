@@ -15,6 +15,7 @@ Array = NDArray[np.float64]
 Masses = tuple[float, float, float, float]
 
 COSINES = np.array([[-0.9, -0.3, 0.2, 0.7]])
+COSINES.flags.writeable = False  # a law that writes into it must not touch what others are tried at
 _SHARES = np.array([0.1, 0.5, 0.9])
 
 

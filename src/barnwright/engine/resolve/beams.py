@@ -55,7 +55,7 @@ def resolve_beams(
 
 def _polarisation(beams: ColliderBeams | FixedTargetBeams, context: BeamContext) -> tuple[float, float]:
     """Of beam a and beam b, by helicity in the cm."""
-    found = {-1: 0.0, -2: 0.0}
+    found, seen = {-1: 0.0, -2: 0.0}, list[int]()
     for name, value in beams.polarisation.items():
         where = f"beams.polarisation.{name}"
         code = beam_code(name, context.reaction, where, context.findings)
@@ -65,8 +65,16 @@ def _polarisation(beams: ColliderBeams | FixedTargetBeams, context: BeamContext)
         if value != 0 and not can_be_polarised(particle):
             expected = f"0: {particle} has not two helicities; leptons, quarks, nucleons, photons and gluons have"
             context.findings.add(where, value, expected, "0")
+        seen.append(code)
+        _check_once(seen, where, value, context)
         found[code] = float(value)
     return found[-1], found[-2]
+
+
+def _check_once(seen: list[int], where: str, value: float, context: BeamContext) -> None:
+    """Refuse a second name of a beam that has been named already."""
+    if seen.count(seen[-1]) > 1:
+        context.findings.add(where, value, f"one number for each beam; {context.name(seen[-1])} is named twice")
 
 
 def _collider(beams: ColliderBeams, columns: Columns, context: BeamContext) -> BeamSettings | None:
@@ -87,6 +95,7 @@ def _collider(beams: ColliderBeams, columns: Columns, context: BeamContext) -> B
         code = beam_code(name, context.reaction, where, findings)
         if code is None:
             continue
+        _check_once([*kinetic, code], where, energy, context)
         values = _column(f"energies.{name}", energy, columns, context)
         mass = context.mass(code)
         crossed = bool(beams.crossing_angle)

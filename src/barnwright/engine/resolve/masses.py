@@ -66,6 +66,9 @@ def _sorted_masses(
             continue
         tied = _tied(process, codes[0])
         if tied is None:
+            if own.get(codes[0], mass) != mass:
+                expected = f"one mass for a species; {own[codes[0]]!r} is given under another name"
+                findings.add(f"masses.{name}", mass, expected, f"{own[codes[0]]!r}")
             own.update(dict.fromkeys(codes, mass))
         elif tied in parameters and parameters[tied] != mass:
             expected = f"the value of parameters.{tied}, {parameters[tied]!r}: the two are one number"

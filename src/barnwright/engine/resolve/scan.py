@@ -16,7 +16,7 @@ from barnwright.errors import RequestError, Violation, nearest, show
 MOST_POINTS = 100_000
 MOST_GROUPS = 10_000
 ENERGIES = ("sqrt_s", "energy", "kinetic_energy", "momentum")
-TABLES = ("beams", "parameters", "masses", "cuts", "derived")
+TABLES = ("beams", "parameters", "masses", "cuts")
 
 
 class Part(NamedTuple):
@@ -51,7 +51,7 @@ def scan_shape(over: Mapping[str, Sequence[Any]]) -> tuple[int, ...]:
 def _checked(key: str, values: Sequence[Any]) -> list[Violation]:
     head = key.split(".", maxsplit=1)[0].split("[", maxsplit=1)[0]
     if head not in TABLES or head == key or "observable" in key or key.endswith(("kind", "along_z", "target")):
-        expected = "a key with a number: beams.…, parameters.…, masses.…, cuts.….min or max, derived.….at"
+        expected = "a key with a number: beams.…, parameters.…, masses.…, cuts.….min or max"
         return [
             Violation(
                 f"over.{key}", show(key), expected, nearest(key, ("beams.sqrt_s", "beams.energy", "beams.momentum"))
