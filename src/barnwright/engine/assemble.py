@@ -204,9 +204,12 @@ class _Shared:
         return request.model_copy(update={"beams": request.beams.model_copy(update=changes)})
 
     def _notes_of_point(self, answers: Answers, point: int, place: int) -> tuple[NoteDocument, ...]:
-        found: dict[NoteDocument, None] = {}
+        """Notes on each member's own numbers, with its name where there are several."""
+        found = []
         for form, own in zip(self.members, answers.by_member, strict=True):
-            found.update(dict.fromkeys(form.notes_of_point(own, point, place)))
+            named = f"{form.member.source.name}: " if len(self.members) > 1 else ""
+            notes = form.notes_of_point(own, point, place)
+            found += [NoteDocument.build(code=note.code, text=f"{named}{note.text}") for note in notes]
         return tuple(found)
 
 

@@ -184,7 +184,12 @@ WRONG: list[tuple[dict[str, Any], list[str]]] = [
     ),
     (
         {"variations": [{"name": "left"}], "derived": [{"name": "a", "kind": "ratio", "between": ["left", "lef"]}]},
-        ["derived[0].between[1]: got 'lef', expected the name of a variation (left), or nominal, the request itself"],
+        [
+            (
+                "derived[0].between[1]: got 'lef', expected the name of a variation (left), "
+                "or nominal, the request itself; nearest: left"
+            )
+        ],
     ),
     (
         {"variations": [{"name": "a"}], "derived": [{"name": "a", "kind": "ratio", "between": ["a", "a"]}]},
